@@ -1,0 +1,58 @@
+package foulcase
+
+// Kind says in which way the text is wrong.
+type Kind uint8
+
+// The kinds of error.
+const (
+	Nonword  Kind = iota // a form that is no word: "teh"
+	Realword             // a word, but not the one meant: "a quite berth"
+	Runon                // a space is missing: "alot"
+	Split                // a space too many: "with in"
+	Repeat               // a word twice: "the the"
+)
+
+var kindNames = [...]string{"nonword", "realword", "runon", "split", "repeat"}
+
+// Kinds lists every kind, in the order of their values.
+func Kinds() []Kind { return []Kind{Nonword, Realword, Runon, Split, Repeat} }
+
+func (k Kind) String() string { return kindNames[k] }
+
+// MarshalText writes the kind's name, so that JSON carries words.
+func (k Kind) MarshalText() ([]byte, error) { return []byte(k.String()), nil }
+
+// Grade says how sure a finding is.
+type Grade uint8
+
+const (
+	// GradeQuery is a doubt put to the author.
+	GradeQuery Grade = iota
+	// GradeMark is a correction sure enough to act on.
+	GradeMark
+)
+
+func (g Grade) String() string { return [...]string{"query", "mark"}[g] }
+
+// MarshalText writes the grade's name.
+func (g Grade) MarshalText() ([]byte, error) { return []byte(g.String()), nil }
+
+// Correction is one proposed text for what a Mark covers.
+type Correction struct {
+	Text string  `json:"text"`
+	P    float64 `json:"p"` // posterior probability that this was intended
+}
+
+// Mark is one finding in a document, of either grade.
+type Mark struct {
+	Line        int          `json:"line"`   // 1-based
+	Column      int          `json:"column"` // 1-based, in code points
+	Offset      int64        `json:"offset"` // bytes into the input
+	Length      int64        `json:"length"` // bytes
+	Observed    string       `json:"observed"`
+	Kind        Kind         `json:"kind"`
+	Grade       Grade        `json:"grade"`
+	P           float64      `json:"p"`           // probability that this is an error
+	Corrections []Correction `json:"corrections"` // best first; never nil
+	Context     string       `json:"context"`     // the words around it, on one line
+}

@@ -1,0 +1,59 @@
+package foulcase
+
+import (
+	"fmt"
+	"io"
+
+	"example.org/foulcase/candidates/lexicon"
+)
+
+// Variety is the English the text is held to.
+type Variety uint8
+
+// The varieties: either spelling, American, British.
+const (
+	AnyVariety Variety = iota
+	American
+	British
+)
+
+var varietyNames = [...]string{"any", "en-US", "en-GB"}
+
+func (v Variety) String() string { return varietyNames[v] }
+
+// ParseVariety reads "any", "en-US" or "en-GB".
+func ParseVariety(name string) (Variety, error) {
+	for v, n := range varietyNames {
+		if n == name {
+			return Variety(v), nil
+		}
+	}
+	return 0, fmt.Errorf("variety %q: want en-US, en-GB or any", name)
+}
+
+// House is the organisation's own vocabulary, read once and shared between
+// goroutines.
+type House struct {
+	words *lexicon.Lexicon
+}
+
+// ReadHouse reads a list of house words, one a line, UTF-8, "#" beginning a
+// comment. Errors name the list, the line and the remedy.
+func ReadHouse(name string, r io.Reader) (*House, error) {
+	words, err := lexicon.ReadHouse(name, r)
+	if err != nil {
+		return nil, err
+	}
+	return &House{words}, nil
+}
+
+// Options says how a document is to be judged. The zero value is usable:
+// plain text, either variety, no house words, the model's own budget.
+type Options struct {
+	Format  string  // a name of Formats; "" is plain
+	Variety Variety //
+	House   *House  // nil: none
+	// Budget is how many false alarms a 1,000 words of good text the reader
+	// will bear, marks and queries together; 0 takes the model's default.
+	Budget float64
+}
