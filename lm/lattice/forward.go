@@ -28,9 +28,12 @@ type arc struct {
 type logSum struct{ max, rest float64 }
 
 func (s *logSum) add(x float64) {
-	if x <= s.max {
+	switch {
+	case x <= s.max:
 		s.rest += math.Exp(x - s.max)
-	} else {
+	case s.max < -math.MaxFloat64:
+		s.max = x
+	default:
 		s.rest = (s.rest + 1) * math.Exp(s.max-x)
 		s.max = x
 	}
@@ -78,9 +81,6 @@ func (l *Lattice[S]) forward(model Scorer[S], start S, weight float64) error {
 	l.hyps = append(l.hyps, hyp[S]{state: start, beta: math.Inf(-1), back: -1})
 	l.first = append(l.first[:0], 0, 1)
 	next := 0
-	for next < len(l.order) && l.edges[l.order[next]].to == 0 {
-		next++ // the places of refused edges
-	}
 	for node := 1; node <= l.last; node++ {
 		begin := next
 		for next < len(l.order) && int(l.edges[l.order[next]].to) == node {
@@ -90,7 +90,7 @@ func (l *Lattice[S]) forward(model Scorer[S], start S, weight float64) error {
 		if err := l.enter(model, l.order[begin:next], weight); err != nil {
 			return err
 		}
-		l.finish(arcs)
+		l.finish(node, arcs)
 		l.first = append(l.first, int32(len(l.hyps)))
 	}
 	if int(l.first[l.last]) == len(l.hyps) {
@@ -201,15 +201,18 @@ func (l *Lattice[S]) rehash(base int32, slots int) {
 	}
 }
 
-// finish closes the newest node, whose arcs begin at the given one: it sets
-// the forward masses and drops the states outside the beam.
-func (l *Lattice[S]) finish(arcs int) {
-	base := int(l.first[len(l.first)-1])
-	node := l.hyps[base:]
-	for i := range node {
-		node[i].alpha = node[i].sum.value()
+// finish closes a node, whose arcs begin at the given one: it sets the forward
+// masses and drops the states outside the beam. The last node keeps all of its
+// states, as nothing is expanded from them.
+func (l *Lattice[S]) finish(node, arcs int) {
+	base := int(l.first[node])
+	for i := base; i < len(l.hyps); i++ {
+		l.hyps[i].alpha = l.hyps[i].sum.value()
 	}
-	if floor, ties := l.floor(node); floor > math.Inf(-1) {
+	if node == l.last {
+		return
+	}
+	if floor, ties := l.floor(l.hyps[base:]); floor > math.Inf(-1) {
 		l.prune(base, arcs, floor, ties)
 	}
 }

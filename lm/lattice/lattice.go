@@ -102,7 +102,7 @@ func New[S comparable](options Options) *Lattice[S] {
 
 // Reset empties the lattice and gives it nodes 0..last.
 func (l *Lattice[S]) Reset(last int) {
-	l.last = last
+	l.last = max(last, 0)
 	l.edges = l.edges[:0]
 	l.words = l.words[:0]
 	l.bad = nil
@@ -110,14 +110,14 @@ func (l *Lattice[S]) Reset(last int) {
 }
 
 // Add appends an edge and returns its index, which counts from 0 after each
-// Reset. The words are copied. An edge that does not fit is kept out of the
-// sums and makes Run fail with [ErrEdge].
+// Reset. The words are copied. An edge that does not fit takes its place in the
+// count and makes Run fail with [ErrEdge].
 func (l *Lattice[S]) Add(e Edge) int {
 	if err := l.check(e); err != nil {
 		if l.bad == nil {
 			l.bad = err
 		}
-		e = Edge{Score: math.Inf(-1)}
+		e = Edge{Tag: e.Tag}
 	}
 	lo := len(l.words)
 	l.words = append(l.words, e.Words...)

@@ -32,6 +32,9 @@ func (l *Lattice[S]) backward() {
 		for end > 0 && l.arcs[end-1].to >= l.first[node] {
 			end--
 			a := &l.arcs[end]
+			if math.IsInf(l.hyps[a.to].beta, -1) {
+				continue // a dead end
+			}
 			from, out := &l.hyps[a.from], a.weight+l.hyps[a.to].beta
 			from.sum.add(out)
 			l.posterior[a.edge] += math.Exp(from.alpha + out - l.total)
