@@ -1,5 +1,11 @@
 package eval
 
+import (
+	"unicode/utf8"
+
+	"github.com/agnivade/levenshtein"
+)
+
 // editDistance is the restricted Damerau distance ("optimal string
 // alignment"): insertions, deletions, substitutions and transpositions of
 // neighbours, no part edited twice, each at a cost of one code point.
@@ -31,27 +37,20 @@ func editDistance(a, b string) int {
 // Damerau (1964): a single edit by what happened to the intended form, or how
 // many edits there are.
 func editClass(observed, intended string) string {
-	a, b := []rune(observed), []rune(intended)
-	switch editDistance(observed, intended) {
-	case 0:
-		return "equal"
-	case 1:
-		switch {
-		case len(a) > len(b):
-			return "insertion"
-		case len(a) < len(b):
-			return "deletion"
-		}
-		for i := range a {
-			if a[i] != b[i] {
-				if i+1 < len(a) && a[i] == b[i+1] && a[i+1] == b[i] {
-					return "transposition"
-				}
-				return "substitution"
-			}
-		}
-	case 2:
+	longer := utf8.RuneCountInString(observed) - utf8.RuneCountInString(intended)
+	switch d := editDistance(observed, intended); {
+	case d == 0:
+		return "case only"
+	case d == 2:
 		return "two edits"
+	case d > 2:
+		return "three or more"
+	case longer > 0:
+		return "insertion"
+	case longer < 0:
+		return "deletion"
+	case levenshtein.ComputeDistance(observed, intended) == 2:
+		return "transposition" // one edit here, two without transpositions
 	}
-	return "three or more"
+	return "substitution"
 }

@@ -128,7 +128,7 @@ func settle(source []token, changes []change, texts int) []Span {
 	taken := make([]bool, len(source))
 	var spans []Span
 	for _, g := range group(changes) {
-		if g.neutral || 2*voters(changes, g.edit) < texts || slices.Contains(taken[g.i:g.i2], true) {
+		if g.neutral || 2*voters(changes, g.edit, texts) < texts || slices.Contains(taken[g.i:g.i2], true) {
 			continue
 		}
 		spans = append(spans, Span{
@@ -194,15 +194,16 @@ func byVotes(all []string) []string {
 	return unique
 }
 
-// voters counts the texts that change anything in the place of an edit.
-func voters(changes []change, e edit) int {
-	texts := map[int]bool{}
+// voters counts those of the first texts that change anything in the place of
+// an edit.
+func voters(changes []change, e edit, texts int) int {
+	voted := map[int]bool{}
 	for _, c := range changes {
-		if c.i < e.i2 && e.i < c.i2 {
-			texts[c.text] = true
+		if c.text < texts && c.i < e.i2 && e.i < c.i2 {
+			voted[c.text] = true
 		}
 	}
-	return len(texts)
+	return len(voted)
 }
 
 // only makes every error neutral but the one that the sentence names.
