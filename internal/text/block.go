@@ -1,0 +1,94 @@
+package text
+
+// Block is one run of prose freed of markup: a paragraph, a heading, a table
+// cell. It belongs to whoever receives it and is not changed afterwards, so it
+// may be read from several goroutines.
+type Block struct {
+	Text    []byte // the prose; line breaks inside are white space
+	Heading bool   // the format says that it is a heading
+
+	source []byte   // what the text came from: from its first source byte to its last
+	offset int64    // of source in the whole
+	origin Position // of source[0]
+	spans  []span   // ascending; nil when Text is source
+}
+
+// span maps a stretch of Text to source. Where both lengths are equal the bytes
+// are the same, one by one; elsewhere the text stands for the stretch as a whole
+// (a decoded entity, the space for a line break, a placeholder).
+type span struct {
+	text, textEnd     int // in Block.Text
+	source, sourceEnd int // in Block.source
+}
+
+// Source returns the byte offsets in the whole source of Text[start:end], the
+// markup between included. An offset inside a decoded character widens to all
+// of it. It wants 0 <= start <= end <= len(Text).
+func (b *Block) Source(start, end int) (from, to int64) {
+	f, t := b.local(start, end)
+	return b.offset + int64(f), b.offset + int64(t)
+}
+
+// Raw returns the source bytes of Text[start:end]; where they differ from the
+// text, markup or an entity stands between.
+func (b *Block) Raw(start, end int) []byte {
+	f, t := b.local(start, end)
+	return b.source[f:t:t]
+}
+
+// Position returns the place of Text[start] in the source. It counts from the
+// start of the block: time grows with start.
+func (b *Block) Position(start int) Position {
+	f, _ := b.local(start, start)
+	m := NewLineMap(b.origin)
+	m.Feed(b.source[:f])
+	return m.Position()
+}
+
+// local is Source within b.source.
+func (b *Block) local(start, end int) (from, to int) {
+	if b.spans == nil {
+		return start, end
+	}
+	from = b.spans[b.spanAt(start)].at(start)
+	if start == end {
+		return from, from
+	}
+	return from, b.spans[b.spanAt(end-1)].after(end)
+}
+
+// spanAt finds the span that holds the byte at i, the last for the end of text.
+func (b *Block) spanAt(i int) int {
+	lo, hi := 0, len(b.spans)-1
+	for lo < hi {
+		mid := (lo + hi + 1) / 2
+		if b.spans[mid].text <= i {
+			lo = mid
+		} else {
+			hi = mid - 1
+		}
+	}
+	return lo
+}
+
+func (s span) verbatim() bool { return s.textEnd-s.text == s.sourceEnd-s.source }
+
+// at returns where the source of the text byte at i begins.
+func (s span) at(i int) int {
+	switch {
+	case i >= s.textEnd:
+		return s.sourceEnd
+	case s.verbatim():
+		return s.source + i - s.text
+	}
+	return s.source
+}
+
+// after returns where the source of the text before i, which ends inside the
+// span or at its end, ends.
+func (s span) after(i int) int {
+	if s.verbatim() {
+		return s.source + i - s.text
+	}
+	return s.sourceEnd
+}

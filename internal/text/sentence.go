@@ -1,0 +1,190 @@
+package text
+
+import "unicode/utf8"
+
+// endsSentence reports whether the sentence ends after the tokens so far, the
+// last of which ends a run. It may retag the last point: a point that belongs to
+// an initial joins it (Acronym), one that belongs to an abbreviation is Other.
+//
+// "!", "?" and four points end a sentence, unless a lower-case word follows a
+// closing quotation mark or bracket ("Help!" he said). A single point ends one
+// but for
+//   - abbreviations, by their class (abbreviations.go);
+//   - dotted acronyms and initials (U.S., a.m., J. Smith), unless the next word
+//     is a capitalised function word (opensSentence);
+//   - the point of a list mark: a number or letter that begins the sentence.
+//
+// Numbers hold their own points, and ellipses are never terminals.
+func (s *Segmenter) endsSentence() bool {
+	last := len(s.tokens) - 1
+	i := last
+	for i > 0 && (s.tokens[i].Kind == Quote || s.tokens[i].Kind == Close) {
+		i--
+	}
+	if i < 0 {
+		return false
+	}
+	t := &s.tokens[i]
+	point := s.text[t.End-1] == '.'
+	if t.Kind != Terminal && !(t.Kind == Acronym && point) {
+		return false
+	}
+	next := s.peek()
+	if next.closer {
+		return false // decided after it
+	}
+	if i < last && next.lower || next.comma {
+		return false
+	}
+	switch {
+	case t.Kind == Acronym:
+		return s.dottedEnds(t, next)
+	case !point || t.End-t.Start > 1:
+		return true
+	}
+	return s.pointEnds(i, next)
+}
+
+// ahead is what is seen of the next run.
+type ahead struct {
+	none   bool   // the block or the paragraph ends
+	closer bool   // it is nothing but closing quotation marks and brackets
+	comma  bool   // it begins with , ; or :
+	lower  bool   // its first letter is small
+	upper  bool   // its first letter is a capital
+	digit  bool   // it begins with a digit
+	word   []byte // its first word in ASCII letters
+}
+
+// peek looks at the run after the last one scanned.
+func (s *Segmenter) peek() (a ahead) {
+	p, breaks := s.skipSpace(s.pos)
+	if p == len(s.text) || breaks > 1 {
+		a.none = true
+		return a
+	}
+	switch s.text[p] {
+	case ',', ';', ':':
+		a.comma = true
+		return a
+	}
+	if s.closers(p) {
+		a.closer = true
+		return a
+	}
+	for p < len(s.text) {
+		r, n := utf8.DecodeRune(s.text[p:])
+		switch cl := classOf(r, n); {
+		case cl == rLatin:
+			a.upper, a.lower = isUpper(r), isLower(r)
+		case '0' <= r && r <= '9':
+			a.digit = true
+		case cl == rSymbol && opens(r):
+			p += n
+			continue
+		}
+		break
+	}
+	end := p
+	for end < len(s.text) && classes[s.text[end]]&cLetter != 0 {
+		end++
+	}
+	a.word = s.text[p:end]
+	return a
+}
+
+// closers reports that the run at p is nothing but closing marks.
+func (s *Segmenter) closers(p int) bool {
+	end, _ := s.run(p)
+	straight := s.quotes
+	for p < end {
+		r, n := utf8.DecodeRune(s.text[p:end])
+		switch r {
+		case ')', ']', '}', '\'', '\u2019', '\u201D', '\u00BB':
+		case '"':
+			if straight%2 == 0 {
+				return false // it opens
+			}
+			straight++
+		default:
+			return false
+		}
+		p += n
+	}
+	return true
+}
+
+// opens reports characters that may stand before the first word of a sentence.
+func opens(r rune) bool {
+	switch r {
+	case '"', '\'', '`', '(', '[', '{', '*', '_', '\u2018', '\u201C', '\u201E', '\u00AB', '\u00BF', '\u00A1':
+		return true
+	}
+	return false
+}
+
+// dottedEnds is endsSentence for a dotted acronym.
+func (s *Segmenter) dottedEnds(t *Token, next ahead) bool {
+	switch string(t.Norm) {
+	case "e.g.", "i.e.":
+		return next.none
+	}
+	return next.none || opensSentence(next.word)
+}
+
+// pointEnds is endsSentence for the single point at token i.
+func (s *Segmenter) pointEnds(i int, next ahead) bool {
+	point := &s.tokens[i]
+	if i == 0 || !point.Glued {
+		return true
+	}
+	before := &s.tokens[i-1]
+	letter := before.Case == Title && before.End-before.Start == 1
+	switch {
+	case i == 1 && !next.none && (letter || before.Kind == Number || before.Kind == Literal && before.End-before.Start == 1):
+		// a list mark or, for a letter, an initial
+	case letter && before.Kind == Literal && i == len(s.tokens)-1:
+		if next.none || opensSentence(next.word) {
+			return true
+		}
+	case before.Kind == Word && s.abbreviated(before, next):
+	default:
+		return true
+	}
+	if letter && i == len(s.tokens)-1 {
+		before.End, before.Kind = point.End, Acronym
+		s.tokens = s.tokens[:i]
+		return false
+	}
+	point.Kind = Other
+	return false
+}
+
+// abbreviated reports that a point after a word marks an abbreviation, and does
+// not end the sentence as well.
+func (s *Segmenter) abbreviated(word *Token, next ahead) bool {
+	switch abbreviationOf(word.Norm) {
+	case beforeName:
+		return !next.none
+	case beforeNumber:
+		return next.digit || next.lower && !next.none || romanStart(next.word)
+	case anywhere:
+		return !next.none && !opensSentence(next.word)
+	case closing:
+		return next.lower || next.digit
+	}
+	return next.lower && len(word.Norm) > 1 && len(word.Norm) < 5 && vowelless(word.Norm)
+}
+
+func romanStart(word []byte) bool { return len(word) > 0 && roman(word) }
+
+// vowelless reports a word that cannot be said, as many abbreviations are.
+func vowelless(norm []byte) bool {
+	for _, c := range norm {
+		switch c {
+		case 'a', 'e', 'i', 'o', 'u', 'y', '\'':
+			return false
+		}
+	}
+	return true
+}
