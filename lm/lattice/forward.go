@@ -46,33 +46,22 @@ func (s *logSum) value() float64 {
 	return s.max + math.Log1p(s.rest)
 }
 
-// sort orders the edges by the node they enter and, for one node, by the node
-// they leave, so that all words tried in one context are tried together.
+// sort orders the edges by the node they enter, by a counting sort that keeps
+// the order in which they were added otherwise.
 func (l *Lattice[S]) sort() {
-	l.order = resize(l.order, len(l.edges))
-	l.spare = resize(l.spare, len(l.edges))
-	for i := range l.spare {
-		l.spare[i] = int32(i)
-	}
-	l.countingSort(l.order, l.spare, func(e *edge) int32 { return e.from })
-	l.countingSort(l.spare, l.order, func(e *edge) int32 { return e.to })
-	l.order, l.spare = l.spare, l.order
-}
-
-// countingSort writes the edge indices of src to dst, stably by key.
-func (l *Lattice[S]) countingSort(dst, src []int32, key func(*edge) int32) {
 	l.counts = resize(l.counts, l.last+2)
 	clear(l.counts)
-	for _, i := range src {
-		l.counts[key(&l.edges[i])+1]++
+	for i := range l.edges {
+		l.counts[l.edges[i].to+1]++
 	}
 	for n := range l.last + 1 {
 		l.counts[n+1] += l.counts[n]
 	}
-	for _, i := range src {
-		k := key(&l.edges[i])
-		dst[l.counts[k]] = i
-		l.counts[k]++
+	l.order = resize(l.order, len(l.edges))
+	for i := range l.edges {
+		to := l.edges[i].to
+		l.order[l.counts[to]] = int32(i)
+		l.counts[to]++
 	}
 }
 
@@ -99,8 +88,9 @@ func (l *Lattice[S]) forward(model Scorer[S], start S, weight float64) error {
 	return nil
 }
 
-// enter expands the edges into one node, sorted by the node they leave, from
-// every state there.
+// enter expands the edges into one node from every state of the nodes they
+// leave. Edges that leave one node and stand together are tried together in
+// each of its states, so that what the model reads for a context is read once.
 func (l *Lattice[S]) enter(model Scorer[S], edges []int32, weight float64) error {
 	base := int32(len(l.hyps))
 	hashed := false
@@ -112,14 +102,8 @@ func (l *Lattice[S]) enter(model Scorer[S], edges []int32, weight float64) error
 		}
 		for h := l.first[from]; h < l.first[from+1]; h++ {
 			for _, i := range edges[:group] {
-				e := &l.edges[i]
-				state, logp := l.hyps[h].state, 0.0
-				for _, w := range l.words[e.lo:e.hi] {
-					var p float32
-					p, state = model.Score(state, w)
-					logp += float64(p)
-				}
-				w := e.score + weight*logp
+				logp, state := l.score(model, h, &l.edges[i])
+				w := l.edges[i].score + weight*logp
 				if math.IsNaN(w) || w > math.MaxFloat64 {
 					return ErrScore
 				}
@@ -133,6 +117,18 @@ func (l *Lattice[S]) enter(model Scorer[S], edges []int32, weight float64) error
 		edges = edges[group:]
 	}
 	return nil
+}
+
+// score reads the words of an edge from a hyp's state. The state it returns
+// lies in the hyps or in scratch.
+func (l *Lattice[S]) score(model Scorer[S], h int32, e *edge) (logp float64, state *S) {
+	state = &l.hyps[h].state
+	for k, w := range l.words[e.lo:e.hi] {
+		next := &l.scratch[k&1]
+		logp += float64(model.Advance(state, w, next))
+		state = next
+	}
+	return logp, state
 }
 
 // link appends an arc and counts it in the hyp it enters.
@@ -151,24 +147,24 @@ const linear = 8
 
 // reach returns the hyp of the node that starts at base in the given state,
 // adding it if it is new. *hashed tells whether the table holds the node.
-func (l *Lattice[S]) reach(state S, base int32, hashed *bool) int32 {
+func (l *Lattice[S]) reach(state *S, base int32, hashed *bool) int32 {
 	if !*hashed {
 		for h := base; h < int32(len(l.hyps)); h++ {
-			if l.hyps[h].state == state {
+			if l.hyps[h].state == *state {
 				return h
 			}
 		}
 		if len(l.hyps)-int(base) < linear {
-			return l.create(state)
+			return l.create(*state)
 		}
 		*hashed = true
 		l.rehash(base, 8*linear)
 	} else if 2*(len(l.hyps)-int(base)) >= len(l.table) {
 		l.rehash(base, 2*len(l.table))
 	}
-	slot := l.probe(state)
+	slot := l.probe(*state)
 	if l.table[slot] < 0 {
-		l.table[slot] = l.create(state)
+		l.table[slot] = l.create(*state)
 	}
 	return l.table[slot]
 }

@@ -35,11 +35,11 @@ var (
 	ErrNoPath = errors.New("lattice: no path from the first node to the last")
 )
 
-// A Scorer is a language model with states of type S. Score returns the log
-// probability of a word after a state, in nats, and the state that follows.
-// It must depend on nothing else.
+// A Scorer is a language model with states of type S. Advance returns the log
+// probability of a word after the state s, in nats, and writes the state that
+// follows to next, which is never s. The answer must depend on nothing else.
 type Scorer[S comparable] interface {
-	Score(s S, word uint32) (logp float32, next S)
+	Advance(s *S, word uint32, next *S) (logp float32)
 }
 
 // An Edge is one reading of the tokens between two nodes, From < To.
@@ -70,8 +70,8 @@ type Lattice[S comparable] struct {
 	words   []uint32
 	bad     error // the first edge refused since Reset
 	order   []int32
-	spare   []int32
 	counts  []int32
+	scratch [2]S
 
 	hyps   []hyp[S] // grouped by node
 	first  []int32  // hyps[first[n]:first[n+1]] are node n's
@@ -110,7 +110,8 @@ func (l *Lattice[S]) Reset(last int) {
 }
 
 // Add appends an edge and returns its index, which counts from 0 after each
-// Reset. The words are copied. An edge that does not fit takes its place in the
+// Reset. Edges are best added in the order of the nodes they leave: then all words tried in one context are scored
+// together. The words are copied. An edge that does not fit takes its place in the
 // count and makes Run fail with [ErrEdge].
 func (l *Lattice[S]) Add(e Edge) int {
 	if err := l.check(e); err != nil {

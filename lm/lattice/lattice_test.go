@@ -32,9 +32,9 @@ func enumerate(edges []lattice.Edge, last int, m lattice.Scorer[toyState], weigh
 			}
 			state, sum := s, score+e.Score
 			for _, w := range e.Words {
-				var p float32
-				p, state = m.Score(state, w)
-				sum += weight * float64(p)
+				var next toyState
+				sum += weight * float64(m.Advance(&state, w, &next))
+				state = next
 			}
 			walk(e.To, state, sum, append(trail, i))
 		}

@@ -37,9 +37,18 @@ func (l *Lattice[S]) backward() {
 			}
 			from, out := &l.hyps[a.from], a.weight+l.hyps[a.to].beta
 			from.sum.add(out)
-			l.posterior[a.edge] += math.Exp(from.alpha + out - l.total)
+			l.posterior[a.edge] += share(from.alpha + out - l.total)
 		}
 	}
+}
+
+// share is exp(x), without its cost where there is one way only and x is nought
+// but for rounding: there 1+x differs from it by less than a float64 can show.
+func share(x float64) float64 {
+	if math.Abs(x) < 1e-9 {
+		return 1 + x
+	}
+	return math.Exp(x)
 }
 
 // Mass returns the log of the sum over all paths, nats; -Inf before a

@@ -18,18 +18,18 @@ type toy struct {
 	pairs    map[[2]uint32]bool // contexts of trigrams
 }
 
-func (m *toy) Score(s toyState, w uint32) (float32, toyState) {
-	next := toyState{newer: w}
+func (m *toy) Advance(s *toyState, w uint32, next *toyState) float32 {
+	*next = toyState{newer: w}
 	if m.pairs[[2]uint32{s.newer, w}] {
 		next.older = s.newer
 	}
 	if p, ok := m.trigrams[[3]uint32{s.older, s.newer, w}]; ok {
-		return p, next
+		return p
 	}
 	if p, ok := m.bigrams[[2]uint32{s.newer, w}]; ok {
-		return p, next
+		return p
 	}
-	return m.unigrams[w], next
+	return m.unigrams[w]
 }
 
 // newToy draws a model over words 1..vocabulary, with each possible bigram and
