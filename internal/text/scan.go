@@ -12,10 +12,7 @@ import (
 // The rules of rules.go are asked at the start of the run and after every
 // punctuation mark, but only when the classes of the run make them possible.
 func (s *Segmenter) scan(p, q int, mask class) int {
-	suspect := mask&(cDigit|cCode) != 0 ||
-		mask&cPoint != 0 && innerPoint(s.text[p:q]) ||
-		mask&cHyphen != 0 && s.text[p] == '-' ||
-		mask&cParen != 0 && bytes.Contains(s.text[p:q], []byte("()"))
+	suspect := s.suspect(p, q, mask)
 	for fresh := suspect; p < q; {
 		if fresh {
 			if end := s.leftAlone(p, q); end > p {
@@ -46,6 +43,17 @@ func (s *Segmenter) scan(p, q int, mask class) int {
 		}
 	}
 	return p
+}
+
+// suspect reports that a rule may hold somewhere in the run.
+func (s *Segmenter) suspect(p, q int, mask class) bool {
+	run := s.text[p:q]
+	return mask&(cDigit|cCode) != 0 ||
+		mask&cPoint != 0 && innerPoint(run) ||
+		mask&cHyphen != 0 && run[0] == '-' ||
+		mask&cParen != 0 && bytes.Contains(run, []byte("()")) ||
+		mask&cPunct != 0 && bytes.Contains(run, []byte("::")) ||
+		mask&cHigh != 0 && numeralLen(run) > 0
 }
 
 // innerPoint reports a point with a letter or digit after it.

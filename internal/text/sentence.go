@@ -126,37 +126,54 @@ func opens(r rune) bool {
 // dottedEnds is endsSentence for a dotted acronym.
 func (s *Segmenter) dottedEnds(t *Token, next ahead) bool {
 	switch string(t.Norm) {
-	case "e.g.", "i.e.":
+	case "e.g", "i.e":
 		return next.none
 	}
 	return next.none || opensSentence(next.word)
 }
 
-// pointEnds is endsSentence for the single point at token i.
+// pointEnds is endsSentence for the single point at token i. The point of an
+// initial joins it.
 func (s *Segmenter) pointEnds(i int, next ahead) bool {
 	point := &s.tokens[i]
 	if i == 0 || !point.Glued {
 		return true
 	}
 	before := &s.tokens[i-1]
-	letter := before.Case == Title && before.End-before.Start == 1
+	letter := before.Norm != nil && before.End-before.Start == 1
+	initial := letter && before.Case == Title && i == len(s.tokens)-1
 	switch {
-	case i == 1 && !next.none && (letter || before.Kind == Number || before.Kind == Literal && before.End-before.Start == 1):
-		// a list mark or, for a letter, an initial
-	case letter && before.Kind == Literal && i == len(s.tokens)-1:
-		if next.none || opensSentence(next.word) {
-			return true
-		}
+	case next.none:
+		return true
+	case i == 1 && (letter || before.Kind == Number): // a list mark or an initial
+	case initial && before.Kind == Literal && !opensSentence(next.word) && !s.labelled(i-1): // J. Smith
+	case letter && before.Kind == Literal && next.digit: // p. 12
+		initial = false
 	case before.Kind == Word && s.abbreviated(before, next):
+		initial = false
 	default:
 		return true
 	}
-	if letter && i == len(s.tokens)-1 {
+	if initial {
 		before.End, before.Kind = point.End, Acronym
 		s.tokens = s.tokens[:i]
+	} else {
+		point.Kind = Other
+	}
+	return false
+}
+
+// labelled reports that the letter at token i names a thing rather than a
+// person: "plan B".
+func (s *Segmenter) labelled(i int) bool {
+	if i == 0 || s.tokens[i-1].Kind != Word {
 		return false
 	}
-	point.Kind = Other
+	switch string(s.tokens[i-1].Norm) {
+	case "vitamin", "plan", "type", "class", "group", "grade", "section", "part", "appendix", "figure", "table",
+		"point", "option", "level", "hepatitis", "schedule", "exhibit", "annex", "side", "category", "phase", "note":
+		return true
+	}
 	return false
 }
 
@@ -165,11 +182,11 @@ func (s *Segmenter) pointEnds(i int, next ahead) bool {
 func (s *Segmenter) abbreviated(word *Token, next ahead) bool {
 	switch abbreviationOf(word.Norm) {
 	case beforeName:
-		return !next.none
+		return true
 	case beforeNumber:
-		return next.digit || next.lower && !next.none || romanStart(next.word)
+		return next.digit || next.lower || romanStart(next.word)
 	case anywhere:
-		return !next.none && !opensSentence(next.word)
+		return !opensSentence(next.word)
 	case closing:
 		return next.lower || next.digit
 	}
