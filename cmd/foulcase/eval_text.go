@@ -14,7 +14,7 @@ func evalTextVerb() verb {
 	return verb{
 		name:     "eval text",
 		operands: "FILE...",
-		summary:  "measure the marks in sentences with known errors, or in good text",
+		summary:  "measure the marks in text whose errors are known",
 		about: `
 Proofreads the sentences of each file and reports precision, recall and F of
 what was found (detection) and of what was corrected as intended (correction),

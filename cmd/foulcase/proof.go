@@ -30,8 +30,8 @@ probability that this is an error. No file is ever changed.
 (bytes of the file), observed, kind, grade, p, corrections ({text, p}, best
 first) and context.`,
 		examples: `
-			foulcase proof --house testdata/pilots/house-words.txt testdata/pilots
-			foulcase proof --as markdown --emit jsonl < testdata/pilots/defect-report.md`,
+			foulcase proof --house testdata/pilots/house-words.txt testdata/pilots/papers
+			foulcase proof --as markdown --emit jsonl < testdata/pilots/papers/defect-report.md`,
 		declare: declareProof,
 	}
 }
