@@ -59,7 +59,7 @@ func (p *packer) order() []int32 {
 			sources[e.target]++
 		}
 	}
-	const popular = 4
+	const popular = 3
 	var roots []int32
 	for i, n := range sources {
 		if n >= popular {

@@ -1,5 +1,11 @@
 package lexicon
 
+import (
+	"bytes"
+
+	"example.org/foulcase/internal/text"
+)
+
 // Class is a symbol of the language model's stream that is no form.
 type Class uint8
 
@@ -58,4 +64,74 @@ func (l *Lexicon) findClitics() []clitic {
 		}
 	}
 	return found
+}
+
+// Read appends the ids that a token adds to the stream, without allocation
+// where dst has room (two ids):
+//
+//   - a word that is a form: its id ("dogs", "it's", "don't", "nasa");
+//   - any other that ends in a clitic: the stem's id, or its class, and that of
+//     the clitic ("dog's" is "dog" + "'s");
+//   - any other word: Unknown, Name or Acronym by its capitals;
+//   - a literal of letters alone that is known with mixed capitals ("iPhone"):
+//     its id; any other literal, numbers and marks: their class;
+//   - nothing for quotation marks, ends of sentences (End stands for them) and
+//     other symbols.
+func (l *Lexicon) Read(dst []uint32, tok text.Token) []uint32 {
+	switch tok.Kind {
+	case text.Word, text.Acronym:
+		return l.readWord(dst, tok)
+	case text.Literal:
+		if id, ok := l.ID(tok.Norm); ok && l.Entry(id).Cases&MixedCase != 0 {
+			return append(dst, id)
+		}
+	}
+	if int(tok.Kind) < len(classOf) && classOf[tok.Kind] != 0 {
+		return append(dst, l.ClassID(classOf[tok.Kind]))
+	}
+	return dst
+}
+
+// classOf gives the class of a kind of token that is no word; 0 (Begin, which
+// no token is) for kinds that the stream leaves out.
+var classOf = [...]Class{
+	text.Number:  Number,
+	text.Literal: Literal,
+	text.Comma:   Comma,
+	text.Stop:    Stop,
+	text.Open:    Opening,
+	text.Close:   Closing,
+	text.Hyphen:  Hyphen,
+}
+
+func (l *Lexicon) readWord(dst []uint32, tok text.Token) []uint32 {
+	if id, ok := l.ID(tok.Norm); ok {
+		return append(dst, id)
+	}
+	shape := l.ClassID(shapeOf(tok))
+	if bytes.IndexByte(tok.Norm, '\'') <= 0 {
+		return append(dst, shape)
+	}
+	for _, c := range l.clitics {
+		stem, ok := bytes.CutSuffix(tok.Norm, []byte(c.ending))
+		if !ok || len(stem) == 0 {
+			continue
+		}
+		if id, ok := l.ID(stem); ok {
+			return append(dst, id, c.id)
+		}
+		return append(dst, shape, c.id)
+	}
+	return append(dst, shape)
+}
+
+// shapeOf classes a word the lexicon lacks by its capitals.
+func shapeOf(tok text.Token) Class {
+	switch {
+	case tok.Kind == text.Acronym || tok.Case == text.Upper:
+		return Acronym
+	case tok.Case == text.Title || tok.Case == text.Mixed:
+		return Name
+	}
+	return Unknown
 }
