@@ -30,10 +30,15 @@ func (s *Segmenter) scan(p, q int, mask class) int {
 			r, n = utf8.DecodeRune(s.text[p:q])
 		}
 		switch cl := classOf(r, n); {
+		case isApostrophe(r):
+			if s.leadingApostrophe(p, p+n, q) {
+				p = s.word(p, p+n, q)
+			} else {
+				p = s.mark(r, p, n, q)
+			}
+			fresh = suspect
 		case cl == rLatin || cl == rForeign || cl == rBroken || classes[c]&cDigit != 0:
 			p, fresh = s.word(p, p, q), false
-		case isApostrophe(r) && s.leadingApostrophe(p, p+n, q):
-			p, fresh = s.word(p, p+n, q), false
 		default:
 			p, fresh = s.mark(r, p, n, q), suspect
 			if s.gluedEnd(p, q) {
