@@ -30,7 +30,7 @@ const (
 )
 
 // shapes are the edits that move spaces: source tokens against corrected ones.
-var shapes = [...]struct{ p, q int }{{1, 2}, {2, 1}, {2, 2}, {1, 3}, {3, 1}}
+var shapes = [...]struct{ p, q int }{{1, 2}, {2, 1}, {2, 2}, {1, 3}, {3, 1}, {1, 5}}
 
 // maxCells bounds the table of one alignment; 32 bytes a cell.
 const maxCells = 1 << 22
@@ -147,20 +147,14 @@ func substitution(a, b *token) (float64, bool) {
 }
 
 // movedSpace is the cost of tokens for others that differ in where the spaces
-// are and little else. Neither side may hold the other: "a girl" for "girl" is
-// a word too many and no space.
+// are and little else. No single word of one side may be nearer to the other
+// side than all together: "a girl" for "girl" is a word too many and no space,
+// "predetor" for "a predator" a slip and a word left out.
 func movedSpace(a, b []token) (float64, bool) {
 	x, ok := together(a)
 	y, ok2 := together(b)
-	if !ok || !ok2 || len(a) == 2 && len(b) == 2 && (x != y || a[0].fold == b[0].fold) {
+	if !ok || !ok2 || len(a) == len(b) && x != y {
 		return 0, false
-	}
-	for i := range a {
-		for j := range b {
-			if a[i].fold == b[j].fold {
-				return 0, false
-			}
-		}
 	}
 	long, short := utf8.RuneCountInString(x), utf8.RuneCountInString(y)
 	if long < short {
@@ -169,11 +163,24 @@ func movedSpace(a, b []token) (float64, bool) {
 	if float64(long-short) > unlikeSpace*float64(long) {
 		return 0, false
 	}
-	d := unlike(x, y)
-	return costSpace + costLetter*d, d <= unlikeSpace
+	d := levenshtein.ComputeDistance(x, y)
+	if share := float64(d) / float64(long); share <= unlikeSpace && !nearer(a, y, d) && !nearer(b, x, d) {
+		return costSpace + costLetter*share, true
+	}
+	return 0, false
 }
 
-// together writes words as one. The middle one of three may be a hyphen.
+// nearer says whether one of the tokens is the word or nearer to it than d.
+func nearer(tokens []token, word string, d int) bool {
+	for i := range tokens {
+		if f := tokens[i].fold; len(tokens) > 1 && (f == word || levenshtein.ComputeDistance(f, word) < d) {
+			return true
+		}
+	}
+	return false
+}
+
+// together writes words as one, hyphens between them left out.
 func together(tokens []token) (string, bool) {
 	if len(tokens) == 1 {
 		return tokens[0].fold, tokens[0].word
@@ -182,7 +189,7 @@ func together(tokens []token) (string, bool) {
 	for i := range tokens {
 		if tokens[i].word {
 			b.WriteString(tokens[i].fold)
-		} else if !(i == 1 && len(tokens) == 3 && tokens[i].text == "-") {
+		} else if i%2 == 0 || i == len(tokens)-1 || tokens[i].text != "-" {
 			return "", false
 		}
 	}

@@ -2,6 +2,7 @@ package eval
 
 import (
 	"fmt"
+	"math"
 	"slices"
 )
 
@@ -34,7 +35,7 @@ func ScoreClean(items []Item, flags [][]Flag, r Resampling) (*Report, error) {
 	for k, class := range classes {
 		measures[k] = measure[cleanCounts]{"flags", class, func(c cleanCounts) (float64, float64) {
 			if c.words == 0 {
-				return 0, 0
+				return math.NaN(), 0
 			}
 			return 1000 * c.flags[k] / c.words, c.words
 		}}

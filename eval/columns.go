@@ -11,14 +11,14 @@ import (
 type Column string
 
 const (
-	Source     Column = "source"    // the text as it was written; there must be one
-	Reference  Column = "reference" // the text with its spelling corrected and little else
-	Rewrite    Column = "rewrite"   // a free correction, of style too
-	Full       Column = "full"      // grammar corrected too, beside a reference
-	Observed   Column = "observed"  // the word in error, when one is of interest
-	Intended   Column = "intended"  // its correction
-	Document   Column = "document"  // the document, page or writer
-	OtherThing Column = "-"         // passed over
+	Source    Column = "source"    // the text as it was written; there must be one
+	Reference Column = "reference" // the text with its spelling corrected and little else
+	Rewrite   Column = "rewrite"   // a free correction, of style too
+	Full      Column = "full"      // grammar corrected too, beside a reference
+	Observed  Column = "observed"  // the word in error, when one is of interest
+	Intended  Column = "intended"  // its correction
+	Document  Column = "document"  // the document, page or writer
+	Ignored   Column = "-"         // passed over
 )
 
 // PlainColumns is `source TAB corrected`; further columns are more references.
@@ -27,7 +27,7 @@ var PlainColumns = []Column{Source, Reference}
 // ParseColumns reads a comma-separated list of columns, such as
 // "source,reference,-,document".
 func ParseColumns(list string) ([]Column, error) {
-	known := []Column{Source, Reference, Rewrite, Full, Observed, Intended, Document, OtherThing}
+	known := []Column{Source, Reference, Rewrite, Full, Observed, Intended, Document, Ignored}
 	var columns []Column
 	for name := range strings.SplitSeq(list, ",") {
 		c := Column(strings.TrimSpace(name))

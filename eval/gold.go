@@ -12,7 +12,8 @@ import (
 // What counts as an error:
 //
 //   - a word replaced by another in a Reference: nonword when known says no of
-//     the observed form, realword otherwise; a missing space (runon), a space
+//     the observed form, and otherwise realword, if the two have a letter in
+//     five in common or Observed names it; a missing space (runon), a space
 //     too many or in the wrong place (split), and a word written twice (repeat);
 //   - in a Rewrite the same, but of these only what holds a form that is not
 //     known, and is answered by a form not too unlike it: a rewrite that changes
@@ -41,6 +42,8 @@ func Gold(s Sentence, known func(string) bool) Item {
 				c.neutral = true
 			case i >= len(s.References):
 				c.neutral = c.neutral || !c.unknown || c.unlike > unlikeRewrite
+			case c.kind == Realword && s.Observed == "":
+				c.neutral = c.unlike > unlikeSlip
 			}
 			changes = append(changes, c)
 		}
@@ -55,7 +58,11 @@ func Gold(s Sentence, known func(string) bool) Item {
 
 // unlikeRewrite is the greatest share of letters by which a rewrite may differ
 // from an unknown form and still be taken for its correction.
-const unlikeRewrite = .6
+const unlikeRewrite = .5
+
+// unlikeSlip is the greatest share of letters by which a known word may differ
+// from another known word and still be taken for a slip of it.
+const unlikeSlip = .8
 
 // change is an edit that touches the source, and what it means.
 type change struct {
@@ -127,15 +134,19 @@ func hasSign(tokens []token) bool {
 func settle(source []token, changes []change, texts int) []Span {
 	taken := make([]bool, len(source))
 	var spans []Span
-	for _, g := range group(changes) {
-		if g.neutral || 2*voters(changes, g.edit, texts) < texts || slices.Contains(taken[g.i:g.i2], true) {
+	for _, group := range places(changes) {
+		e := group[0]
+		if 2*voters(changes, e.edit, texts) < texts || slices.Contains(taken[e.i:e.i2], true) {
 			continue
 		}
-		spans = append(spans, Span{
-			Start: source[g.i].start, End: source[g.i2-1].end,
-			Kind: g.kind, Corrections: g.corrections,
-		})
-		for i := g.i; i < g.i2; i++ {
+		span := Span{Start: source[e.i].start, End: source[e.i2-1].end, Corrections: byVotes(group)}
+		for _, c := range group {
+			if c.correction == span.Corrections[0] {
+				span.Kind = c.kind
+			}
+		}
+		spans = append(spans, span)
+		for i := e.i; i < e.i2; i++ {
 			taken[i] = true
 		}
 	}
@@ -151,43 +162,38 @@ func settle(source []token, changes []change, texts int) []Span {
 	return spans
 }
 
-// grouped are the changes of one stretch of the source that mean one thing.
-type grouped struct {
-	change
-	votes       int
-	corrections []string // most votes first
-}
-
-// group gathers the changes by place and kind, most votes first.
-func group(changes []change) []grouped {
-	var groups []grouped
+// places groups the errors by the stretch of the source that they change, the
+// stretch that most texts change first, within a group the likest form first.
+func places(changes []change) [][]change {
+	var groups [][]change
 	for _, c := range changes {
-		i := slices.IndexFunc(groups, func(g grouped) bool {
-			return g.i == c.i && g.i2 == c.i2 && g.kind == c.kind && g.neutral == c.neutral
-		})
+		if c.neutral {
+			continue
+		}
+		i := slices.IndexFunc(groups, func(g []change) bool { return g[0].i == c.i && g[0].i2 == c.i2 })
 		if i < 0 {
 			i = len(groups)
-			groups = append(groups, grouped{change: c})
+			groups = append(groups, nil)
 		}
-		groups[i].votes++
-		groups[i].corrections = append(groups[i].corrections, c.correction)
+		groups[i] = append(groups[i], c)
 	}
-	for i := range groups {
-		groups[i].corrections = byVotes(groups[i].corrections)
+	for _, g := range groups {
+		slices.SortStableFunc(g, func(a, b change) int { return cmp.Compare(a.unlike, b.unlike) })
 	}
-	slices.SortStableFunc(groups, func(a, b grouped) int {
-		return cmp.Or(cmp.Compare(b.votes, a.votes), cmp.Compare(a.i, b.i))
+	slices.SortStableFunc(groups, func(a, b []change) int {
+		return cmp.Or(cmp.Compare(len(b), len(a)), cmp.Compare(a[0].unlike, b[0].unlike))
 	})
 	return groups
 }
 
-// byVotes returns the different strings, the most frequent first.
-func byVotes(all []string) []string {
+// byVotes returns the corrections of one place, the most frequent first, and
+// of equals the likest.
+func byVotes(group []change) []string {
 	votes := map[string]int{}
 	var unique []string
-	for _, s := range all {
-		if votes[s]++; votes[s] == 1 {
-			unique = append(unique, s)
+	for _, c := range group {
+		if votes[c.correction]++; votes[c.correction] == 1 {
+			unique = append(unique, c.correction)
 		}
 	}
 	slices.SortStableFunc(unique, func(a, b string) int { return votes[b] - votes[a] })
@@ -206,12 +212,19 @@ func voters(changes []change, e edit, texts int) int {
 	return len(voted)
 }
 
-// only makes every error neutral but the one that the sentence names.
+// only makes every error neutral but the one that the sentence names: the
+// spans that are the observed word, or, when a file names another form of it,
+// those that touch it.
 func only(spans []Span, s Sentence) {
-	for i := range spans {
-		span := &spans[i]
-		if !strings.EqualFold(s.Source[span.Start:span.End], strings.TrimSpace(s.Observed)) {
-			span.Neutral = true
+	word := fold(strings.TrimSpace(s.Observed))
+	same := func(span Span) bool { return fold(s.Source[span.Start:span.End]) == word }
+	if !slices.ContainsFunc(spans, func(span Span) bool { return !span.Neutral && same(span) }) {
+		same = func(span Span) bool {
+			text := fold(s.Source[span.Start:span.End])
+			return strings.Contains(text, word) || strings.Contains(word, text)
 		}
+	}
+	for i := range spans {
+		spans[i].Neutral = spans[i].Neutral || !same(spans[i])
 	}
 }

@@ -93,7 +93,7 @@ func pairClasses(p Pair, known func(string) bool) []string {
 	if y, _ := utf8.DecodeRuneInString(intended); x != y {
 		classes = append(classes, "first letter wrong")
 	}
-	switch n := utf8.RuneCountInString(intended); {
+	switch n := utf8.RuneCountInString(strings.ReplaceAll(intended, " ", "")); {
 	case n <= 4:
 		return append(classes, "1-4 letters")
 	case n <= 8:

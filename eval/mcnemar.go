@@ -13,8 +13,8 @@ type McNemar struct {
 	Exact      float64 `json:"exact"`       // two-sided binomial p
 }
 
-// TestMcNemar tests two systems that are right alone on so many items each.
-func TestMcNemar(onlyA, onlyB int) McNemar {
+// McNemarTest tests two systems that are right alone on so many items each.
+func McNemarTest(onlyA, onlyB int) McNemar {
 	m := McNemar{OnlyA: onlyA, OnlyB: onlyB, P: 1, Exact: 1}
 	n := onlyA + onlyB
 	if n == 0 {
@@ -31,7 +31,7 @@ func TestMcNemar(onlyA, onlyB int) McNemar {
 	return m
 }
 
-// CompareOutcomes runs TestMcNemar on two systems' outcomes for the same items
+// CompareOutcomes runs McNemarTest on two systems' outcomes for the same items
 // in the same order.
 func CompareOutcomes(a, b []bool) McNemar {
 	onlyA, onlyB := 0, 0
@@ -43,7 +43,7 @@ func CompareOutcomes(a, b []bool) McNemar {
 			onlyB++
 		}
 	}
-	return TestMcNemar(onlyA, onlyB)
+	return McNemarTest(onlyA, onlyB)
 }
 
 // logChoose is the log of the binomial coefficient, nats.
