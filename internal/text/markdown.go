@@ -1,8 +1,197 @@
 package text
 
-import "io"
+import (
+	"bytes"
+	"cmp"
+	"fmt"
+	"io"
+	"slices"
 
-// readMarkdown reads the whole document.
+	"github.com/yuin/goldmark"
+	"github.com/yuin/goldmark/ast"
+	"github.com/yuin/goldmark/extension"
+	gtext "github.com/yuin/goldmark/text"
+)
+
+const defaultMaxBytes = 16 << 20
+
+// readMarkdown reads the whole document and yields a block for each paragraph,
+// heading, list item's text, table cell, footnote and defined term, in the order
+// of the source. Link text and the alternative text of images are prose; link
+// destinations and titles, code blocks, HTML and front matter are left out. An
+// inline code span is one U+FFFC in the text, so that its sentence stays whole.
 func readMarkdown(r io.Reader, o Options, yield func(*Block, error) bool) {
-	readPlain(r, o, yield)
+	most := o.MaxBytes
+	if most == 0 {
+		most = defaultMaxBytes
+	}
+	data, err := io.ReadAll(io.LimitReader(r, most+1))
+	if err == nil && int64(len(data)) > most {
+		err = fmt.Errorf("the document has more than %d bytes, the most that Markdown is read with; split it or read it as plain text", most)
+	}
+	if err != nil {
+		yield(nil, err)
+		return
+	}
+	m := markdown{source: data}
+	if err := m.parse(); err != nil {
+		yield(nil, err)
+		return
+	}
+	var lines LineMap
+	at := bomLen(data)
+	for _, b := range m.blocks {
+		lines.Feed(data[at:b.offset])
+		at = int(b.offset)
+		b.origin = lines.Position()
+		if !yield(b, nil) {
+			return
+		}
+	}
+}
+
+// markdown gathers the blocks of one document.
+type markdown struct {
+	source []byte
+	base   int // where what goldmark reads begins in source
+	blocks []*Block
+	prose  prose
+}
+
+// parse fills m.blocks. A fault inside the parser of the markup comes back as
+// an error.
+func (m *markdown) parse() (err error) {
+	defer func() {
+		if fault := recover(); fault != nil {
+			err = fmt.Errorf("the document cannot be read as Markdown (%v); read it as plain text", fault)
+		}
+	}()
+	m.base = bomLen(m.source)
+	m.base += frontMatter(m.source[m.base:])
+	parser := goldmark.New(goldmark.WithExtensions(extension.Table, extension.Strikethrough,
+		extension.TaskList, extension.Footnote, extension.DefinitionList)).Parser()
+	m.container(parser.Parse(gtext.NewReader(tamed(m.source[m.base:]))))
+	slices.SortStableFunc(m.blocks, func(a, b *Block) int { return cmp.Compare(a.offset, b.offset) })
+	return nil
+}
+
+// container takes the blocks inside a block.
+func (m *markdown) container(n ast.Node) {
+	if c := n.FirstChild(); c != nil && c.Type() == ast.TypeInline {
+		m.prose = prose{source: m.source}
+		m.inlines(n)
+		m.finish(n)
+		return
+	}
+	for c := n.FirstChild(); c != nil; c = c.NextSibling() {
+		m.container(c)
+	}
+}
+
+// finish makes a block of the prose gathered so far.
+func (m *markdown) finish(n ast.Node) {
+	if b := m.prose.block(); b != nil {
+		b.Heading = n.Kind() == ast.KindHeading
+		m.blocks = append(m.blocks, b)
+	}
+	m.prose = prose{source: m.source, end: m.prose.end}
+}
+
+// inlines takes the prose of the inline nodes of n.
+func (m *markdown) inlines(n ast.Node) {
+	for c := n.FirstChild(); c != nil; c = c.NextSibling() {
+		switch c := c.(type) {
+		case *ast.Text:
+			m.text(c)
+		case *ast.CodeSpan:
+			m.codeSpan(c)
+		case *ast.AutoLink:
+			if from := m.base + c.Pos() + 1; c.Pos() >= 0 {
+				m.prose.verbatim(from, from+len(c.Label(m.source[m.base:])))
+			}
+		case *ast.RawHTML:
+			if at := c.Segments.At(0); bytes.HasPrefix(bytes.ToLower(at.Value(m.source[m.base:])), []byte("<br")) {
+				m.prose.lineBreak(m.base + at.Start)
+			}
+		default: // emphasis, links, images
+			m.inlines(c)
+		}
+	}
+}
+
+// text takes a text node: its bytes less escapes and entities, then the line
+// break after it. A hard break ends the block unless the next line goes on in
+// lower case.
+func (m *markdown) text(t *ast.Text) {
+	from, to := m.base+t.Segment.Start, m.base+t.Segment.Stop
+	if t.IsRaw() {
+		m.prose.verbatim(from, to)
+	} else {
+		m.prose.decoded(from, to)
+	}
+	switch {
+	case t.HardLineBreak() && !m.startsLower(t.NextSibling()):
+		m.finish(t)
+	case t.HardLineBreak() || t.SoftLineBreak():
+		m.prose.lineBreak(to)
+	}
+}
+
+func (m *markdown) startsLower(n ast.Node) bool {
+	t, ok := n.(*ast.Text)
+	if !ok {
+		return false
+	}
+	line := bytes.TrimLeft(t.Segment.Value(m.source[m.base:]), " \t")
+	return len(line) > 0 && isLower(rune(line[0]))
+}
+
+// codeSpan takes code between back quotes as one placeholder.
+func (m *markdown) codeSpan(c *ast.CodeSpan) {
+	first, ok := c.FirstChild().(*ast.Text)
+	last, ok2 := c.LastChild().(*ast.Text)
+	if !ok || !ok2 {
+		return
+	}
+	from, to := m.base+first.Segment.Start, m.base+last.Segment.Stop
+	for from > m.base && m.source[from-1] != '`' {
+		from--
+	}
+	for from > m.base && m.source[from-1] == '`' {
+		from--
+	}
+	for to < len(m.source) && m.source[to] != '`' {
+		to++
+	}
+	for to < len(m.source) && m.source[to] == '`' {
+		to++
+	}
+	m.prose.standIn(placeholder, from, to)
+}
+
+// frontMatter returns the length of the settings that stand between lines of
+// "---" or "+++" at the start of a document.
+func frontMatter(source []byte) int {
+	var lines []textLine
+	lines = splitLines(lines, source)
+	if len(lines) == 0 || lines[0].start != 0 {
+		return 0
+	}
+	fence := string(source[:lines[0].end])
+	if fence != "---" && fence != "+++" {
+		return 0
+	}
+	for _, l := range lines[1:] {
+		if mark := string(source[l.start:l.end]); mark == fence || mark == "..." && fence == "---" {
+			return l.next
+		}
+	}
+	return 0
+}
+
+func bomLen(source []byte) int {
+	if bytes.HasPrefix(source, byteOrderMark) {
+		return len(byteOrderMark)
+	}
+	return 0
 }
