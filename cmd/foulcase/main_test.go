@@ -15,7 +15,15 @@ import (
 
 // TestMain makes the test binary act as foulcase when a script runs that.
 func TestMain(m *testing.M) {
-	testscript.Main(m, map[string]func(){"foulcase": main})
+	testscript.Main(tidily{m}, map[string]func(){"foulcase": main})
+}
+
+// tidily runs the tests and removes the binary that they built.
+type tidily struct{ m *testing.M }
+
+func (t tidily) Run() int {
+	defer func() { os.RemoveAll(binary.dir) }()
+	return t.m.Run()
 }
 
 // TestScripts runs the scripts with a small model, which $MODEL names, made of
