@@ -11,15 +11,13 @@ type Explanation struct {
 
 // Explain scores w in s as Score does and says how the score came about.
 func (m *Model) Explain(s State, w uint32) Explanation {
-	if w >= m.levels[0].count {
+	if w >= m.levels[0].shape.count {
 		return Explanation{LogProb: -maxNats, Total: -maxNats}
 	}
 	n := min(int(s.n), m.order-1)
 	at, found := w, 0
 	for found < n {
-		below := &m.levels[found+1]
-		lo, hi := m.levels[found].children(at, below.count)
-		child, ok := below.find(lo, hi, s.words[found])
+		child, _, ok := m.child(found, at, s.keys[found])
 		if !ok {
 			break
 		}

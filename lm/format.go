@@ -5,7 +5,6 @@ import (
 	"errors"
 	"fmt"
 	"math"
-	"math/bits"
 )
 
 // The section, all integers little-endian:
@@ -15,47 +14,49 @@ import (
 //	order      uint8, 1..MaxOrder
 //	probBits   uint8, width of a log probability: 1..12 a code, 32 a float32
 //	backBits   uint8, width of a back-off, likewise
-//	count      order x uint32, n-grams of each order; count[0] is the vocabulary
+//	shapes     for each order, shapeBytes long:
+//	           count uint32      n-grams; of order 1 the vocabulary
+//	           contexts uint32   those that are contexts of longer ones
+//	           keyLow uint8, firstLow uint8, two zero bytes
+//	           keyHigh uint64, firstHigh uint64   see monotone
 //	codebooks  for each order: 2^probBits float32 log probabilities, then, but
 //	           for the highest order, 2^backBits float32 back-offs; absent where
 //	           the width is 32
-//	levels     for each order: count records, one more empty record at the end
-//	           (but for the highest order), zero bytes up to padding
+//	levels     for each order:
+//	           keys      monotone, not in order 1
+//	           probs     packed codes
+//	           context   flags: is the n-gram a context? not in the highest order
+//	           backs     packed codes, one for each context; likewise
+//	           first     monotone, index of the first child; likewise
 //
-// A record of order k is, from the lowest bit:
-//
-//	word       the n-gram's leftmost word, sorted within its parent (order >= 2)
-//	prob       log P(last word | the others)
-//	back       back-off of the n-gram as a context; not in the highest order
-//	child      index of its first child in level k+1; not in the highest order.
-//	           The next record's child ends the range.
-//
-// The parent of an n-gram is the n-gram without its leftmost word. A back-off
-// equal to notContext marks an n-gram that no longer n-gram has as its
-// context: states drop it.
+// The parent of an n-gram is the n-gram without its leftmost word; n-grams are
+// sorted by parent, then key. The key of a bigram is its first word. Of a longer
+// one it is the place of its context among the siblings of that context (both
+// lack the last word): the words that can stand there are few, so the number is
+// small (Pibiri and Venturini 2017), and the state knows it already. The keys
+// of a level make one increasing sequence: each parent's begin anew above the
+// last one before.
 const (
-	magic   = "fcng"
-	version = 1
+	magic      = "fcng"
+	version    = 1
+	shapeBytes = 28
 	// MaxOrder is the longest n-gram a model may hold.
 	MaxOrder = 6
 	// exactBits is the width of a value stored as it is.
 	exactBits = 32
 	// maxCodeBits bounds a codebook to 4,096 values.
 	maxCodeBits = 12
-	// padding lets an 8-byte load start at any byte that holds a record.
-	padding = 8
-	// maxWordBits allows vocabularies of up to 2^28 words.
-	maxWordBits = 28
+	// maxVocabulary bounds the number of word ids.
+	maxVocabulary = 1 << 28
 )
 
-// ErrFormat is wrapped by every error of Open: the bytes are no model that
-// this version reads.
+// ErrFormat is wrapped by every error of Open and Verify: the bytes are no
+// model that this version reads.
 var ErrFormat = errors.New("lm: not a usable n-gram section")
 
 // codebook turns the packed codes of one order into values.
 type codebook struct {
-	width  uint      // bits of a code
-	values []float32 // 2^width entries; nil when values are stored as they are
+	values []float32 // a power of two of them; nil when values are stored as they are
 }
 
 func (c *codebook) value(code uint64) float32 {
@@ -65,120 +66,124 @@ func (c *codebook) value(code uint64) float32 {
 	return c.values[code&uint64(len(c.values)-1)]
 }
 
-// level is one order's array of records.
-type level struct {
-	data                       []byte
-	count                      uint32
-	recordBits                 uint64
-	wordMask                   uint64
-	probAt, backAt, childAt    uint64 // bit offsets within a record
-	probMask, backMask, chMask uint64
-	prob, back                 codebook
-	last                       bool
+// levelShape is what must be known to lay a level out.
+type levelShape struct {
+	order    int
+	last     bool
+	count    uint32
+	contexts uint32
+	keys     monotoneShape
+	first    monotoneShape
 }
 
-// layout sets the widths of a level: order is 1-based, next the number of
-// n-grams of the following order.
-func (l *level) layout(order int, vocabulary, next uint32, probBits, backBits uint, last bool) {
-	wordBits := uint64(0)
+func (s *levelShape) append(dst []byte) []byte {
+	dst = binary.LittleEndian.AppendUint32(dst, s.count)
+	dst = binary.LittleEndian.AppendUint32(dst, s.contexts)
+	dst = append(dst, byte(s.keys.lowWidth), byte(s.first.lowWidth), 0, 0)
+	dst = binary.LittleEndian.AppendUint64(dst, s.keys.highBits)
+	return binary.LittleEndian.AppendUint64(dst, s.first.highBits)
+}
+
+func readShape(b []byte, order int, last bool) (levelShape, error) {
+	s := levelShape{order: order, last: last, count: binary.LittleEndian.Uint32(b), contexts: binary.LittleEndian.Uint32(b[4:])}
+	s.keys = monotoneShape{lowWidth: uint(b[8]), highBits: binary.LittleEndian.Uint64(b[12:])}
+	s.first = monotoneShape{lowWidth: uint(b[9]), highBits: binary.LittleEndian.Uint64(b[20:])}
 	if order > 1 {
-		wordBits = uint64(bits.Len32(vocabulary - 1))
+		s.keys.n = uint64(s.count)
 	}
-	l.last = last
-	l.wordMask = 1<<wordBits - 1
-	l.probAt = wordBits
-	l.probMask = 1<<probBits - 1
-	l.recordBits = wordBits + uint64(probBits)
-	if last {
-		return
+	if !last {
+		s.first.n = uint64(s.count) + 1
 	}
-	l.backAt = l.recordBits
-	l.backMask = 1<<backBits - 1
-	l.childAt = l.backAt + uint64(backBits)
-	childBits := uint64(bits.Len32(next))
-	l.chMask = 1<<childBits - 1
-	l.recordBits = l.childAt + childBits
+	if s.count == math.MaxUint32 || s.contexts > s.count || !s.keys.sound() || !s.first.sound() || b[10]|b[11] != 0 ||
+		order == 1 && (s.count == 0 || s.count > maxVocabulary) {
+		return s, fmt.Errorf("%w: shape of its %d-grams", ErrFormat, order)
+	}
+	return s, nil
 }
 
-// bytes returns the length of the level's records with their padding.
-func (l *level) bytes() uint64 {
-	records := uint64(l.count)
-	if !l.last {
-		records++
+// sound reports whether positions fit their samples and widths a load.
+func (s monotoneShape) sound() bool {
+	if s.n == 0 {
+		return s.lowWidth == 0 && s.highBits == 0
 	}
-	return (records*l.recordBits+7)/8 + padding
+	return s.lowWidth <= 40 && s.highBits >= s.n && s.highBits <= math.MaxUint32
 }
 
-// field loads up to 57 bits that begin at bit position at.
-func (l *level) field(at, mask uint64) uint64 {
-	return binary.LittleEndian.Uint64(l.data[at>>3:]) >> (at & 7) & mask
+// parts returns the lengths in bytes of keys, probs, context bits and counts,
+// backs, first.
+func (s *levelShape) parts(probBits, backBits uint) [6]uint64 {
+	var p [6]uint64
+	if s.order > 1 {
+		p[0] = s.keys.bytes()
+	}
+	p[1] = packedBytes(uint64(s.count), probBits)
+	if !s.last {
+		p[2], p[3] = flagBytes(uint64(s.count))
+		p[4] = packedBytes(uint64(s.contexts), backBits)
+		p[5] = s.first.bytes()
+	}
+	return p
 }
 
-func (l *level) word(i uint32) uint32 {
-	return uint32(l.field(uint64(i)*l.recordBits, l.wordMask))
+func (s *levelShape) bytes(probBits, backBits uint) uint64 {
+	sum := uint64(0)
+	for _, n := range s.parts(probBits, backBits) {
+		sum += n
+	}
+	return sum
+}
+
+// level is one order's n-grams.
+type level struct {
+	shape      levelShape
+	keys       monotone
+	probs      packed
+	context    flags
+	backs      packed
+	first      monotone
+	prob, back codebook
+}
+
+// over lays the level out over data of shape.bytes bytes.
+func (l *level) over(data []byte, probBits, backBits uint) {
+	var part [6][]byte
+	at := uint64(0)
+	for i, n := range l.shape.parts(probBits, backBits) {
+		part[i] = data[at : at+n : at+n]
+		at += n
+	}
+	if l.shape.order > 1 {
+		l.keys = l.shape.keys.over(part[0])
+	}
+	l.probs = newPacked(probBits, part[1])
+	if !l.shape.last {
+		l.context = flags{part[2], part[3]}
+		l.backs = newPacked(backBits, part[4])
+		l.first = l.shape.first.over(part[5])
+	}
 }
 
 func (l *level) logProb(i uint32) float32 {
-	return l.prob.value(l.field(uint64(i)*l.recordBits+l.probAt, l.probMask))
+	return l.prob.value(l.probs.at(uint64(i)))
 }
 
-func (l *level) backoff(i uint32) float32 {
-	return l.back.value(l.field(uint64(i)*l.recordBits+l.backAt, l.backMask))
+// backoff returns the weight of n-gram i as a context; ok is false if it is
+// none.
+func (l *level) backoff(i uint32) (weight float32, ok bool) {
+	if !l.context.has(i) {
+		return 0, false
+	}
+	at := l.context.rank(i)
+	if at >= uint64(l.shape.contexts) {
+		return 0, false
+	}
+	return l.back.value(l.backs.at(at)), true
 }
 
-// children returns the range of record i's children in the next level, which
-// holds limit records. A damaged range comes out empty or short, never wild.
-func (l *level) children(i, limit uint32) (lo, hi uint32) {
-	at := uint64(i)*l.recordBits + l.childAt
-	lo = uint32(l.field(at, l.chMask))
-	hi = min(uint32(l.field(at+l.recordBits, l.chMask)), limit)
+// children returns the range of n-gram i's children in the next level, which
+// holds limit n-grams. A damaged range comes out empty or short, never wild.
+func (l *level) children(i, limit uint32) (lo, hi uint64) {
+	lo, hi = l.first.pair(uint64(i))
+	hi = min(hi, uint64(limit))
 	return min(lo, hi), hi
-}
-
-// notContext is the stored back-off of an n-gram that is no context: minus
-// zero, so that adding it changes nothing.
-var notContext = float32(math.Copysign(0, -1))
-
-func isContext(backoff float32) bool {
-	return math.Float32bits(backoff) != 1<<31
-}
-
-// reader walks the header.
-type reader struct {
-	rest []byte
-	err  error
-}
-
-func (r *reader) take(n uint64, what string) []byte {
-	if r.err != nil {
-		return nil
-	}
-	if uint64(len(r.rest)) < n {
-		r.err = fmt.Errorf("%w: cut within its %s", ErrFormat, what)
-		return nil
-	}
-	b := r.rest[:n:n]
-	r.rest = r.rest[n:]
-	return b
-}
-
-func (r *reader) codebook(width uint, limit float32, what string) codebook {
-	c := codebook{width: width}
-	if width == exactBits {
-		return c
-	}
-	b := r.take(4<<width, what)
-	if b == nil {
-		return c
-	}
-	c.values = make([]float32, 1<<width)
-	for i := range c.values {
-		v := math.Float32frombits(binary.LittleEndian.Uint32(b[4*i:]))
-		if !(v <= limit && v >= -maxNats) {
-			r.err = fmt.Errorf("%w: value %v in its %s", ErrFormat, v, what)
-			return c
-		}
-		c.values[i] = v
-	}
-	return c
 }

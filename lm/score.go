@@ -6,16 +6,16 @@ package lm
 // score compare equal. The zero State is the empty context. States of
 // different models must not be mixed.
 type State struct {
-	words   [MaxOrder - 1]uint32  // nearest first
+	// keys[0] is the nearest word; keys[i] is the place of the context of
+	// length i+1 among its siblings, which are those that differ from it in
+	// the leftmost word alone.
+	keys    [MaxOrder - 1]uint32
 	backoff [MaxOrder - 1]float32 // of the context of length i+1, nats
 	n       uint8
 }
 
 // Len returns the number of words the state holds.
 func (s State) Len() int { return int(s.n) }
-
-// Word returns the word i places to the left of the next one, i in 0..Len()-1.
-func (s State) Word(i int) uint32 { return s.words[i] }
 
 // Begin returns the state after the word that opens a sentence.
 func (m *Model) Begin(class uint32) State {
@@ -35,33 +35,29 @@ func (m *Model) Score(s State, w uint32) (logp float32, next State) {
 // must not be s. It allocates nothing.
 func (m *Model) Advance(s *State, w uint32, next *State) float32 {
 	*next = State{}
-	if w >= m.levels[0].count {
+	if w >= m.levels[0].shape.count {
 		return -maxNats
 	}
-	at, found := w, 0 // the longest n-gram so far and its level
+	at, key := w, w // the longest n-gram so far
+	found := 0      // its level
 	n := min(int(s.n), m.order-1)
 	for {
 		l := &m.levels[found]
-		if l.last {
+		if l.shape.last {
 			break
 		}
-		if back := l.backoff(at); isContext(back) {
-			next.words[found], next.backoff[found] = w, back
-			if found > 0 {
-				next.words[found] = s.words[found-1]
-			}
+		if back, ok := l.backoff(at); ok {
+			next.keys[found], next.backoff[found] = key, back
 			next.n = uint8(found + 1)
 		}
 		if found == n {
 			break
 		}
-		below := &m.levels[found+1]
-		lo, hi := l.children(at, below.count)
-		child, ok := below.find(lo, hi, s.words[found])
+		child, place, ok := m.child(found, at, s.keys[found])
 		if !ok {
 			break
 		}
-		at = child
+		at, key = child, place
 		found++
 	}
 	logp := m.levels[found].logProb(at)
@@ -71,19 +67,14 @@ func (m *Model) Advance(s *State, w uint32, next *State) float32 {
 	return logp
 }
 
-// find returns the record of word within [lo, hi).
-func (l *level) find(lo, hi, word uint32) (uint32, bool) {
-	for lo < hi {
-		mid := lo + (hi-lo)/2
-		w := l.word(mid)
-		if w == word {
-			return mid, true
-		}
-		if w < word {
-			lo = mid + 1
-		} else {
-			hi = mid
-		}
+// child returns the child of n-gram i of level k that has a key, and its place
+// among the children.
+func (m *Model) child(k int, i, key uint32) (child, place uint32, ok bool) {
+	below := &m.levels[k+1]
+	lo, hi := m.levels[k].children(i, below.shape.count)
+	if lo == hi {
+		return 0, 0, false
 	}
-	return 0, false
+	at, ok := below.keys.search(lo, hi, uint64(key))
+	return uint32(at), uint32(at - lo), ok
 }

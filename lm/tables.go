@@ -25,7 +25,7 @@ func (t Tables) Len(k int) int {
 
 // Contexts returns, for each n-gram of order k+1 >= 2, the index in order k of
 // its context: the n-gram without its last word. prev is the result for the
-// order below, nil for bigrams. An n-gram whose context is lacking is an error:
+// order below, nil for bigrams; the result for bigrams is Word itself. An n-gram whose context is lacking is an error:
 // no query could reach it.
 //
 // A child's context is a child of its parent's context, and both lists are

@@ -1,7 +1,6 @@
 package train
 
 import (
-	"context"
 	"math"
 )
 
@@ -125,18 +124,17 @@ func relativeEntropy(p, lower, back, unseen float64) float64 {
 	return -p*(math.Log(lower*renormalised)-math.Log(p)) - mass*(math.Log(renormalised)-math.Log(back))
 }
 
-// prune removes the n-grams whose loss is not above the threshold and
-// makes up for them. It may be called again with a higher threshold.
-func (e *estimator) prune(ctx context.Context, losses [][]float32, threshold float32) error {
-	keep := func(k int, i int) bool { return k == 0 || losses[k][i] > threshold }
+// prune removes the n-grams whose loss is not above the threshold. It may be
+// called again with a higher threshold. After Revised, the tables want a new
+// estimate.
+func (e *estimator) prune(losses [][]float32, threshold float32) {
+	keep := func(k, i int) bool { return k == 0 || losses[k][i] > threshold }
 	if e.options.Prune == Revised {
 		e.revise(keep)
-		e.compact(losses, keep)
-		return e.estimate(ctx)
+	} else {
+		e.renormalise(keep)
 	}
-	e.renormalise(keep)
 	e.compact(losses, keep)
-	return nil
 }
 
 // revise moves the counts of n-grams about to be pruned to their parents and
@@ -241,7 +239,11 @@ func (e *estimator) filter(k int, keep func(i int) bool) {
 	} else {
 		l.adjusted = filtered(l.adjusted, keep)
 	}
-	e.contexts[k] = filtered(e.contexts[k], keep)
+	if k == 1 {
+		e.contexts[k] = l.word // the context of a bigram is its first word
+	} else {
+		e.contexts[k] = filtered(e.contexts[k], keep)
+	}
 	e.tables[k].LogProb = filtered(e.tables[k].LogProb, keep)
 	e.tables[k].Backoff = filtered(e.tables[k].Backoff, keep)
 	if e.lost != nil && k < len(e.lost) {

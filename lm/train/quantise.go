@@ -14,22 +14,31 @@ const sampleSize = 1 << 20
 const lloydRounds = 30
 
 // codebooks learns the values that stand for probabilities and back-offs.
-// contexts marks which n-grams have a back-off to speak of.
-func codebooks(t lm.Tables, o Options) lm.Codebooks {
+func (e *estimator) codebooks() lm.Codebooks {
 	var b lm.Codebooks
-	if o.ProbBits != ExactBits {
-		b.ProbBits = o.ProbBits
-		for k := range t {
-			b.Prob = append(b.Prob, learn(t[k].LogProb, 1<<o.ProbBits))
+	if e.options.ProbBits != ExactBits {
+		b.ProbBits = e.options.ProbBits
+		for k := range e.tables {
+			b.Prob = append(b.Prob, learn(e.tables[k].LogProb, 1<<b.ProbBits))
 		}
 	}
-	if o.BackoffBits != ExactBits {
-		b.BackoffBits = o.BackoffBits
-		for k := range len(t) - 1 {
-			b.Backoff = append(b.Backoff, learn(t[k].Backoff, 1<<o.BackoffBits-1))
+	if e.options.BackoffBits != ExactBits {
+		b.BackoffBits = e.options.BackoffBits
+		for k := range len(e.tables) - 1 {
+			b.Backoff = append(b.Backoff, learn(e.contextBackoffs(k), 1<<b.BackoffBits))
 		}
 	}
 	return b
+}
+
+// contextBackoffs returns the back-offs of the n-grams of order k+1 that are
+// contexts: no other back-off is stored.
+func (e *estimator) contextBackoffs(k int) []float32 {
+	isContext := make([]bool, e.tables.Len(k))
+	for _, h := range e.contexts[k+1] {
+		isContext[h] = true
+	}
+	return filtered(slices.Clone(e.tables[k].Backoff), func(i int) bool { return isContext[i] })
 }
 
 // learn returns at most n ascending centres: bins of equal population (Federico

@@ -108,8 +108,11 @@ func TestReferenceEntries(t *testing.T) {
 func TestReferenceDiscounts(t *testing.T) {
 	r, _ := trainReference(t, train.Options{Order: 5})
 	want := []train.Discounts{
-		{.572844, 1.19388, 1.79976}, {.825614, 1.11900, 1.39947}, {.911204, 1.14041, 1.53981},
-		{.959102, 1.27086, 1.90810}, {.992837, 1.70941, 3.00000},
+		{.572844, 1.19388, 1.79976},
+		{.825614, 1.11900, 1.39947},
+		{.911204, 1.14041, 1.53981},
+		{.959102, 1.27086, 1.90810},
+		{.992837, 1.70941, 3.00000},
 	}
 	for k, d := range r.Discounts {
 		for i := range d {

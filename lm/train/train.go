@@ -44,9 +44,7 @@ func Build(ctx context.Context, counts *Counts, o Options) (*Result, error) {
 	}
 	if o.Size > 0 || o.Threshold > 0 || len(o.MinCounts) > 0 {
 		o.Progress(Progress{Stage: "prune"})
-		losses := e.losses()
-		r.Threshold = e.threshold(losses)
-		if err := e.prune(ctx, losses, r.Threshold); err != nil {
+		if r.Threshold, err = e.pruneAll(ctx); err != nil {
 			return nil, err
 		}
 	}
@@ -56,6 +54,6 @@ func Build(ctx context.Context, counts *Counts, o Options) (*Result, error) {
 	for k := range r.Tables {
 		r.Kept = append(r.Kept, r.Tables.Len(k))
 	}
-	r.Section, err = lm.Encode(r.Tables, codebooks(r.Tables, o))
+	r.Section, err = lm.Encode(r.Tables, e.codebooks())
 	return r, err
 }
