@@ -73,7 +73,7 @@ func leadLen(core []byte) int {
 		}
 		r, m := utf8.DecodeRune(core[i:])
 		switch r {
-		case '+', '-', '~', '<', '>', '=', '#', '\'', '\u2018', '\u2019', '\u00B1', '\u00D7', '\u2116', '\u2212', '\u2248', '\u2264', '\u2265':
+		case '+', '-', '~', '<', '>', '=', '#', '\u00B1', '\u00D7', '\u2116', '\u2212', '\u2248', '\u2264', '\u2265':
 			i += m
 			continue
 		}
@@ -171,8 +171,11 @@ func unitLen(b []byte) int {
 	for n > 0 && n < len(b) && (numeralLen(b[n:]) > 1 || b[n] == '2' || b[n] == '3') {
 		n += numeralLen(b[n:])
 	}
-	if n < len(b) && b[n] == '+' {
+	switch {
+	case n < len(b) && b[n] == '+':
 		n++
+	case n == 0 && (string(b) == "'s" || string(b) == "\u2019s"): // 1990's
+		return len(b)
 	}
 	if n < len(b) && alnumByte(b[n]) && !separates(b[n:]) {
 		return 0

@@ -8,9 +8,10 @@ import (
 // This file says what is left alone. Nothing is looked up: the shape decides.
 //
 // A rule sees the core of a run of characters without white space: the run from
-// the start of a word to the first dash, double quotation mark, ellipsis,
-// semicolon, bracket after a letter, or comma (one between digits stays inside),
-// less the punctuation that ends it. The first rule of the table that matches
+// its start, or from after a mark inside it, to the first bracket ("()" and what
+// "<" and "{" open stay inside), dash, double quotation mark, ellipsis,
+// semicolon or comma (one between digits stays inside), less the punctuation that
+// ends it. The first rule of the table that matches
 // makes one token of what it matched.
 //
 // Words that no rule took have a kind by their letters alone, see wordKind.
@@ -35,7 +36,7 @@ var rules = [...]rule{
 	{"path: /etc ~/x ./x C:\\x \\\\host x/ a1/b.c", Literal, cCode, whole(path)},
 	{"snake_case, __name", Literal, cCode, whole(snake)},
 	{"R&D", Acronym, cCode, whole(ampersand)},
-	{"U.S., e.g., Ph.D.", Acronym, cPoint, whole(dottedAcronym)},
+	{"U.S., e.g., Ph.D.", Acronym, cPoint, dottedAcronym},
 	{"host.name, file.ext, dotted.name", Literal, cPoint, whole(dotted)},
 	{"letters with digits: part numbers, hashes, identifiers", Literal, cDigit, whole(mixed)},
 }
@@ -55,6 +56,9 @@ func whole(holds func([]byte) bool) func([]byte) int {
 // and placeholders may hold white space, and so end beyond the run, which ends
 // at q.
 func (s *Segmenter) leftAlone(p, q int) int {
+	if !beginsCore(s.text[p:q]) {
+		return p
+	}
 	if n := enclosed(s.text[p:]); n > 0 {
 		s.add(Literal, p, p+n)
 		return p + n
@@ -120,6 +124,22 @@ func coreOf(run []byte) []byte {
 	return core
 }
 
+// beginsCore reports that a rule may hold from here: letters and digits, and the
+// marks that rules begin with.
+func beginsCore(run []byte) bool {
+	switch c := run[0]; c {
+	case '/', '\\', '~', '@', '#', '$', '%', '+', '-', '<', '>', '=', '{', '`', '_':
+		return true
+	case '.':
+		return len(run) > 1 && run[1] != '.' || len(run) > 2 && run[2] == '/'
+	case 0xE2:
+		r, _ := utf8.DecodeRune(run)
+		return !('\u2010' <= r && r <= '\u203A')
+	default:
+		return alnumByte(c)
+	}
+}
+
 // cutsCore reports that the core ends before run[i].
 func cutsCore(run []byte, i int) bool {
 	switch run[i] {
@@ -127,8 +147,12 @@ func cutsCore(run []byte, i int) bool {
 		return true
 	case ',':
 		return !(digitAt(run, i-1) && digitAt(run, i+1))
-	case '(', '[':
-		return alnumByte(run[i-1]) && !bytes.HasPrefix(run[i:], []byte("()"))
+	case '[', ']':
+		return true
+	case '(':
+		return !bytes.HasPrefix(run[i:], []byte("()"))
+	case ')':
+		return run[i-1] != '('
 	case '-':
 		return i > 1 && i+1 < len(run) && run[i+1] == '-' && run[0] != '-'
 	case '.':
@@ -145,10 +169,6 @@ func trailing(core []byte, r rune) bool {
 	switch r {
 	case '.', ',', ':', '\'', '*', '`', '|', '\u2019', '\u2018', '\u00BB':
 		return true
-	case ')':
-		return bytes.IndexByte(core, '(') < 0
-	case ']':
-		return bytes.IndexByte(core, '[') < 0
 	case '}':
 		return bytes.IndexByte(core, '{') < 0
 	case '>':
@@ -301,7 +321,7 @@ func path(core []byte) bool {
 	if slash < 0 || len(core) == 1 {
 		return false
 	}
-	if slash == 0 || core[0] == '~' || core[0] == '.' || core[len(core)-1] == '/' ||
+	if slash == 0 && (alnumByte(core[1]) || core[1] == '.' || core[1] == '_') || core[0] == '~' || core[0] == '.' || core[len(core)-1] == '/' ||
 		bytes.Contains(core, []byte("//")) || slash == 2 && core[1] == ':' {
 		return true
 	}
@@ -336,31 +356,57 @@ func ampersand(core []byte) bool {
 }
 
 // dottedAcronym: single letters with points between (a.m, U.S.A), or short
-// capitalised parts of which one has one letter (Ph.D, M.Sc).
-func dottedAcronym(core []byte) bool {
-	if bytes.IndexByte(core, '.') < 0 {
-		return false
-	}
-	single, other := 0, 0
-	for part := range bytes.SplitSeq(core, []byte(".")) {
+// capitalised parts of which one has one letter (Ph.D, M.Sc). A hyphen may follow
+// (U.S.-led), or a possessive, which is taken.
+func dottedAcronym(core []byte) int {
+	end, single, other := 0, 0, 0
+	for {
+		n := 0
+		for end+n < len(core) && classes[core[end+n]]&cLetter != 0 {
+			n++
+		}
 		switch {
-		case !all(part, cLetter):
-			return false
-		case len(part) == 1:
+		case n == 0 && end > 0 && (end < len(core) && core[end] != '.'):
+			end-- // the point is the acronym's last
+			return acronymTail(core, end, single, other)
+		case n == 1:
 			single++
-		case len(part) < 4 && classes[part[0]]&cUpper != 0:
+		case n > 1 && n < 4 && classes[core[end]]&cUpper != 0:
 			other++
 		default:
-			return false
+			return 0
 		}
+		if end += n; end == len(core) || core[end] != '.' {
+			return acronymTail(core, end, single, other)
+		}
+		end++
 	}
-	return other == 0 || single > 0 && other == 1
+}
+
+// acronymTail checks the parts of a dotted acronym and what follows it.
+func acronymTail(core []byte, end, single, other int) int {
+	if single+other < 2 || single == 0 || other > 1 {
+		return 0
+	}
+	tail := bytes.TrimPrefix(core[end:], []byte("."))
+	switch {
+	case len(tail) == 0:
+		return end
+	case string(tail) == "'s" || string(tail) == "\u2019s":
+		return len(core)
+	case tail[0] == '-' || bytes.HasPrefix(tail, []byte("\u2013")):
+		return len(core) - len(tail)
+	}
+	return 0
 }
 
 // dotted: a point with letters or digits around it. When what follows the one
 // point is a capitalised function word after a small one ("end.The"), it is a
 // full stop that lacks its space.
 func dotted(core []byte) bool {
+	if i := bytes.LastIndexByte(core, '-'); i > 0 && dottedAcronym(core[i+1:]) > 0 && plainWord(core[:i]) {
+		return false // non-U.S.
+	}
 	inner := 0
 	for i := range core {
 		if core[i] != '.' || i+1 == len(core) || !alnumByte(core[i+1]) {

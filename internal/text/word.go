@@ -11,7 +11,7 @@ import "unicode/utf8"
 // a letter or digit. Letters of scripts that the annex breaks by the character
 // are kept together, since words with them are left alone in any case.
 func (s *Segmenter) word(start, p, q int) int {
-	var w shape
+	w := shape{lead: p > start}
 	for p < q {
 		c := s.text[p]
 		switch m := classes[c]; {
@@ -26,8 +26,12 @@ func (s *Segmenter) word(start, p, q int) int {
 			w.upper++
 			p++
 			continue
-		case m&cDigit != 0, c == '_' && alnumAt(s.text, p+1, q):
-			w.code = true
+		case m&cDigit != 0:
+			w.digits = true
+			p++
+			continue
+		case c == '_' && alnumAt(s.text, p+1, q):
+			w.under = true
 			p++
 			continue
 		case m&(cHigh|cApos|cCode) == 0:
@@ -48,8 +52,8 @@ type shape struct {
 	lower, upper, other int  // letters: Latin by case, Latin without case
 	first               bool // its first cased letter is a capital
 	foreign             bool // it has letters of another script, or bytes that are not UTF-8
-	code                bool // it has digits or underscores
-	inner               bool // it has an apostrophe inside
+	digits, under       bool // it has digits, underscores
+	lead, inner         bool // it has an apostrophe before its first letter, between letters
 	high                bool // it has characters above ASCII
 }
 
@@ -114,7 +118,9 @@ func (s *Segmenter) addWord(start, end int, w shape) {
 		if w.letters() > 0 {
 			t.Kind = Literal
 		}
-	case w.code:
+	case w.digits && w.letters() == 0 && !w.under, w.digits && w.lead: // the second is '90s
+		t.Kind = Number
+	case w.digits, w.under:
 		t.Kind = Literal
 	default:
 		t.Case = casePattern(w.lower, w.upper, w.first)
