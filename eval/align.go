@@ -12,6 +12,10 @@ import (
 // one token at most on each side.
 type edit struct{ i, i2, j, j2 int }
 
+// unaligned says whether the edit stands for texts too long and too unlike to
+// be aligned.
+func (e edit) unaligned() bool { return e.i2-e.i > 3 || e.j2-e.j > 5 }
+
 // Costs of the alignment, guessed and then looked at on samples of five sets.
 // A word left out or put in costs one; a substitution costs by how unlike the
 // words are and always less than leaving one out and putting the other in; a
@@ -37,7 +41,7 @@ const maxCells = 1 << 22
 
 // align returns the edits that turn the source into the corrected text, in
 // order, by least cost. Equal tokens are no edits. Texts so long and so unlike
-// that they cannot be aligned come back as one edit.
+// that the table would be too large come back as one edit, which is unaligned.
 func align(source, corrected []token) []edit {
 	head := 0
 	for head < min(len(source), len(corrected)) && source[head].text == corrected[head].text {

@@ -79,6 +79,12 @@ func TestAlignmentIsBounded(t *testing.T) {
 	if got := align(a, b); len(got) != 1 || got[0] != (edit{0, 3000, 0, 3000}) {
 		t.Errorf("%d edits, the first %v", len(got), got[0])
 	}
+	s := Sentence{Source: strings.Repeat("ebb ", 3000), References: []string{strings.Repeat("flood ", 3000)}}
+	for _, span := range Gold(s, func(string) bool { return false }).Spans {
+		if !span.Neutral {
+			t.Fatalf("an error where nothing could be aligned: %+v", span)
+		}
+	}
 }
 
 func TestTokens(t *testing.T) {

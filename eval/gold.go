@@ -15,9 +15,9 @@ import (
 //     the observed form, and otherwise realword, if the two have a letter in
 //     five in common or Observed names it; a missing space (runon), a space
 //     too many or in the wrong place (split), and a word written twice (repeat);
-//   - in a Rewrite the same, but of these only what holds a form that is not
-//     known, and is answered by a form not too unlike it: a rewrite that changes
-//     known words may be mending grammar or style;
+//   - in a Rewrite the same, but of these only words written twice and what
+//     holds a form that is not known and is answered by one not too unlike it:
+//     a rewrite that changes known words may be mending grammar or style;
 //   - with several references and rewrites, only what at least half of them
 //     change. The corrections of all of them are accepted.
 //
@@ -41,7 +41,7 @@ func Gold(s Sentence, known func(string) bool) Item {
 			case i >= texts:
 				c.neutral = true
 			case i >= len(s.References):
-				c.neutral = c.neutral || !c.unknown || c.unlike > unlikeRewrite
+				c.neutral = c.neutral || c.kind != Repeat && (!c.unknown || c.unlike > unlikeRewrite)
 			case c.kind == Realword && s.Observed == "":
 				c.neutral = c.unlike > unlikeSlip
 			}
@@ -91,7 +91,7 @@ func describe(sourceText string, source []token, text string, corrected []token,
 	switch {
 	case len(to) == 0:
 		c.repeat(sourceText, source)
-	case !words || !ok || x == y && len(from) == len(to) && len(from) == 1 || hasDigits(from) || hasDigits(to):
+	case !words || !ok || hasDigits(from) || hasDigits(to), e.unaligned(), len(from) == 1 && len(to) == 1 && x == y:
 		c.neutral = true
 	case len(from) == 1 && len(to) > 1:
 		c.kind = Runon

@@ -90,6 +90,10 @@ func TestGoldOfSeveralTexts(t *testing.T) {
 			Source:   "Yestarday the ship arrive late.",
 			Rewrites: []string{"Yesterday the ship arrived late.", "Yesterday the ship came in late."},
 		}, "nonword Yestarday>Yesterday; - arrive"},
+		{"a word twice in a rewrite", eval.Sentence{
+			Source:   "Hail the the ship.",
+			Rewrites: []string{"Call the ship.", "Hail the ship."},
+		}, "- Hail; repeat the the>the"},
 		{"a rewrite too far from the form", eval.Sentence{
 			Source:   "The bosen sang.",
 			Rewrites: []string{"The crew sang.", "The crew sang."},

@@ -17,9 +17,10 @@ type Slips struct {
 }
 
 // Inject returns the items with slips in them, and a span for each. The words
-// of all items run on, so that short items have slips too; in a stretch of
-// words of which none has neighbours there is none, nor in a rest at the end
-// shorter than half a stretch. Capitals are carried over. The items must have no spans of their own.
+// of all items run on, so that short items have slips too. A stretch of words
+// of which none has neighbours gets none, nor does a rest at the end shorter
+// than half a stretch. Capitals are carried over. The items must have no spans
+// of their own.
 func Inject(items []Item, s Slips) []Item {
 	every := s.Every
 	if every <= 0 {

@@ -110,9 +110,10 @@ func (l *Lattice[S]) Reset(last int) {
 }
 
 // Add appends an edge and returns its index, which counts from 0 after each
-// Reset. Edges are best added in the order of the nodes they leave: then all words tried in one context are scored
-// together. The words are copied. An edge that does not fit takes its place in the
-// count and makes Run fail with [ErrEdge].
+// Reset. The words are copied. Edges are best added in the order of the nodes
+// they leave: then all words tried in one context are scored together. An edge
+// that does not fit takes its place in the count and makes Run fail with
+// [ErrEdge].
 func (l *Lattice[S]) Add(e Edge) int {
 	if err := l.check(e); err != nil {
 		if l.bad == nil {
