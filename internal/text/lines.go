@@ -39,17 +39,38 @@ func splitLines(dst []textLine, w []byte) []textLine {
 	return dst
 }
 
+// wrapWidth returns the width that the lines between two blank ones were broken
+// at by hand: that of the widest. It is 0 when they were not: when the widest is
+// beyond mostWrap, or fewer than half of the lines would join the next one.
+func wrapWidth(w []byte, lines []textLine) int {
+	width, joined := 0, 0
+	for _, l := range lines {
+		width = max(width, l.width)
+	}
+	if width > mostWrap {
+		return 0
+	}
+	for i := 1; i < len(lines); i++ {
+		if joins(w, lines[i-1], lines[i], width) {
+			joined++
+		}
+	}
+	if 2*joined < len(lines)-1 {
+		return 0
+	}
+	return width
+}
+
 // joins reports whether a paragraph goes on from line a to the next line b, so
-// that the line end between them is a mere space. Width is that of the widest
-// line between the blank lines around them.
+// that the line end between them is a mere space. Width is that of wrapWidth.
 //
 // It does when a was broken because it was full: the first word of b would not
 // have fitted in the width; or when b goes on in lower case. But lists, headings,
 // verse, addresses and text with one paragraph a line are not glued: a line that
-// begins with a list mark begins a block, and nothing is joined to lines shorter
-// than leastWrap or in text wider than mostWrap.
+// begins with a list mark begins a block, and nothing is joined to a line shorter
+// than leastWrap.
 func joins(w []byte, a, b textLine, width int) bool {
-	if width > mostWrap || a.width < leastWrap || listMark(w[b.start:b.end]) {
+	if width == 0 || a.width < leastWrap || listMark(w[b.start:b.end]) {
 		return false
 	}
 	if r, _ := utf8.DecodeRune(w[b.start:b.end]); isLower(r) {

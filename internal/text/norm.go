@@ -10,49 +10,46 @@ import (
 // Fold appends the normal form of a word to dst: Unicode NFC, lower case,
 // apostrophes as U+0027, hyphens as U+002D, ligatures of f spelled out, format
 // characters (the soft hyphen among them) left out. It is the form that the
-// lexicon is keyed by. Fold is idempotent, gives the same for NFC and NFD, and
-// allocates only when dst must grow. Bytes that are not UTF-8 are kept.
+// lexicon is keyed by. Fold is idempotent and gives the same for NFC and NFD.
+// It allocates only when dst must grow or the word is not in NFC. Bytes that
+// are not UTF-8 are kept.
 func Fold(dst, word []byte) []byte {
 	start := len(dst)
-	for i, c := range word {
+	if dst = appendFolded(dst, word); norm.NFC.QuickSpan(dst[start:]) == len(dst)-start {
+		return dst
+	}
+	var c composer
+	return c.compose(dst, start)
+}
+
+// appendFolded is Fold less the composing.
+func appendFolded(dst, word []byte) []byte {
+	for i := 0; i < len(word); {
+		c := word[i]
 		if c >= utf8.RuneSelf {
-			return foldRunes(dst, start, word[i:])
+			r, n := utf8.DecodeRune(word[i:])
+			if r == utf8.RuneError && n <= 1 {
+				dst = append(dst, c)
+			} else {
+				dst = appendFoldedRune(dst, r)
+			}
+			i += n
+			continue
 		}
-		if c == '`' {
+		switch {
+		case c == '`':
 			c = '\''
-		} else if 'A' <= c && c <= 'Z' {
+		case 'A' <= c && c <= 'Z':
 			c += 'a' - 'A'
 		}
 		dst = append(dst, c)
+		i++
 	}
 	return dst
 }
 
-// foldRunes is Fold for a rest that begins with a byte above ASCII; the form
-// begins at dst[start].
-func foldRunes(dst []byte, start int, rest []byte) []byte {
-	for i := 0; i < len(rest); {
-		r, n := utf8.DecodeRune(rest[i:])
-		if r == utf8.RuneError && n <= 1 {
-			dst = append(dst, rest[i])
-		} else {
-			dst = appendFolded(dst, r)
-		}
-		i += n
-	}
-	end := len(dst)
-	if norm.NFC.QuickSpan(dst[start:end]) == end-start {
-		return dst
-	}
-	// Compose behind the form, then move down. The NUL between them is a
-	// starter, which keeps Append from composing across.
-	dst = append(dst, 0)
-	dst = norm.NFC.Append(dst, dst[start:end]...)
-	return append(dst[:start], dst[end+1:]...)
-}
-
-// appendFolded appends the folded form of one code point.
-func appendFolded(dst []byte, r rune) []byte {
+// appendFoldedRune appends the folded form of one code point above ASCII.
+func appendFoldedRune(dst []byte, r rune) []byte {
 	switch {
 	case isApostrophe(r):
 		return append(dst, '\'')
@@ -69,6 +66,22 @@ func appendFolded(dst []byte, r rune) []byte {
 }
 
 var ligatures = [...]string{"ff", "fi", "fl", "ffi", "ffl", "st", "st"}
+
+// composer puts text into NFC with memory of its own, kept from call to call.
+type composer struct {
+	iter    norm.Iter
+	scratch []byte
+}
+
+// compose puts dst[start:] into NFC in place and returns the shorter or longer dst.
+func (c *composer) compose(dst []byte, start int) []byte {
+	c.scratch = append(c.scratch[:0], dst[start:]...)
+	dst = dst[:start]
+	for c.iter.Init(norm.NFC, c.scratch); !c.iter.Done(); {
+		dst = append(dst, c.iter.Next()...)
+	}
+	return dst
+}
 
 // isApostrophe reports the characters written for an apostrophe inside words:
 // the two right ones, and those that keyboards and converters put in their place.

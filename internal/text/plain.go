@@ -137,13 +137,10 @@ func (p *plainReader) blocks() (used int, more bool) {
 // more lines follow outside the window, and the block at the end is kept back.
 // It returns how many lines are done with and whether the receiver wants more.
 func (p *plainReader) paragraphs(lines []textLine, closed bool) (done int, more bool) {
-	width := 0
-	for _, l := range lines {
-		width = max(width, l.width)
-	}
+	width := wrapWidth(p.window, lines)
 	for i, l := range lines {
 		left := len(lines) - i - 1 // lines after this one
-		if !closed && (left == 0 || left == 1 && width <= mostWrap) {
+		if !closed && (left == 0 || left == 1 && width > 0) {
 			break // the window may cut the last line: it is not judged yet
 		}
 		if left > 0 && joins(p.window, l, lines[i+1], width) {

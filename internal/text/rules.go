@@ -89,9 +89,7 @@ func (s *Segmenter) leftAlone(p, q int) int {
 func (s *Segmenter) addRuled(kind Kind, start, end, q int) int {
 	var form []byte
 	if kind == Acronym {
-		n := len(s.arena)
-		s.arena = Fold(s.arena, s.text[start:end])
-		form = s.arena[n:len(s.arena):len(s.arena)]
+		form = s.fold(s.text[start:end])
 		if end < q && s.text[end] == '.' && bytes.IndexByte(form, '.') >= 0 {
 			end++
 		}
@@ -295,7 +293,7 @@ func codeInside(core []byte) bool {
 	for i := 1; i+1 < len(core); i++ {
 		switch core[i] {
 		case '@', '=', '+', '<', '>', '{', '}', '|', '^', '~', '%', '#', '$', '*':
-			if alnumByte(core[i-1]) && core[i+1] != '*' {
+			if (alnumByte(core[i-1]) || core[i-1] == '-' && i > 1) && core[i+1] != '*' {
 				return true
 			}
 		case ':':
@@ -462,10 +460,10 @@ func (s *Segmenter) wordKind(word []byte, w shape, c Case) Kind {
 			return Word
 		}
 		return Literal
-	case c == Lower && s.afterNumber() && spacedUnit(word):
-		return Literal
-	case c == Lower && len(word) < 6 && roman(word):
-		return Literal
+	case c == Lower:
+		if len(word) < 6 && (roman(word) || s.afterNumber() && spacedUnit(word)) {
+			return Literal
+		}
 	case c == Upper && roman(word):
 		return Number
 	case c == Upper && w.letters() < longCapitals && (!w.inner || bytes.HasSuffix(word, []byte("S"))):

@@ -19,6 +19,8 @@ type Segmenter struct {
 	tokens []Token
 	arena  []byte // normal forms that differ from the text
 
+	composer composer
+
 	lower  int  // words with lower-case letters in this sentence
 	upper  int  // words of six capitals and more in this sentence
 	quotes int  // straight double quotation marks in this sentence

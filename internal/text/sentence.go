@@ -19,10 +19,7 @@ func (s *Segmenter) endsSentence() bool {
 	last := len(s.tokens) - 1
 	i := last
 	for i > 0 && (s.tokens[i].Kind == Quote || s.tokens[i].Kind == Close) {
-		i--
-	}
-	if i < 0 {
-		return false
+		i -= s.noteLen(i)
 	}
 	t := &s.tokens[i]
 	point := s.text[t.End-1] == '.'
@@ -43,6 +40,15 @@ func (s *Segmenter) endsSentence() bool {
 		return true
 	}
 	return s.pointEnds(i, next)
+}
+
+// noteLen returns how many tokens a closing mark at token i stands for: three
+// when it closes the mark of a note ("so.[3]").
+func (s *Segmenter) noteLen(i int) int {
+	if i > 2 && s.tokens[i].Kind == Close && s.tokens[i-1].Kind == Number && s.tokens[i-2].Kind == Open && s.tokens[i-2].Glued {
+		return 3
+	}
+	return 1
 }
 
 // ahead is what is seen of the next run.
@@ -146,7 +152,7 @@ func (s *Segmenter) pointEnds(i int, next ahead) bool {
 	case next.none:
 		return true
 	case i == 1 && (letter || before.Kind == Number): // a list mark or an initial
-	case initial && before.Kind == Literal && !opensSentence(next.word) && !s.labelled(i-1): // J. Smith
+	case initial && s.initial(i-1) && !opensSentence(next.word) && !s.labelled(i-1): // J. Smith
 	case letter && before.Kind == Literal && next.digit: // p. 12
 		initial = false
 	case before.Kind == Word && s.abbreviated(before, next):
@@ -161,6 +167,12 @@ func (s *Segmenter) pointEnds(i int, next ahead) bool {
 		point.Kind = Other
 	}
 	return false
+}
+
+// initial reports that the capital at token i may be that of a name: not the I
+// of "so do I", unless another initial stands before it.
+func (s *Segmenter) initial(i int) bool {
+	return s.text[s.tokens[i].Start] != 'I' || s.tokens[i-1].Kind == Acronym
 }
 
 // labelled reports that the letter at token i names a thing rather than a

@@ -1,6 +1,10 @@
 package text
 
-import "unicode/utf8"
+import (
+	"unicode/utf8"
+
+	"golang.org/x/text/unicode/norm"
+)
 
 // word appends the word that starts at start and has its first letter or digit
 // at p (a leading apostrophe lies between). It returns its end.
@@ -12,13 +16,17 @@ import "unicode/utf8"
 // are kept together, since words with them are left alone in any case.
 func (s *Segmenter) word(start, p, q int) int {
 	w := shape{lead: p > start}
+	text := s.text[:q]
 	for p < q {
-		c := s.text[p]
-		switch m := classes[c]; {
-		case m&cLower != 0:
-			w.lower++
+		from := p
+		for p < q && 'a' <= text[p] && text[p] <= 'z' {
 			p++
-			continue
+		}
+		if w.lower += p - from; p == q {
+			break
+		}
+		c := text[p]
+		switch m := classes[c]; {
 		case m&cUpper != 0:
 			if w.lower+w.upper == 0 {
 				w.first = true
@@ -30,7 +38,7 @@ func (s *Segmenter) word(start, p, q int) int {
 			w.digits = true
 			p++
 			continue
-		case c == '_' && alnumAt(s.text, p+1, q):
+		case c == '_' && alnumAt(text, p+1, q):
 			w.under = true
 			p++
 			continue
@@ -142,8 +150,16 @@ func (s *Segmenter) norm(word []byte, w shape) []byte {
 	if w.upper == 0 && !w.high {
 		return word[:len(word):len(word)]
 	}
+	return s.fold(word)
+}
+
+// fold is Fold into the arena.
+func (s *Segmenter) fold(word []byte) []byte {
 	n := len(s.arena)
-	s.arena = Fold(s.arena, word)
+	s.arena = appendFolded(s.arena, word)
+	if norm.NFC.QuickSpan(s.arena[n:]) < len(s.arena)-n {
+		s.arena = s.composer.compose(s.arena, n)
+	}
 	return s.arena[n:len(s.arena):len(s.arena)]
 }
 
