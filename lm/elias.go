@@ -6,7 +6,7 @@ import (
 )
 
 // sampleEvery is the number of ones, or zeros, between stored positions.
-const sampleEvery = 256
+const sampleEvery = 64
 
 // scanAtMost is the length up to which a range is searched element by element
 // rather than by its high bits.
