@@ -41,21 +41,28 @@ func splitLines(dst []textLine, w []byte) []textLine {
 
 // wrapWidth returns the width that the lines between two blank ones were broken
 // at by hand: that of the widest. It is 0 when they were not: when the widest is
-// beyond mostWrap, or fewer than half of the lines would join the next one.
+// beyond mostWrap, or when fewer than half of the lines that may join the next
+// one (no short line, no list mark) do.
 func wrapWidth(w []byte, lines []textLine) int {
-	width, joined := 0, 0
+	width := 0
 	for _, l := range lines {
 		width = max(width, l.width)
 	}
 	if width > mostWrap {
 		return 0
 	}
+	may, joined := 0, 0
 	for i := 1; i < len(lines); i++ {
-		if joins(w, lines[i-1], lines[i], width) {
+		a, b := lines[i-1], lines[i]
+		if a.width < leastWrap || listMark(w[b.start:b.end]) {
+			continue
+		}
+		may++
+		if joins(w, a, b, width) {
 			joined++
 		}
 	}
-	if 2*joined < len(lines)-1 {
+	if 2*joined < may {
 		return 0
 	}
 	return width

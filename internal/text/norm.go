@@ -87,7 +87,8 @@ func (c *composer) compose(dst []byte, start int) []byte {
 // the two right ones, and those that keyboards and converters put in their place.
 func isApostrophe(r rune) bool {
 	switch r {
-	case '\'', '\u2019', '\u2018', '\u201B', '\u02BB', '\u02BC', '\u2032', '\uFF07', '`', '\u00B4':
+	case '\'', '\u2019', '\u2018', '\u201B', '\u02BB', '\u02BC', '\u2032', '\uFF07', '`', '\u00B4',
+		'\u1FEF', '\u1FFD': // these two are ` and U+00B4 in NFC
 		return true
 	}
 	return false
