@@ -17,7 +17,7 @@ type Codebooks struct {
 // Encode writes a model as a section. The same tables and codebooks give the
 // same bytes. The tables must hold the context of each n-gram (see Contexts).
 func Encode(t Tables, books Codebooks) ([]byte, error) {
-	e := encoder{tables: t, books: books, probBits: books.ProbBits, backBits: books.BackoffBits}
+	e := encoder{tables: t, books: books, probBits: uint64(books.ProbBits), backBits: uint64(books.BackoffBits)}
 	if e.probBits == 0 {
 		e.probBits = exactBits
 	}
@@ -28,7 +28,7 @@ func Encode(t Tables, books Codebooks) ([]byte, error) {
 		return nil, fmt.Errorf("lm: codes of %d and %d bits", e.probBits, e.backBits)
 	}
 	var err error
-	if e.plan, err = newPlan(t); err != nil {
+	if e.plan, err = newPlan(t, e.probBits, e.backBits); err != nil {
 		return nil, err
 	}
 	e.header()
@@ -41,13 +41,13 @@ func Encode(t Tables, books Codebooks) ([]byte, error) {
 // Size returns the bytes of the section that Encode makes of tables with codes
 // of the given widths, 32 for exact values.
 func Size(t Tables, probBits, backBits uint) (int64, error) {
-	p, err := newPlan(t)
+	p, err := newPlan(t, uint64(probBits), uint64(backBits))
 	if err != nil {
 		return 0, err
 	}
-	size := uint64(8 + shapeBytes*len(t))
+	size := uint64(8)
 	for k := range p.shapes {
-		size += p.shapes[k].bytes(probBits, backBits)
+		size += shapeSize + p.shapes[k].bytes()
 		if probBits != exactBits {
 			size += 4 << probBits
 		}
@@ -62,7 +62,7 @@ type encoder struct {
 	tables             Tables
 	books              Codebooks
 	plan               *plan
-	probBits, backBits uint
+	probBits, backBits uint64
 	out                []byte
 	err                error
 }
@@ -84,7 +84,7 @@ func (e *encoder) header() {
 }
 
 // codebook writes 2^width values, the last one repeated.
-func (e *encoder) codebook(books [][]float32, k int, width uint) {
+func (e *encoder) codebook(books [][]float32, k int, width uint64) {
 	if k >= len(books) || len(books[k]) == 0 || len(books[k]) > 1<<width {
 		e.err = fmt.Errorf("lm: no codebook of up to %d values for the %d-grams", 1<<width, k+1)
 		return
@@ -96,37 +96,53 @@ func (e *encoder) codebook(books [][]float32, k int, width uint) {
 }
 
 func (e *encoder) level(k int) {
-	if e.err != nil {
-		return
-	}
-	t := &e.tables[k]
 	l := level{shape: e.plan.shapes[k]}
 	start := len(e.out)
-	e.out = append(e.out, make([]byte, l.shape.bytes(e.probBits, e.backBits))...)
-	l.over(e.out[start:], e.probBits, e.backBits)
+	e.out = append(e.out, make([]byte, l.bytes())...)
+	l.over(e.out[start:])
+	at, b := uint64(0), uint64(0)
+	for c := range e.plan.blocks(k) {
+		if e.err != nil {
+			return
+		}
+		entry := l.directory[b*entrySize:]
+		binary.LittleEndian.PutUint32(entry, uint32(at))
+		binary.LittleEndian.PutUint32(entry[4:], uint32(c.firstBase))
+		binary.LittleEndian.PutUint64(entry[8:], c.keyBase)
+		at = e.block(l.data, at, k, c)
+		b++
+	}
+}
+
+// block writes one block at a byte offset and returns the offset behind it.
+func (e *encoder) block(data []byte, at uint64, k int, c *content) uint64 {
 	if k > 0 {
-		l.keys.fill(e.plan.keys(k))
+		at = putRun(data, at, c.keys)
 	}
-	for i, p := range t.LogProb {
-		l.probs.set(uint64(i), e.code(p, 0, e.books.Prob, k, e.probBits))
+	if k < len(e.tables)-1 {
+		at = putRun(data, at, c.ends)
+		binary.LittleEndian.PutUint64(data[at:], c.context)
+		at += 8
 	}
-	if l.shape.last {
-		return
+	t := &e.tables[k]
+	for i := range c.n {
+		code := e.code(t.LogProb[c.start+i], 0, e.books.Prob, k, e.probBits)
+		storeBits(data, at*8+uint64(i)*e.probBits, code)
 	}
-	l.first.fill(func(i uint64) uint64 { return uint64(t.First[i]) })
-	n := uint64(0)
-	for i, isContext := range e.plan.isContext[k] {
-		if isContext {
-			setBit(l.context.data, uint64(i))
-			l.backs.set(n, e.code(t.Backoff[i], maxNats, e.books.Backoff, k, e.backBits))
-			n++
+	at += bytesFor(uint64(c.n) * e.probBits)
+	place := uint64(0)
+	for i := range c.n {
+		if c.context>>i&1 != 0 {
+			code := e.code(t.Backoff[c.start+i], maxNats, e.books.Backoff, k, e.backBits)
+			storeBits(data, at*8+place*e.backBits, code)
+			place++
 		}
 	}
-	l.context.count()
+	return at + bytesFor(place*e.backBits)
 }
 
 // code returns what stands for a value of order k+1.
-func (e *encoder) code(v, limit float32, books [][]float32, k int, width uint) uint64 {
+func (e *encoder) code(v, limit float32, books [][]float32, k int, width uint64) uint64 {
 	if !inRange(v, limit) {
 		e.err = fmt.Errorf("lm: value %v of a %d-gram", v, k+1)
 		return 0

@@ -11,21 +11,12 @@ type Explanation struct {
 
 // Explain scores w in s as Score does and says how the score came about.
 func (m *Model) Explain(s State, w uint32) Explanation {
-	if w >= m.levels[0].shape.count {
-		return Explanation{LogProb: -maxNats, Total: -maxNats}
-	}
-	n := min(int(s.n), m.order-1)
-	at, found := w, 0
-	for found < n {
-		child, _, ok := m.child(found, at, s.keys[found])
-		if !ok {
-			break
-		}
-		at = child
-		found++
-	}
-	e := Explanation{Order: found + 1, LogProb: m.levels[found].logProb(at), N: n - found}
-	copy(e.Backoffs[:], s.backoff[found:n])
+	var e Explanation
+	var next State
+	e.Order, e.LogProb = m.match(&s, w, &next)
+	from, to := max(e.Order-1, 0), min(int(s.n), m.order-1)
+	e.N = max(to-from, 0)
+	copy(e.Backoffs[:e.N], s.backoff[from:])
 	e.Total = e.LogProb
 	for _, b := range e.Backoffs[:e.N] {
 		e.Total += b

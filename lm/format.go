@@ -14,20 +14,28 @@ import (
 //	order      uint8, 1..MaxOrder
 //	probBits   uint8, width of a log probability: 1..12 a code, 32 a float32
 //	backBits   uint8, width of a back-off, likewise
-//	shapes     for each order, shapeBytes long:
-//	           count uint32      n-grams; of order 1 the vocabulary
-//	           contexts uint32   those that are contexts of longer ones
-//	           keyLow uint8, firstLow uint8, two zero bytes
-//	           keyHigh uint64, firstHigh uint64   see monotone
+//	shapes     for each order: count uint32, of its n-grams (of order 1 the
+//	           vocabulary); size uint64, of its blocks in bytes
 //	codebooks  for each order: 2^probBits float32 log probabilities, then, but
 //	           for the highest order, 2^backBits float32 back-offs; absent where
 //	           the width is 32
-//	levels     for each order:
-//	           keys      monotone, not in order 1
-//	           probs     packed codes
-//	           context   flags: is the n-gram a context? not in the highest order
-//	           backs     packed codes, one for each context; likewise
-//	           first     monotone, index of the first child; likewise
+//	levels     for each order a directory, an entry a block, then the blocks
+//
+// A block holds blockLen n-grams, the last one of a level the rest: all that is
+// stored of an n-gram is within some 200 bytes. A directory entry:
+//
+//	offset     uint32, of the block in the level's blocks
+//	firstBase  uint32, index of the block's first child; 0 in the highest order
+//	keyBase    uint64, one more than the last key of the block before
+//
+// A block:
+//
+//	keys       run, less keyBase; not in order 1
+//	ends       run, index behind the last child, less firstBase; not in the
+//	           highest order
+//	context    uint64, a bit an n-gram: is it a context? likewise
+//	probs      codes, to whole bytes
+//	backs      codes, one for each context, to whole bytes
 //
 // The parent of an n-gram is the n-gram without its leftmost word; n-grams are
 // sorted by parent, then key. The key of a bigram is its first word. Of a longer
@@ -37,9 +45,11 @@ import (
 // of a level make one increasing sequence: each parent's begin anew above the
 // last one before.
 const (
-	magic      = "fcng"
-	version    = 1
-	shapeBytes = 28
+	magic     = "fcng"
+	version   = 1
+	shapeSize = 12
+	entrySize = 16
+	blockLen  = 64
 	// MaxOrder is the longest n-gram a model may hold.
 	MaxOrder = 6
 	// exactBits is the width of a value stored as it is.
@@ -56,134 +66,91 @@ var ErrFormat = errors.New("lm: not a usable n-gram section")
 
 // codebook turns the packed codes of one order into values.
 type codebook struct {
-	values []float32 // a power of two of them; nil when values are stored as they are
+	width  uint64
+	values []float32 // 2^width; nil when values are stored as they are
 }
 
-func (c *codebook) value(code uint64) float32 {
+// value reads the code at a bit offset.
+func (c *codebook) value(data []byte, bit uint64) float32 {
+	code := loadBits(data, bit, c.width)
 	if c.values == nil {
 		return math.Float32frombits(uint32(code))
 	}
 	return c.values[code&uint64(len(c.values)-1)]
 }
 
-// levelShape is what must be known to lay a level out.
-type levelShape struct {
-	order    int
-	last     bool
-	count    uint32
-	contexts uint32
-	keys     monotoneShape
-	first    monotoneShape
+// shape is what must be known to lay a level out.
+type shape struct {
+	count uint32
+	size  uint64 // of the blocks, padding included
 }
 
-func (s *levelShape) append(dst []byte) []byte {
-	dst = binary.LittleEndian.AppendUint32(dst, s.count)
-	dst = binary.LittleEndian.AppendUint32(dst, s.contexts)
-	dst = append(dst, byte(s.keys.lowWidth), byte(s.first.lowWidth), 0, 0)
-	dst = binary.LittleEndian.AppendUint64(dst, s.keys.highBits)
-	return binary.LittleEndian.AppendUint64(dst, s.first.highBits)
+func (s *shape) blocks() uint64 { return (uint64(s.count) + blockLen - 1) / blockLen }
+
+func (s *shape) bytes() uint64 { return s.blocks()*entrySize + s.size }
+
+func (s *shape) append(dst []byte) []byte {
+	return binary.LittleEndian.AppendUint64(binary.LittleEndian.AppendUint32(dst, s.count), s.size)
 }
 
-func readShape(b []byte, order int, last bool) (levelShape, error) {
-	s := levelShape{order: order, last: last, count: binary.LittleEndian.Uint32(b), contexts: binary.LittleEndian.Uint32(b[4:])}
-	s.keys = monotoneShape{lowWidth: uint(b[8]), highBits: binary.LittleEndian.Uint64(b[12:])}
-	s.first = monotoneShape{lowWidth: uint(b[9]), highBits: binary.LittleEndian.Uint64(b[20:])}
-	if order > 1 {
-		s.keys.n = uint64(s.count)
-	}
-	if !last {
-		s.first.n = uint64(s.count) + 1
-	}
-	if s.count == math.MaxUint32 || s.contexts > s.count || !s.keys.sound() || !s.first.sound() || b[10]|b[11] != 0 ||
-		order == 1 && (s.count == 0 || s.count > maxVocabulary) {
+func readShape(b []byte, order int) (shape, error) {
+	s := shape{binary.LittleEndian.Uint32(b), binary.LittleEndian.Uint64(b[4:])}
+	if s.size > math.MaxUint32 || order == 1 && (s.count == 0 || s.count > maxVocabulary) {
 		return s, fmt.Errorf("%w: shape of its %d-grams", ErrFormat, order)
 	}
 	return s, nil
 }
 
-// sound reports whether positions fit their samples and widths a load.
-func (s monotoneShape) sound() bool {
-	if s.n == 0 {
-		return s.lowWidth == 0 && s.highBits == 0
-	}
-	return s.lowWidth <= 40 && s.highBits >= s.n && s.highBits <= math.MaxUint32
-}
-
-// parts returns the lengths in bytes of keys, probs, context bits and counts,
-// backs, first.
-func (s *levelShape) parts(probBits, backBits uint) [6]uint64 {
-	var p [6]uint64
-	if s.order > 1 {
-		p[0] = s.keys.bytes()
-	}
-	p[1] = packedBytes(uint64(s.count), probBits)
-	if !s.last {
-		p[2], p[3] = flagBytes(uint64(s.count))
-		p[4] = packedBytes(uint64(s.contexts), backBits)
-		p[5] = s.first.bytes()
-	}
-	return p
-}
-
-func (s *levelShape) bytes(probBits, backBits uint) uint64 {
-	sum := uint64(0)
-	for _, n := range s.parts(probBits, backBits) {
-		sum += n
-	}
-	return sum
-}
-
 // level is one order's n-grams.
 type level struct {
-	shape      levelShape
-	keys       monotone
-	probs      packed
-	context    flags
-	backs      packed
-	first      monotone
+	shape
+	order      int
+	last       bool
+	directory  []byte
+	data       []byte
 	prob, back codebook
 }
 
 // over lays the level out over data of shape.bytes bytes.
-func (l *level) over(data []byte, probBits, backBits uint) {
-	var part [6][]byte
-	at := uint64(0)
-	for i, n := range l.shape.parts(probBits, backBits) {
-		part[i] = data[at : at+n : at+n]
-		at += n
-	}
-	if l.shape.order > 1 {
-		l.keys = l.shape.keys.over(part[0])
-	}
-	l.probs = newPacked(probBits, part[1])
-	if !l.shape.last {
-		l.context = flags{part[2], part[3]}
-		l.backs = newPacked(backBits, part[4])
-		l.first = l.shape.first.over(part[5])
-	}
+func (l *level) over(data []byte) {
+	n := l.blocks() * entrySize
+	l.directory, l.data = data[:n:n], data[n:]
 }
 
-func (l *level) logProb(i uint32) float32 {
-	return l.prob.value(l.probs.at(uint64(i)))
+func (l *level) offset(b uint64) uint64 {
+	return uint64(binary.LittleEndian.Uint32(l.directory[b*entrySize:]))
 }
 
-// backoff returns the weight of n-gram i as a context; ok is false if it is
-// none.
-func (l *level) backoff(i uint32) (weight float32, ok bool) {
-	if !l.context.has(i) {
-		return 0, false
-	}
-	at := l.context.rank(i)
-	if at >= uint64(l.shape.contexts) {
-		return 0, false
-	}
-	return l.back.value(l.backs.at(at)), true
+func (l *level) firstBase(b uint64) uint64 {
+	return uint64(binary.LittleEndian.Uint32(l.directory[b*entrySize+4:]))
 }
 
-// children returns the range of n-gram i's children in the next level, which
-// holds limit n-grams. A damaged range comes out empty or short, never wild.
-func (l *level) children(i, limit uint32) (lo, hi uint64) {
-	lo, hi = l.first.pair(uint64(i))
-	hi = min(hi, uint64(limit))
-	return min(lo, hi), hi
+func (l *level) keyBase(b uint64) uint64 {
+	return binary.LittleEndian.Uint64(l.directory[b*entrySize+8:])
+}
+
+// block is a view of one block.
+type block struct {
+	keys, ends   run
+	context      uint64
+	probs, backs uint64 // bit offsets
+}
+
+// block lays block b out, which must be below blocks().
+func (l *level) block(b uint64) block {
+	n := min(blockLen, uint64(l.count)-b*blockLen)
+	at := l.offset(b)
+	var v block
+	if l.order > 1 {
+		v.keys = runAt(l.data, at, n)
+		at = v.keys.end
+	}
+	if !l.last {
+		v.ends = runAt(l.data, at, n)
+		v.context = load(l.data, v.ends.end)
+		at = v.ends.end + 8
+	}
+	v.probs = at * 8
+	v.backs = (at + bytesFor(n*l.prob.width)) * 8
+	return v
 }

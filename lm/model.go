@@ -32,7 +32,7 @@ func Open(section []byte) (*Model, error) {
 		return nil, fmt.Errorf("%w: version %d, this program reads %d; rebuild the model", ErrFormat, head[4], version)
 	}
 	m := &Model{order: int(head[5])}
-	probBits, backBits := uint(head[6]), uint(head[7])
+	probBits, backBits := uint64(head[6]), uint64(head[7])
 	if m.order < 1 || m.order > MaxOrder || !validWidth(probBits) || !validWidth(backBits) {
 		return nil, fmt.Errorf("%w: order %d with values of %d and %d bits", ErrFormat, m.order, probBits, backBits)
 	}
@@ -40,8 +40,8 @@ func Open(section []byte) (*Model, error) {
 	m.readCodebooks(&r, probBits, backBits)
 	for k := range m.order {
 		l := &m.levels[k]
-		if data := r.take(l.shape.bytes(probBits, backBits), fmt.Sprintf("%d-grams", k+1)); r.err == nil {
-			l.over(data, probBits, backBits)
+		if data := r.take(l.bytes(), fmt.Sprintf("%d-grams", k+1)); r.err == nil {
+			l.over(data)
 		}
 	}
 	if r.err == nil && len(r.rest) != 0 {
@@ -53,25 +53,27 @@ func Open(section []byte) (*Model, error) {
 	return m, nil
 }
 
-func validWidth(width uint) bool {
+func validWidth(width uint64) bool {
 	return width >= 1 && width <= maxCodeBits || width == exactBits
 }
 
 func (m *Model) readShapes(r *reader) {
 	for k := range m.order {
-		b := r.take(shapeBytes, "shapes")
+		b := r.take(shapeSize, "shapes")
 		if r.err != nil {
 			return
 		}
-		m.levels[k].shape, r.err = readShape(b, k+1, k == m.order-1)
+		l := &m.levels[k]
+		l.order, l.last = k+1, k == m.order-1
+		l.shape, r.err = readShape(b, k+1)
 	}
 }
 
-func (m *Model) readCodebooks(r *reader, probBits, backBits uint) {
+func (m *Model) readCodebooks(r *reader, probBits, backBits uint64) {
 	for k := range m.order {
 		l := &m.levels[k]
 		l.prob = r.codebook(probBits, 0, fmt.Sprintf("%d-gram probabilities", k+1))
-		if !l.shape.last {
+		if !l.last {
 			l.back = r.codebook(backBits, maxNats, fmt.Sprintf("%d-gram back-offs", k+1))
 		}
 	}
@@ -96,22 +98,24 @@ func (r *reader) take(n uint64, what string) []byte {
 	return b
 }
 
-func (r *reader) codebook(width uint, limit float32, what string) codebook {
+func (r *reader) codebook(width uint64, limit float32, what string) codebook {
+	c := codebook{width: width}
 	if width == exactBits {
-		return codebook{}
+		return c
 	}
 	b := r.take(4<<width, what)
 	if b == nil {
-		return codebook{}
+		return c
 	}
-	values := make([]float32, 1<<width)
-	for i := range values {
-		values[i] = math.Float32frombits(binary.LittleEndian.Uint32(b[4*i:]))
-		if !inRange(values[i], limit) {
-			r.err = fmt.Errorf("%w: value %v in its %s", ErrFormat, values[i], what)
+	c.values = make([]float32, 1<<width)
+	for i := range c.values {
+		v := math.Float32frombits(binary.LittleEndian.Uint32(b[4*i:]))
+		if !inRange(v, limit) {
+			r.err = fmt.Errorf("%w: value %v in its %s", ErrFormat, v, what)
 		}
+		c.values[i] = v
 	}
-	return codebook{values}
+	return c
 }
 
 // inRange is false for what is no number, too.
@@ -121,12 +125,12 @@ func inRange(v, limit float32) bool { return v <= limit && v >= -maxNats }
 func (m *Model) Order() int { return m.order }
 
 // Vocabulary returns the number of word ids.
-func (m *Model) Vocabulary() int { return int(m.levels[0].shape.count) }
+func (m *Model) Vocabulary() int { return int(m.levels[0].count) }
 
 // Count returns the number of n-grams of an order, 1..Order().
 func (m *Model) Count(order int) int {
 	if order < 1 || order > m.order {
 		return 0
 	}
-	return int(m.levels[order-1].shape.count)
+	return int(m.levels[order-1].count)
 }

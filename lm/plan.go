@@ -1,16 +1,21 @@
 package lm
 
-import "fmt"
+import (
+	"fmt"
+	"iter"
+	"math"
+	"math/bits"
+)
 
 // plan is the layout of a section to be written.
 type plan struct {
 	tables    Tables
 	contexts  [][]uint32 // by order, the context of each n-gram
 	isContext [][]bool   // by order, whether an n-gram is one
-	shapes    []levelShape
+	shapes    []shape
 }
 
-func newPlan(t Tables) (*plan, error) {
+func newPlan(t Tables, probBits, backBits uint64) (*plan, error) {
 	if err := checkShape(t); err != nil {
 		return nil, err
 	}
@@ -26,7 +31,14 @@ func newPlan(t Tables) (*plan, error) {
 		}
 	}
 	for k := range t {
-		p.shapes = append(p.shapes, p.shape(k))
+		s := shape{count: uint32(t.Len(k)), size: padding}
+		for c := range p.blocks(k) {
+			s.size += c.bytes(probBits, backBits)
+		}
+		if s.size > math.MaxUint32 {
+			return nil, fmt.Errorf("lm: %d-grams take %d bytes, which is too much", k+1, s.size)
+		}
+		p.shapes = append(p.shapes, s)
 	}
 	return p, nil
 }
@@ -51,26 +63,62 @@ func checkShape(t Tables) error {
 	return nil
 }
 
-func (p *plan) shape(k int) levelShape {
-	n := p.tables.Len(k)
-	s := levelShape{order: k + 1, last: k == len(p.tables)-1, count: uint32(n)}
-	if k > 0 && n > 0 {
-		greatest, next := uint64(0), p.keys(k)
-		for i := range uint64(n) {
-			greatest = next(i)
+// content is what a block is to hold, values aside. It is reused.
+type content struct {
+	start, n           int // n-grams of the level
+	keys, ends         []uint64
+	keyBase, firstBase uint64
+	context            uint64
+}
+
+// bytes returns the size of the block.
+func (c *content) bytes(probBits, backBits uint64) uint64 {
+	n := uint64(c.n)
+	size := bytesFor(n * probBits)
+	if len(c.keys) > 0 {
+		size += runBytes(n, c.keys[n-1])
+	}
+	if len(c.ends) > 0 {
+		size += runBytes(n, c.ends[n-1]) + 8
+		size += bytesFor(uint64(bits.OnesCount64(c.context)) * backBits)
+	}
+	return size
+}
+
+// blocks yields the blocks of level k in order.
+func (p *plan) blocks(k int) iter.Seq[*content] {
+	return func(yield func(*content) bool) {
+		t, count := &p.tables[k], p.tables.Len(k)
+		var next func(uint64) uint64
+		if k > 0 {
+			next = p.keys(k)
 		}
-		s.keys = shapeFor(uint64(n), greatest)
-	}
-	if s.last {
-		return s
-	}
-	s.first = shapeFor(uint64(n)+1, uint64(p.tables.Len(k+1)))
-	for _, is := range p.isContext[k] {
-		if is {
-			s.contexts++
+		c := &content{}
+		for ; c.start < count; c.start += c.n {
+			c.n = min(blockLen, count-c.start)
+			c.keys, c.ends, c.context = c.keys[:0], c.ends[:0], 0
+			for i := c.start; i < c.start+c.n; i++ {
+				if k > 0 {
+					c.keys = append(c.keys, next(uint64(i))-c.keyBase)
+				}
+				if k < len(p.tables)-1 {
+					c.ends = append(c.ends, uint64(t.First[i+1])-c.firstBase)
+					if p.isContext[k][i] {
+						c.context |= 1 << (i - c.start)
+					}
+				}
+			}
+			if !yield(c) {
+				return
+			}
+			if k > 0 {
+				c.keyBase += c.keys[c.n-1] + 1
+			}
+			if k < len(p.tables)-1 {
+				c.firstBase += c.ends[c.n-1]
+			}
 		}
 	}
-	return s
 }
 
 // keys returns a function that gives the keys of level k, in order from zero,

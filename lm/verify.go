@@ -1,6 +1,9 @@
 package lm
 
-import "fmt"
+import (
+	"fmt"
+	"math/bits"
+)
 
 // Verify reads the whole model and reports the first n-gram that cannot be
 // right: values that are no numbers in range, child ranges that overlap or end
@@ -16,35 +19,47 @@ func (m *Model) Verify() error {
 
 func (m *Model) verifyLevel(k int) error {
 	l := &m.levels[k]
-	contexts, end := uint32(0), uint64(0)
-	for i := range l.shape.count {
+	at, key, child := uint64(0), uint64(0), uint64(0)
+	for b := range l.blocks() {
+		n := min(blockLen, uint64(l.count)-b*blockLen)
+		v := l.block(b)
 		problem := ""
-		if !inRange(l.logProb(i), 0) {
-			problem = "log probability is not a number in range"
+		if l.offset(b) != at || k > 0 && l.keyBase(b) != key || !l.last && l.firstBase(b) != child {
+			problem = "directory"
 		}
-		if k > 0 && i > 0 && l.keys.value(uint64(i)) <= l.keys.value(uint64(i)-1) {
-			problem = "key out of order"
-		}
-		if !l.shape.last {
-			back, isContext := l.backoff(i)
-			if isContext {
-				contexts++
+		for i := range n {
+			if k > 0 {
+				if next := l.keyBase(b) + v.keys.value(i); next >= key {
+					key = next + 1
+				} else {
+					problem = "key out of order"
+				}
 			}
-			lo, hi := l.first.pair(uint64(i))
-			if !inRange(back, maxNats) {
+			if !inRange(l.prob.value(l.data, v.probs+i*l.prob.width), 0) {
+				problem = "log probability is not a number in range"
+			}
+			if l.last {
+				continue
+			}
+			if back, _ := l.backoff(&v, i); !inRange(back, maxNats) {
 				problem = "back-off is not a number in range"
 			}
-			if lo != end || hi < lo {
+			if end := l.firstBase(b) + v.ends.value(i); end >= child {
+				child = end
+			} else {
 				problem = "range of children"
 			}
-			end = hi
 		}
 		if problem != "" {
-			return fmt.Errorf("%w: %d-gram %d: %s", ErrFormat, k+1, i, problem)
+			return fmt.Errorf("%w: %d-grams of block %d: %s", ErrFormat, k+1, b, problem)
+		}
+		at = v.backs / 8
+		if !l.last {
+			at += bytesFor(uint64(bits.OnesCount64(v.context)) * l.back.width)
 		}
 	}
-	if !l.shape.last && (end != uint64(m.levels[k+1].shape.count) || contexts != l.shape.contexts) {
-		return fmt.Errorf("%w: %d-grams: children or contexts left over", ErrFormat, k+1)
+	if at+padding != l.size || !l.last && child != uint64(m.levels[k+1].count) {
+		return fmt.Errorf("%w: %d-grams: children or bytes left over", ErrFormat, k+1)
 	}
 	return nil
 }
