@@ -2,7 +2,8 @@ package text
 
 import "bytes"
 
-// Bounds on markup, per stretch of lines without a blank one. Real documents do
+// Bounds on markup, per stretch of lines without a blank one and without a new
+// list item. Real documents do
 // not come near them; past them some parsing is quadratic (100 KB of "[a](b"
 // take seconds) or multiplies memory (a short row of a wide table still gets
 // every cell).
@@ -54,6 +55,9 @@ func (t *tamer) stretch(lines []textLine) {
 	table := columns*len(lines) <= mostCells
 	for _, l := range lines {
 		t.nesting(l)
+		if t.bullet(l) {
+			marks = 0
+		}
 		for i := l.start; i < l.end; i++ {
 			switch t.source[i] {
 			case '[', '*', '_', '`', '<', '~':
@@ -67,6 +71,21 @@ func (t *tamer) stretch(lines []textLine) {
 			}
 		}
 	}
+}
+
+// bullet reports that a line begins a list item of the outermost list, and so
+// ends any paragraph before it.
+func (t *tamer) bullet(l textLine) bool {
+	indent := l.start
+	for indent > 0 && t.source[indent-1] == ' ' {
+		indent--
+	}
+	edge := indent == 0 || t.source[indent-1] == '\n' || t.source[indent-1] == '\r'
+	if !edge || l.start-indent > 3 || l.end-l.start < 3 || t.source[l.start+1] != ' ' {
+		return false
+	}
+	c := t.source[l.start]
+	return c == '-' || c == '+' || c == '*'
 }
 
 // nesting blunts the quote and list marks at the start of a line past the bound.
