@@ -116,20 +116,30 @@ func (e *encoder) level(k int) {
 
 // block writes one block at a byte offset and returns the offset behind it.
 func (e *encoder) block(data []byte, at uint64, k int, c *content) uint64 {
-	if k > 0 {
-		at = putRun(data, at, c.keys)
-	}
-	if k < len(e.tables)-1 {
-		at = putRun(data, at, c.ends)
+	n := uint64(c.n)
+	if len(c.ends) > 0 {
 		binary.LittleEndian.PutUint64(data[at:], c.context)
 		at += 8
+	}
+	headers := data[at:]
+	at += headerBytes(k+1, k == len(e.tables)-1)
+	for _, values := range [][]uint64{c.keys, c.ends} {
+		if len(values) == 0 {
+			continue
+		}
+		h := headerFor(n, values[n-1])
+		h.put(headers)
+		headers = headers[headerSize:]
+		r := h.at(at)
+		r.put(data, values)
+		at += h.bytes(n)
 	}
 	t := &e.tables[k]
 	for i := range c.n {
 		code := e.code(t.LogProb[c.start+i], 0, e.books.Prob, k, e.probBits)
 		storeBits(data, at*8+uint64(i)*e.probBits, code)
 	}
-	at += bytesFor(uint64(c.n) * e.probBits)
+	at += bytesFor(n * e.probBits)
 	place := uint64(0)
 	for i := range c.n {
 		if c.context>>i&1 != 0 {

@@ -30,10 +30,12 @@ import (
 //
 // A block:
 //
+//	context    uint64, a bit an n-gram: is it a context? not in the highest
+//	           order
+//	headers    of keys and ends, as far as they are there
 //	keys       run, less keyBase; not in order 1
 //	ends       run, index behind the last child, less firstBase; not in the
 //	           highest order
-//	context    uint64, a bit an n-gram: is it a context? likewise
 //	probs      codes, to whole bytes
 //	backs      codes, one for each context, to whole bytes
 //
@@ -106,6 +108,7 @@ type level struct {
 	shape
 	order      int
 	last       bool
+	headers    uint64 // bytes of a block's run headers
 	directory  []byte
 	data       []byte
 	prob, back codebook
@@ -137,20 +140,37 @@ type block struct {
 }
 
 // block lays block b out, which must be below blocks().
-func (l *level) block(b uint64) block {
+func (l *level) block(b uint64) (v block) {
 	n := min(blockLen, uint64(l.count)-b*blockLen)
 	at := l.offset(b)
-	var v block
+	if !l.last {
+		v.context = load(l.data, at)
+		at += 8
+	}
+	head := load(l.data, at)
+	at += l.headers
 	if l.order > 1 {
-		v.keys = runAt(l.data, at, n)
-		at = v.keys.end
+		v.keys = readHeader(head).at(at)
+		at += v.keys.bytes(n)
+		head >>= 8 * headerSize
 	}
 	if !l.last {
-		v.ends = runAt(l.data, at, n)
-		v.context = load(l.data, v.ends.end)
-		at = v.ends.end + 8
+		v.ends = readHeader(head).at(at)
+		at += v.ends.bytes(n)
 	}
 	v.probs = at * 8
 	v.backs = (at + bytesFor(n*l.prob.width)) * 8
 	return v
+}
+
+// headerBytes returns how long the headers of a block are.
+func headerBytes(order int, last bool) uint64 {
+	n := uint64(0)
+	if order > 1 {
+		n += headerSize
+	}
+	if !last {
+		n += headerSize
+	}
+	return n
 }

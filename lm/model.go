@@ -65,6 +65,7 @@ func (m *Model) readShapes(r *reader) {
 		}
 		l := &m.levels[k]
 		l.order, l.last = k+1, k == m.order-1
+		l.headers = headerBytes(l.order, l.last)
 		l.shape, r.err = readShape(b, k+1)
 	}
 }

@@ -76,10 +76,10 @@ func (c *content) bytes(probBits, backBits uint64) uint64 {
 	n := uint64(c.n)
 	size := bytesFor(n * probBits)
 	if len(c.keys) > 0 {
-		size += runBytes(n, c.keys[n-1])
+		size += headerSize + headerFor(n, c.keys[n-1]).bytes(n)
 	}
 	if len(c.ends) > 0 {
-		size += runBytes(n, c.ends[n-1]) + 8
+		size += 8 + headerSize + headerFor(n, c.ends[n-1]).bytes(n)
 		size += bytesFor(uint64(bits.OnesCount64(c.context)) * backBits)
 	}
 	return size

@@ -8,85 +8,84 @@ import "math/bits"
 // an array. It takes about 2 + log2(greatest/length) bits an element and finds
 // an element by its value or its place without decoding the others.
 //
-//	lowWidth  uint8
-//	highBits  uint8
-//	high      highBits bits, to whole bytes
-//	low       lowWidth bits an element, to whole bytes
+//	high  highBits bits, to whole bytes
+//	low   width bits an element, to whole bytes
 //
-// Damaged bytes give wrong elements, never an access out of bounds.
+// The widths stand apart, in a runHeader. Damaged bytes give wrong elements,
+// never an access out of bounds.
 type run struct {
-	data     []byte
+	runHeader
+	high uint64 // byte offset of the high bits
+	low  uint64 // bit offset of the low bits
+}
+
+// runHeader holds the widths of a run. It is stored as two bytes.
+type runHeader struct {
+	width    uint64 // of the low bits of an element
 	highBits uint64
-	high     uint64 // byte offset of the high bits
-	low      uint64 // bit offset of the low bits
-	width    uint64 // of the low bits
-	end      uint64 // byte offset behind the run
 }
 
-// runHeader is the length of what stands before the high bits.
-const runHeader = 2
+// headerSize is the length of a stored runHeader.
+const headerSize = 2
 
-// runAt reads the header of a run of n elements.
-func runAt(data []byte, at, n uint64) run {
-	head := load(data, at)
-	r := run{data: data, width: head & 0x3f, highBits: head >> 8 & 0xff, high: at + runHeader}
-	low := r.high + bytesFor(r.highBits)
-	r.low = low * 8
-	r.end = low + bytesFor(n*r.width)
-	return r
+// readHeader takes a header from the lowest bytes of head.
+func readHeader(head uint64) runHeader {
+	return runHeader{head & 0x3f, head >> 8 & 0xff}
 }
 
-// runShape returns the widths for n elements none of which exceeds greatest.
-// No more than three bits of the high part fall to an element.
-func runShape(n, greatest uint64) (width, highBits uint64) {
+// headerFor returns the widths for n elements none of which exceeds greatest.
+// At most three bits of the high part fall to an element.
+func headerFor(n, greatest uint64) runHeader {
+	var h runHeader
 	if greatest/n > 0 {
-		width = uint64(bits.Len64(greatest/n)) - 1
+		h.width = uint64(bits.Len64(greatest/n)) - 1
 	}
-	return width, n + greatest>>width + 1
+	h.highBits = n + greatest>>h.width + 1
+	return h
 }
 
-func runBytes(n, greatest uint64) uint64 {
-	width, highBits := runShape(n, greatest)
-	return runHeader + bytesFor(highBits) + bytesFor(n*width)
+func (h runHeader) put(data []byte) { data[0], data[1] = byte(h.width), byte(h.highBits) }
+
+// bytes returns the length of a run of n elements, its header aside.
+func (h runHeader) bytes(n uint64) uint64 {
+	return bytesFor(h.highBits) + bytesFor(n*h.width)
 }
 
-// putRun writes values at a byte offset of zeroed data and returns the offset
-// behind them.
-func putRun(data []byte, at uint64, values []uint64) uint64 {
-	n := uint64(len(values))
-	width, highBits := runShape(n, values[n-1])
-	data[at], data[at+1] = byte(width), byte(highBits)
-	high := (at + runHeader) * 8
-	low := high + bytesFor(highBits)*8
+// at lays a run out at a byte offset.
+func (h runHeader) at(offset uint64) run {
+	return run{h, offset, (offset + bytesFor(h.highBits)) * 8}
+}
+
+// put writes the values of a run into zeroed data.
+func (r *run) put(data []byte, values []uint64) {
 	for i, v := range values {
-		storeBits(data, high+v>>width+uint64(i), 1)
-		storeBits(data, low+uint64(i)*width, v&(1<<width-1))
+		storeBits(data, r.high*8+v>>r.width+uint64(i), 1)
+		storeBits(data, r.low+uint64(i)*r.width, v&(1<<r.width-1))
 	}
-	return low/8 + bytesFor(n*width)
 }
 
 // word returns the w-th 64 of the high bits, those beyond their end cleared.
-func (r *run) word(w uint64) uint64 {
-	x := load(r.data, r.high+8*w)
+func (r *run) word(data []byte, w uint64) uint64 {
+	x := load(data, r.high+8*w)
 	if rest := r.highBits - 64*w; rest < 64 {
 		x &= 1<<rest - 1
 	}
 	return x
 }
 
-// at returns element i given the position of its one in the high bits.
-func (r *run) at(i, one uint64) uint64 {
-	return (one-i)<<r.width | loadBits(r.data, r.low+i*r.width, r.width)
+// join returns element i given the position of its one in the high bits.
+func (r *run) join(data []byte, i, one uint64) uint64 {
+	return (one-i)<<r.width | loadBits(data, r.low+i*r.width, r.width)
 }
 
 // value returns element i; zero if the run is damaged.
-func (r *run) value(i uint64) uint64 {
+func (r *run) value(data []byte, i uint64) uint64 {
 	n := int(i)
 	for w := uint64(0); 64*w < r.highBits; w++ {
-		x := r.word(w)
+		x := r.word(data, w)
 		c := bits.OnesCount64(x)
 		if n < c {
-			return r.at(i, 64*w+selectBit(x, n))
+			return r.join(data, i, 64*w+selectBit(x, n))
 		}
 		n -= c
 	}
@@ -95,17 +94,17 @@ func (r *run) value(i uint64) uint64 {
 
 // find looks among the elements [lo, hi) for a value. Elements must be strictly
 // increasing.
-func (r *run) find(lo, hi, value uint64) (uint64, bool) {
+func (r *run) find(data []byte, lo, hi, value uint64) (uint64, bool) {
 	high := value >> r.width
-	at := r.behindZeros(high)
+	at := r.behindZeros(data, high)
 	// Elements that share the high bits are a run of ones.
 	first := at - high
-	hi = min(hi, first+r.ones(at))
+	hi = min(hi, first+r.ones(data, at))
 	lo = max(lo, first)
 	low := value & (1<<r.width - 1)
 	for lo < hi {
 		mid := (lo + hi) / 2
-		switch v := loadBits(r.data, r.low+mid*r.width, r.width); {
+		switch v := loadBits(data, r.low+mid*r.width, r.width); {
 		case v == low:
 			return mid, true
 		case v < low:
@@ -118,13 +117,13 @@ func (r *run) find(lo, hi, value uint64) (uint64, bool) {
 }
 
 // behindZeros returns the position behind n zeros, or highBits.
-func (r *run) behindZeros(n uint64) uint64 {
+func (r *run) behindZeros(data []byte, n uint64) uint64 {
 	if n == 0 {
 		return 0
 	}
 	left := int(min(n, r.highBits+1)) - 1
 	for w := uint64(0); 64*w < r.highBits; w++ {
-		x := ^r.word(w)
+		x := ^r.word(data, w)
 		c := bits.OnesCount64(x)
 		if left < c {
 			return min(64*w+selectBit(x, left)+1, r.highBits)
@@ -135,11 +134,11 @@ func (r *run) behindZeros(n uint64) uint64 {
 }
 
 // ones returns the length of the run of ones that begins at a position.
-func (r *run) ones(at uint64) uint64 {
+func (r *run) ones(data []byte, at uint64) uint64 {
 	n := uint64(0)
 	for at < r.highBits {
 		w, shift := at/64, at&63
-		c := uint64(bits.TrailingZeros64(^(r.word(w) >> shift)))
+		c := uint64(bits.TrailingZeros64(^(r.word(data, w) >> shift)))
 		n += c
 		if c < 64-shift {
 			break
@@ -150,25 +149,25 @@ func (r *run) ones(at uint64) uint64 {
 }
 
 // pair returns elements i and i+1; zeros if the run is damaged.
-func (r *run) pair(i uint64) (uint64, uint64) {
+func (r *run) pair(data []byte, i uint64) (uint64, uint64) {
 	n := int(i)
 	for w := uint64(0); 64*w < r.highBits; w++ {
-		x := r.word(w)
+		x := r.word(data, w)
 		c := bits.OnesCount64(x)
 		if n >= c {
 			n -= c
 			continue
 		}
 		one := selectBit(x, n)
-		this := r.at(i, 64*w+one)
+		this := r.join(data, i, 64*w+one)
 		x = x >> one >> 1 << one << 1 // clears the lowest bits up to this one
 		for x == 0 {
 			if w++; 64*w >= r.highBits {
 				return 0, 0
 			}
-			x = r.word(w)
+			x = r.word(data, w)
 		}
-		return this, r.at(i+1, 64*w+uint64(bits.TrailingZeros64(x)))
+		return this, r.join(data, i+1, 64*w+uint64(bits.TrailingZeros64(x)))
 	}
 	return 0, 0
 }

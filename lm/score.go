@@ -94,9 +94,9 @@ func (l *level) backoff(v *block, i uint64) (weight float32, ok bool) {
 func (l *level) children(v *block, b, i uint64) (lo, hi uint64) {
 	base := l.firstBase(b)
 	if i == 0 {
-		return base, base + v.ends.value(0)
+		return base, base + v.ends.value(l.data, 0)
 	}
-	lo, hi = v.ends.pair(i - 1)
+	lo, hi = v.ends.pair(l.data, i-1)
 	return base + lo, base + hi
 }
 
@@ -110,7 +110,7 @@ func (l *level) find(lo, hi, key uint64, v *block) (uint64, bool) {
 	inner := l.block(b)
 	target := l.keyBase(b) + key
 	if i := lo % blockLen; i > 0 {
-		target += inner.keys.value(i-1) + 1
+		target += inner.keys.value(l.data, i-1) + 1
 	}
 	if last := (hi - 1) / blockLen; last > b {
 		if home := l.home(b, last, target); home != b {
@@ -120,7 +120,7 @@ func (l *level) find(lo, hi, key uint64, v *block) (uint64, bool) {
 	}
 	from := max(lo, b*blockLen) - b*blockLen
 	to := min(hi-b*blockLen, blockLen)
-	i, ok := inner.keys.find(from, to, target-l.keyBase(b))
+	i, ok := inner.keys.find(l.data, from, to, target-l.keyBase(b))
 	if !ok {
 		return 0, false
 	}

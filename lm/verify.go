@@ -29,7 +29,7 @@ func (m *Model) verifyLevel(k int) error {
 		}
 		for i := range n {
 			if k > 0 {
-				if next := l.keyBase(b) + v.keys.value(i); next >= key {
+				if next := l.keyBase(b) + v.keys.value(l.data, i); next >= key {
 					key = next + 1
 				} else {
 					problem = "key out of order"
@@ -44,7 +44,7 @@ func (m *Model) verifyLevel(k int) error {
 			if back, _ := l.backoff(&v, i); !inRange(back, maxNats) {
 				problem = "back-off is not a number in range"
 			}
-			if end := l.firstBase(b) + v.ends.value(i); end >= child {
+			if end := l.firstBase(b) + v.ends.value(l.data, i); end >= child {
 				child = end
 			} else {
 				problem = "range of children"
