@@ -4,18 +4,11 @@ import (
 	"fmt"
 	"io"
 	"iter"
+	"runtime"
 
 	"example.org/foulcase/candidates/lexicon"
 	"example.org/foulcase/internal/text"
-)
-
-// part says which documents of a corpus are read.
-type part uint8
-
-const (
-	allParts part = iota
-	training      // all but every tenth document
-	heldOut       // every tenth document, as text.HeldOut chooses
+	"example.org/foulcase/lm/train"
 )
 
 // corpus is plain text to learn from or to measure on: one paragraph a line,
@@ -40,19 +33,19 @@ func openCorpus(c *console, operands []string) (*corpus, error) {
 // start shows progress over the whole corpus.
 func (c *corpus) start(label string) { c.progress.Set(label, totalSize(c.inputs)) }
 
-// documents yields the documents of one part. A slice is valid until the next;
-// an error, which names its file, ends them.
-func (c *corpus) documents(p part) iter.Seq2[[]byte, error] {
+// documents yields the documents of all texts. A slice is valid until the
+// next; an error, which names its file, ends them.
+func (c *corpus) documents() iter.Seq2[[]byte, error] {
 	return func(yield func([]byte, error) bool) {
 		for _, in := range c.inputs {
-			if !c.documentsOf(in, p, yield) {
+			if !c.documentsOf(in, yield) {
 				return
 			}
 		}
 	}
 }
 
-func (c *corpus) documentsOf(in input, p part, yield func([]byte, error) bool) bool {
+func (c *corpus) documentsOf(in input, yield func([]byte, error) bool) bool {
 	r, err := in.open()
 	if err != nil {
 		yield(nil, err)
@@ -64,9 +57,6 @@ func (c *corpus) documentsOf(in input, p part, yield func([]byte, error) bool) b
 			yield(nil, fmt.Errorf("%s: %w", in.path, cause(err)))
 			return false
 		}
-		if p != allParts && text.HeldOut(doc) != (p == heldOut) {
-			continue
-		}
 		if !yield(doc, nil) {
 			return false
 		}
@@ -74,28 +64,10 @@ func (c *corpus) documentsOf(in input, p part, yield func([]byte, error) bool) b
 	return true
 }
 
-// sentences yields one part as the ids that the language model reads, between
-// <s> and </s>. A slice is valid until the next.
-func (c *corpus) sentences(p part, lex *lexicon.Lexicon) iter.Seq2[[]uint32, error] {
-	return func(yield func([]uint32, error) bool) {
-		var segmenter text.Segmenter
-		var ids []uint32
-		for doc, err := range c.documents(p) {
-			if err != nil {
-				yield(nil, err)
-				return
-			}
-			for s := range segmenter.Sentences(doc) {
-				ids = append(ids[:0], lex.ClassID(lexicon.Begin))
-				for _, t := range s.Tokens {
-					ids = lex.Read(ids, t)
-				}
-				if !yield(append(ids, lex.ClassID(lexicon.End)), nil) {
-					return
-				}
-			}
-		}
-	}
+// sentences yields one part of the texts as the ids that the language model
+// reads. A slice is valid until the next.
+func (c *corpus) sentences(part train.Part, lex *lexicon.Lexicon) train.Sentences {
+	return train.Text(c.documents(), lex, part, runtime.GOMAXPROCS(0))
 }
 
 // reader reads all texts end to end, each from the start of a line.

@@ -46,12 +46,12 @@ func declareLMMeasure(fs *pflag.FlagSet) action {
 			return trouble, err
 		}
 		defer file.Close()
-		which := allParts
+		part := train.Whole
 		if *heldOutOnly {
-			which = heldOut
+			part = train.HeldOut
 		}
 		text.start("lm measure")
-		m, err := measure(file, model, text, which)
+		m, err := measure(file, model, text, part)
 		if err != nil {
 			return trouble, err
 		}
@@ -64,7 +64,7 @@ func declareLMMeasure(fs *pflag.FlagSet) action {
 
 // measure prices text under the language model of a file, over the file's
 // lexicon or its own vocabulary.
-func measure(file *modelfile.File, name string, text *corpus, which part) (train.Measurement, error) {
+func measure(file *modelfile.File, name string, text *corpus, part train.Part) (train.Measurement, error) {
 	var none train.Measurement
 	section, err := sectionOf(file, name, foulcase.SectionLM)
 	if err != nil {
@@ -72,12 +72,12 @@ func measure(file *modelfile.File, name string, text *corpus, which part) (train
 	}
 	model, err := lm.Open(section)
 	if err != nil {
-		return none, fmt.Errorf("%s: %w", modelName(name), err)
+		return none, naming(name, err)
 	}
 	if words, ok := file.Section(sectionVocabulary); ok {
 		v, err := train.OpenVocabulary(words)
 		if err != nil {
-			return none, fmt.Errorf("%s: %w", modelName(name), err)
+			return none, naming(name, err)
 		}
 		return train.Measure(model, train.RawText(text.reader(), v, false), train.BeginID,
 			func(id uint32) bool { return id == train.UnknownID })
@@ -91,7 +91,7 @@ func measure(file *modelfile.File, name string, text *corpus, which part) (train
 		lex.ClassID(lexicon.Name):    true,
 		lex.ClassID(lexicon.Acronym): true,
 	}
-	return train.Measure(model, text.sentences(which, lex), lex.ClassID(lexicon.Begin),
+	return train.Measure(model, text.sentences(part, lex), lex.ClassID(lexicon.Begin),
 		func(id uint32) bool { return unseen[id] })
 }
 

@@ -9,7 +9,6 @@ import (
 	"os/signal"
 
 	"example.org/foulcase"
-	"example.org/foulcase/candidates/lexicon"
 	"example.org/foulcase/internal/modelfile"
 	"example.org/foulcase/lm/train"
 	"github.com/spf13/pflag"
@@ -106,15 +105,12 @@ func (f *lmTrainFlags) fromText(ctx context.Context, text *corpus, w *modelfile.
 	if err != nil {
 		return nil, err
 	}
-	o := f.options(text.progress)
-	o.Vocabulary = lex.Vocabulary()
-	o.Begin, o.End = lex.ClassID(lexicon.Begin), lex.ClassID(lexicon.End)
-	which := allParts
+	part := train.Whole
 	if f.holdOut {
-		which = training
+		part = train.Training
 	}
 	text.start("lm train")
-	result, err := train.Train(ctx, text.sentences(which, lex), o)
+	result, err := train.Train(ctx, text.sentences(part, lex), train.TextOptions(lex, f.options(text.progress)))
 	if err != nil {
 		return nil, err
 	}

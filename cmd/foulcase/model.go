@@ -15,7 +15,8 @@ import (
 // openEngine opens the model at path, or the embedded one when path is empty.
 func openEngine(path string) (*foulcase.Engine, error) {
 	if path == "" {
-		return foulcase.Open(english.Model())
+		e, err := foulcase.Open(english.Model())
+		return e, naming(path, err)
 	}
 	if err := mustBeFile(path); err != nil {
 		return nil, err
@@ -27,7 +28,8 @@ func openEngine(path string) (*foulcase.Engine, error) {
 // one when path is empty. The caller closes it.
 func openModelFile(path string) (*modelfile.File, error) {
 	if path == "" {
-		return modelfile.Open(english.Model())
+		f, err := modelfile.Open(english.Model())
+		return f, naming(path, err)
 	}
 	if err := mustBeFile(path); err != nil {
 		return nil, err
@@ -56,6 +58,14 @@ func modelName(path string) string {
 	return path
 }
 
+// naming puts the name of the model at path before an error.
+func naming(path string, err error) error {
+	if err == nil {
+		return nil
+	}
+	return fmt.Errorf("%s: %w", modelName(path), err)
+}
+
 // sectionOf returns a section of a model file, which messages call by its path.
 func sectionOf(file *modelfile.File, path, section string) ([]byte, error) {
 	body, ok := file.Section(section)
@@ -72,8 +82,5 @@ func lexiconOf(file *modelfile.File, path string) (*lexicon.Lexicon, []byte, err
 		return nil, nil, err
 	}
 	lex, err := lexicon.Open(section)
-	if err != nil {
-		return nil, nil, fmt.Errorf("%s: %w", modelName(path), err)
-	}
-	return lex, section, nil
+	return lex, section, naming(path, err)
 }
