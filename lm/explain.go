@@ -11,15 +11,16 @@ type Explanation struct {
 
 // Explain scores w in s as Score does and says how the score came about.
 func (m *Model) Explain(s State, w uint32) Explanation {
-	var e Explanation
 	var next State
-	e.Order, e.LogProb = m.match(&s, w, &next)
-	from, to := max(e.Order-1, 0), min(int(s.n), m.order-1)
-	e.N = max(to-from, 0)
-	copy(e.Backoffs[:e.N], s.backoff[from:])
-	e.Total = e.LogProb
-	for _, b := range e.Backoffs[:e.N] {
-		e.Total += b
+	order, logp := m.match(&s, w, &next)
+	e := Explanation{Order: order, LogProb: logp, Total: logp}
+	if order == 0 {
+		return e
+	}
+	for i := order - 1; i < min(int(s.n), m.order-1); i++ {
+		e.Backoffs[e.N] = s.backoff[i]
+		e.Total += s.backoff[i]
+		e.N++
 	}
 	return e
 }

@@ -11,7 +11,7 @@ import (
 type plan struct {
 	tables    Tables
 	contexts  [][]uint32 // by order, the context of each n-gram
-	isContext [][]bool   // by order, whether an n-gram is one
+	isContext [][]bool   // by order, whether the back-off of an n-gram matters
 	shapes    []shape
 }
 
@@ -25,11 +25,8 @@ func newPlan(t Tables, probBits, backBits uint64) (*plan, error) {
 		if p.contexts[k], err = t.Contexts(k, p.contexts[k-1]); err != nil {
 			return nil, err
 		}
-		p.isContext[k-1] = make([]bool, t.Len(k-1))
-		for _, c := range p.contexts[k] {
-			p.isContext[k-1][c] = true
-		}
 	}
+	p.markContexts()
 	for k := range t {
 		s := shape{count: uint32(t.Len(k)), size: padding}
 		for c := range p.blocks(k) {
@@ -41,6 +38,21 @@ func newPlan(t Tables, probBits, backBits uint64) (*plan, error) {
 		p.shapes = append(p.shapes, s)
 	}
 	return p, nil
+}
+
+// markContexts marks what is a context of a longer n-gram, and what has a
+// back-off without being one: files of other origin hold such.
+func (p *plan) markContexts() {
+	for k := range len(p.tables) - 1 {
+		is := make([]bool, p.tables.Len(k))
+		for _, c := range p.contexts[k+1] {
+			is[c] = true
+		}
+		for i, b := range p.tables[k].Backoff {
+			is[i] = is[i] || b != 0
+		}
+		p.isContext[k] = is
+	}
 }
 
 func checkShape(t Tables) error {

@@ -37,7 +37,10 @@ func (m *Model) Score(s State, w uint32) (logp float32, next State) {
 // must not be s. It allocates nothing.
 func (m *Model) Advance(s *State, w uint32, next *State) float32 {
 	order, logp := m.match(s, w, next)
-	for i := max(order-1, 0); i < min(int(s.n), m.order-1); i++ {
+	if order == 0 {
+		return logp
+	}
+	for i := order - 1; i < min(int(s.n), m.order-1); i++ {
 		logp += s.backoff[i]
 	}
 	return logp
@@ -59,8 +62,9 @@ func (m *Model) match(s *State, w uint32, next *State) (order int, logp float32)
 		if l.last {
 			break
 		}
+		next.keys[order] = key
 		if back, ok := l.backoff(&v, i); ok {
-			next.keys[order], next.backoff[order] = key, back
+			next.backoff[order] = back
 			next.n = uint8(order + 1)
 		}
 		if order == n {
@@ -76,6 +80,7 @@ func (m *Model) match(s *State, w uint32, next *State) (order int, logp float32)
 		b, i = at/blockLen, at%blockLen
 		order++
 	}
+	clear(next.keys[next.n:])
 	return order + 1, l.prob.value(l.data, v.probs+i*l.prob.width)
 }
 
