@@ -25,12 +25,12 @@ func compose(e *estimates, rules map[ruleKey]float64, prices Prices) *draft {
 	}
 	d.closeSlots()
 	leastStop := d.leastStops()
-	rewritten := d.addRules(rules, leastStop)
+	d.addRules(rules, leastStop)
 	for c := Symbol(1); c < symbols; c++ {
 		for r := Symbol(0); r < symbols; r++ {
 			d.swap[at2(c, r)] = e.swap[at2(c, r)] * leastStop[c]
 			for l := Symbol(0); l < symbols; l++ {
-				d.place(e, l, c, r, rewritten[at2(c, r)])
+				d.place(e, l, c, r, e.rewritten[at2(c, r)])
 			}
 		}
 	}
@@ -68,79 +68,14 @@ func (d *draft) leastStops() (least [symbols]float64) {
 	return least
 }
 
-// mostRewritten is the greatest probability all rules may have at one place.
-const mostRewritten = 0.5
-
-// addRules prices the rules and gives for each first and second letter, the
-// second being Edge at the end of a word, the probability they take at most.
-func (d *draft) addRules(rules map[ruleKey]float64, leastStop [symbols]float64) *[square]float64 {
-	var shares ruleShares
+// addRules prices the rules.
+func (d *draft) addRules(rules map[ruleKey]float64, leastStop [symbols]float64) {
 	for key, p := range rules {
-		shares.add(key, p)
-	}
-	taken := shares.most()
-	for key, p := range rules {
-		scale := 1.0
-		if most := shares.mostOf(key, taken); most > mostRewritten {
-			scale = mostRewritten / most
-		}
 		rule := key.rule()
-		rule.Cost = float32(nats(p * scale * leastStop[key.intended[0]]))
+		rule.Cost = float32(nats(p * leastStop[key.intended[0]]))
 		d.rules = append(d.rules, rule)
 	}
 	slices.SortFunc(d.rules, compareIntended)
-	for i, t := range taken {
-		taken[i] = min(t, mostRewritten)
-	}
-	return taken
-}
-
-// ruleShares sums the probabilities of rules that can compete at one place: by
-// their first two letters, and by the third where they have one.
-type ruleShares struct {
-	one   [symbols]float64
-	two   [square]float64
-	three [cube]float64
-}
-
-func (s *ruleShares) add(key ruleKey, p float64) {
-	a := key.intended
-	switch key.rule().NIntended {
-	case 1:
-		s.one[a[0]] += p
-	case 2:
-		s.two[at2(a[0], a[1])] += p
-	default:
-		s.three[at3(a[0], a[1], a[2])] += p
-	}
-}
-
-// most gives the sum for the worst third letter.
-func (s *ruleShares) most() *[square]float64 {
-	var out [square]float64
-	for c := Symbol(0); c < symbols; c++ {
-		for r := Symbol(0); r < symbols; r++ {
-			third := 0.0
-			for t := Symbol(0); t < symbols; t++ {
-				third = max(third, s.three[at3(c, r, t)])
-			}
-			out[at2(c, r)] = s.one[c] + s.two[at2(c, r)] + third
-		}
-	}
-	return &out
-}
-
-// mostOf gives the greatest sum at any place where the rule can hold.
-func (s *ruleShares) mostOf(key ruleKey, taken *[square]float64) float64 {
-	c := key.intended[0]
-	if key.rule().NIntended > 1 {
-		return taken[at2(c, key.intended[1])]
-	}
-	most := 0.0
-	for r := Symbol(0); r < symbols; r++ {
-		most = max(most, taken[at2(c, r)])
-	}
-	return most
 }
 
 // place divides the probability of one place among keeping, dropping,

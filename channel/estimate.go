@@ -4,34 +4,37 @@ import "math"
 
 // counts are (expected) numbers of events, by place in the intended word.
 type counts struct {
-	emit   []float64 // [x][l][c][r]: c between l and r typed as x; x = Edge: left out; x = c: kept
-	swap   []float64 // [c][r]
-	insert []float64 // [x][l][r]
-	visits []float64 // [l][c][r]: letters reached, whatever became of them
-	slots  []float64 // [l][r]: places where a letter could be inserted
-	rules  map[ruleKey]float64
+	emit      []float64 // [x][l][c][r]: c between l and r typed as x; x = Edge: left out; x = c: kept
+	swap      []float64 // [c][r]
+	insert    []float64 // [x][l][r]
+	rewritten []float64 // [c][r]: rules that began at c before r
+	visits    []float64 // [l][c][r]: letters reached, whatever became of them
+	slots     []float64 // [l][r]: places where a letter could be inserted
+	rules     map[ruleKey]float64
 }
 
 func newCounts() *counts {
 	return &counts{
-		emit:   make([]float64, symbols*cube),
-		swap:   make([]float64, square),
-		insert: make([]float64, cube),
-		visits: make([]float64, cube),
-		slots:  make([]float64, square),
-		rules:  map[ruleKey]float64{},
+		emit:      make([]float64, symbols*cube),
+		swap:      make([]float64, square),
+		insert:    make([]float64, cube),
+		rewritten: make([]float64, square),
+		visits:    make([]float64, cube),
+		slots:     make([]float64, square),
+		rules:     map[ruleKey]float64{},
 	}
 }
 
 // estimates are the probabilities that follow from counts. What is left over at
 // a place is the probability of keeping its letter.
 type estimates struct {
-	emit    []float64 // as counts, without the kept letters
-	swap    []float64
-	insert  []float64
-	doubt   []float64 // [l][c][r]: replacements at this place over what the two factors give
-	subLeft []float64 // [x][l][c]
-	subNext []float64 // [x][c][r], relative to no neighbour
+	emit      []float64 // as counts, without the kept letters
+	swap      []float64
+	insert    []float64
+	rewritten []float64 // [c][r]: all rules together, on average over the words
+	doubt     []float64 // [l][c][r]: replacements at this place over what the two factors give
+	subLeft   []float64 // [x][l][c]
+	subNext   []float64 // [x][c][r], relative to no neighbour
 }
 
 // Smoothing strengths: how many events a less specific estimate is worth.
@@ -47,12 +50,13 @@ const (
 // one neighbour on either side, none, and at last all edits alike.
 func smooth(n *counts) *estimates {
 	e := &estimates{
-		emit:    make([]float64, symbols*cube),
-		swap:    make([]float64, square),
-		insert:  make([]float64, cube),
-		doubt:   make([]float64, cube),
-		subLeft: make([]float64, cube),
-		subNext: make([]float64, cube),
+		emit:      make([]float64, symbols*cube),
+		swap:      make([]float64, square),
+		insert:    make([]float64, cube),
+		rewritten: make([]float64, square),
+		doubt:     make([]float64, cube),
+		subLeft:   make([]float64, cube),
+		subNext:   make([]float64, cube),
 	}
 	visits := sidesOf(func(l, c, r Symbol) float64 { return n.visits[at3(l, c, r)] })
 	for c := Symbol(1); c < symbols; c++ {
@@ -62,6 +66,7 @@ func smooth(n *counts) *estimates {
 			}
 		}
 		e.smoothSwap(c, n, &visits[c])
+		e.shareOfRules(c, n, &visits[c])
 	}
 	e.weighReplacements()
 	slots := sideOf(func(l, r Symbol) float64 { return n.slots[at2(l, r)] })
@@ -145,6 +150,17 @@ func (e *estimates) smoothSwap(c Symbol, n *counts, visits *side) {
 		if r != c {
 			e.swap[at2(c, r)] = interpolate(n.swap[at2(c, r)], visits.next[r], trustSide, all)
 		}
+	}
+}
+
+// shareOfRules estimates how often c and the next letter begin a rewriting.
+func (e *estimates) shareOfRules(c Symbol, n *counts, visits *side) {
+	var all float64
+	for r := Symbol(0); r < symbols; r++ {
+		all += n.rewritten[at2(c, r)]
+	}
+	for r := Symbol(0); r < symbols; r++ {
+		e.rewritten[at2(c, r)] = interpolate(n.rewritten[at2(c, r)], visits.next[r], trustSide, all/(visits.all+trustNone))
 	}
 }
 

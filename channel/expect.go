@@ -167,6 +167,7 @@ func (n *counts) add(e *event, share float64) {
 		n.swap[at2(e.c, e.r)] += share
 	case Rewritten:
 		n.rules[e.rule] += share
+		n.rewritten[at2(e.c, e.r)] += share
 	default:
 		n.emit[int(e.x)*cube+at3(e.l, e.c, e.r)] += share
 	}

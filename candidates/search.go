@@ -1,0 +1,239 @@
+package candidates
+
+import (
+	"math"
+
+	"example.org/foulcase/candidates/lexicon"
+	"example.org/foulcase/channel"
+)
+
+// Weights say how much the two parts of a score count.
+type Weights struct {
+	Channel float32 // times the channel cost, nats
+	Prior   float32 // times minus the log prior of the word, nats
+}
+
+// DefaultWeights rank isolated words best on the lists they were tuned on.
+var DefaultWeights = Weights{Channel: 1, Prior: 0.6}
+
+// Candidate is a word that may have been meant.
+type Candidate struct {
+	ID      uint32  // in the lexicon, or in the house lexicon
+	House   bool    // ID counts in the house lexicon
+	Channel float32 // cost of the observed form if this is what was meant, nats
+	Prior   float32 // log prior of the word, nats, at most 0
+}
+
+// Score is the weighted sum that candidates are ordered by, least first.
+func (c Candidate) Score(w Weights) float32 { return w.Channel*c.Channel - w.Prior*c.Prior }
+
+// Searcher finds candidates. It serves one goroutine at a time, and does not
+// allocate once it has grown to the size its queries need.
+type Searcher struct {
+	channel *channel.Model
+	weights Weights
+	variety lexicon.Variety
+	lex     *lexicon.Lexicon
+	mirror  *Mirror
+	house   *lexicon.Lexicon
+	trees   []tree
+
+	paths             []path
+	visits            []visit
+	query             uint32
+	queue             heap
+	observed          []channel.Letter
+	forwards, reverse reading
+	best              []found // the best k words seen, ascending by score
+	limit             float32
+	k                 int
+	budget            int
+	spread            float32
+}
+
+// found is a whole word reached by the search, not yet in its turn.
+type found struct {
+	score float32
+	id    uint32
+	house bool
+}
+
+const (
+	// budget is the number of states a query may leave before it gives up with
+	// what it has found, a few dozen milliseconds of work.
+	budget = 200_000
+	// spread is the default of SetSpread.
+	spread = 8
+	// longest is the number of letters of the longest observed word.
+	longest = 62
+)
+
+// NewSearcher searches one lexicon by one error model.
+func NewSearcher(lex *lexicon.Lexicon, ch *channel.Model, w Weights) *Searcher {
+	s := &Searcher{lex: lex, channel: ch, weights: w, budget: budget, spread: spread}
+	s.plant()
+	return s
+}
+
+// SetMirror gives the searcher the lexicon spelled backwards, which makes it
+// fast and does not change what it finds.
+func (s *Searcher) SetMirror(m *Mirror) {
+	s.mirror = m
+	s.plant()
+}
+
+// SetHouse has a second, small lexicon searched along with the first; nil for none.
+func (s *Searcher) SetHouse(house *lexicon.Lexicon) {
+	s.house = house
+	s.plant()
+}
+
+// SetSpread leaves out words whose scores are more than so much above the best.
+// It bounds the work: words less likely by such a factor cost most of the time
+// of an exact search for them.
+func (s *Searcher) SetSpread(spread float32) { s.spread = spread }
+
+// SetVariety leaves out words of other varieties than those named; 0 keeps all.
+func (s *Searcher) SetVariety(v lexicon.Variety) {
+	s.variety = v
+	s.plant()
+}
+
+// plant sets up the trees to search.
+func (s *Searcher) plant() {
+	s.trees = append(s.trees[:0], tree{lex: s.lex, read: &s.forwards})
+	if s.mirror != nil {
+		s.trees = append(s.trees, tree{lex: s.mirror.lex, mirror: s.mirror, read: &s.reverse})
+	}
+	if s.house != nil {
+		s.trees = append(s.trees, tree{lex: s.house, house: true, read: &s.forwards})
+	}
+	s.forget()
+}
+
+// Search appends the best k words for an observed form in normal form, best
+// first, with scores of at most bound. The observed form itself is among them
+// if it is a word. An observed form of more than 62 letters has no candidates.
+func (s *Searcher) Search(dst []Candidate, observed []byte, k int, bound float32) []Candidate {
+	s.observed = channel.AppendLetters(s.observed[:0], observed[:min(len(observed), 4*longest+1)])
+	if n := len(s.observed); n == 0 || n > longest || k <= 0 {
+		return dst
+	}
+	s.begin(k, bound)
+	from := len(dst)
+	for work := 0; len(s.queue) > 0 && work < s.budget; work++ {
+		st := s.queue.pop()
+		p := &s.paths[st.path]
+		if st.score > s.limit {
+			break
+		}
+		if s.leftCheaper(p, st.i, st.cost) {
+			continue
+		}
+		s.note(p, st.i, st.cost)
+		switch {
+		case p.letter.Sym != channel.Edge:
+			s.leave(st)
+		case int(st.i) < len(s.observed):
+			s.insert(st, p)
+		default:
+			if dst = s.collect(dst, from, p, st.cost); len(dst)-from == k {
+				return dst
+			}
+		}
+	}
+	return dst
+}
+
+// collect appends the word that ends at a path, unless the other reading found
+// it before.
+func (s *Searcher) collect(dst []Candidate, from int, p *path, cost float32) []Candidate {
+	t := &s.trees[p.tree]
+	id := t.id(p.base)
+	for _, c := range dst[from:] {
+		if c.ID == id && c.House == t.house {
+			return dst
+		}
+	}
+	return append(dst, Candidate{ID: id, House: t.house, Channel: cost, Prior: t.lex.Prior(p.base)})
+}
+
+// begin prepares the search and starts it at every first letter.
+func (s *Searcher) begin(k int, bound float32) {
+	if len(s.paths) > mostPaths || s.query == math.MaxUint32 {
+		s.query = 0
+		s.forget()
+	}
+	s.query++
+	s.queue, s.best, s.visits = s.queue[:0], s.best[:0], append(s.visits[:0], visit{})
+	s.k, s.limit = k, bound
+	half := 0
+	if s.mirror != nil {
+		half = (len(s.observed) + 1) / 2
+	}
+	s.forwards.readForwards(s.channel, s.observed, half)
+	if s.mirror != nil {
+		s.reverse.readBackwards(s.channel, &s.forwards, len(s.observed)-half)
+	}
+	for i := range s.trees {
+		t := &s.trees[i]
+		for c, end := s.children(t.root); c < end; c++ {
+			cost := float32(0)
+			if t.read.back {
+				cost = s.channel.Stop(s.paths[c].letter.Sym)
+			}
+			s.push(state{}, c, 0, cost)
+		}
+	}
+}
+
+// push queues a state that a step from another reached, unless it cannot matter.
+func (s *Searcher) push(from state, at, i int32, cost float32) {
+	p := &s.paths[at]
+	t := &s.trees[p.tree]
+	half := from.half
+	if int(from.i) < t.read.half {
+		half = cost
+		if int(i) > t.read.half {
+			half = from.cost
+		}
+	}
+	score := s.weights.Channel*max(cost+t.read.floor[i], 2*(half+t.read.toHalf[i])) + p.prior
+	if score > s.limit || s.leftCheaper(p, i, cost) {
+		return
+	}
+	if p.letter.Sym == channel.Edge && int(i) == len(s.observed) {
+		s.tighten(found{score, t.id(p.base), t.house})
+	}
+	s.queue.push(state{score, cost, half, at, i})
+}
+
+// tighten lowers the limit to the k-th best score of the whole words seen.
+func (s *Searcher) tighten(f found) {
+	at := len(s.best)
+	for i, b := range s.best {
+		if b.id == f.id && b.house == f.house {
+			if b.score <= f.score {
+				return
+			}
+			at = i
+			break
+		}
+	}
+	if at == len(s.best) {
+		if at < s.k {
+			s.best = append(s.best, f)
+		} else if at--; s.best[at].score <= f.score {
+			return
+		}
+	}
+	for at > 0 && s.best[at-1].score > f.score {
+		s.best[at] = s.best[at-1]
+		at--
+	}
+	s.best[at] = f
+	s.limit = min(s.limit, s.best[0].score+s.spread)
+	if len(s.best) == s.k {
+		s.limit = min(s.limit, s.best[s.k-1].score)
+	}
+}

@@ -1,0 +1,146 @@
+package candidates_test
+
+import (
+	"math"
+	"math/rand/v2"
+	"slices"
+	"testing"
+
+	"example.org/foulcase/candidates"
+	"example.org/foulcase/candidates/lexicon"
+	"example.org/foulcase/channel"
+)
+
+// words of the pilot office, with priors that differ.
+var words = []string{
+	"a", "an", "and", "anchor", "anchorage", "berth", "birth", "berths", "boat", "boats", "bow", "bough",
+	"buoy", "boy", "quay", "key", "pier", "peer", "piers", "pilot", "pilots", "pilotage", "plot", "plots", "sheer",
+	"shear", "ship", "ships", "shop", "the", "then", "there", "their", "tide", "tied", "tides", "tug", "tugs",
+	"watch", "water", "with", "within", "in", "lot", "don't", "café", "naïve", "ïle", "harbour", "harbor",
+	"receive", "received", "vessel", "vessels", "wessel", "moor", "mooring", "moorings", "morning", "mourning",
+}
+
+func buildLexicon(t testing.TB, forms []string) *lexicon.Lexicon {
+	t.Helper()
+	var b lexicon.Builder
+	for i, w := range forms {
+		e := lexicon.Entry{Variety: lexicon.Both, Cases: lexicon.LowerCase, Usual: lexicon.LowerCase, Listed: true}
+		e.Prior = -float32(2 + i*7919%120*12/120)
+		b.Add(w, e, "")
+	}
+	section, err := b.Section()
+	if err != nil {
+		t.Fatal(err)
+	}
+	lex, err := lexicon.Open(section)
+	if err != nil {
+		t.Fatal(err)
+	}
+	return lex
+}
+
+func buildMirror(t testing.TB, lex *lexicon.Lexicon) *candidates.Mirror {
+	t.Helper()
+	section, err := candidates.BuildMirror(lex)
+	if err != nil {
+		t.Fatal(err)
+	}
+	m, err := candidates.OpenMirror(section)
+	if err != nil {
+		t.Fatal(err)
+	}
+	return m
+}
+
+// slips are invented, enough to give a model with rules.
+var slips = []channel.Pair{
+	{Observed: "recieve", Intended: "receive", Count: 9}, {Observed: "beleive", Intended: "believe", Count: 9},
+	{Observed: "fone", Intended: "phone", Count: 9}, {Observed: "foto", Intended: "photo", Count: 9},
+	{Observed: "grafic", Intended: "graphic", Count: 9}, {Observed: "seperate", Intended: "separate", Count: 9},
+	{Observed: "morring", Intended: "mooring", Count: 4}, {Observed: "teh", Intended: "the", Count: 30},
+	{Observed: "dont", Intended: "don't", Count: 9}, {Observed: "harbur", Intended: "harbour", Count: 3},
+	{Observed: "vesel", Intended: "vessel", Count: 5}, {Observed: "pilott", Intended: "pilot", Count: 5},
+	{Observed: "enuf", Intended: "enough", Count: 9}, {Observed: "ruf", Intended: "rough", Count: 9},
+	{Observed: "tuf", Intended: "tough", Count: 9}, {Observed: "stashun", Intended: "station", Count: 9},
+	{Observed: "nashun", Intended: "nation", Count: 9}, {Observed: "moshun", Intended: "motion", Count: 9},
+}
+
+func fitSlips(t testing.TB) *channel.Model {
+	t.Helper()
+	m, report, err := channel.Fit(slips, channel.FitOptions{})
+	if err != nil {
+		t.Fatal(err)
+	}
+	if report.Rules == 0 {
+		t.Fatal("the slips gave no rules")
+	}
+	return m
+}
+
+// scan is the oracle: the price of every word, sorted.
+func scan(lex *lexicon.Lexicon, m *channel.Model, observed string, w candidates.Weights) []float64 {
+	var a channel.Aligner
+	var scores []float64
+	for id := range uint32(lex.Len()) {
+		cost := a.Cost(m, observed, string(lex.AppendForm(nil, id)))
+		scores = append(scores, cost*float64(w.Channel)-float64(lex.Entry(id).Prior)*float64(w.Prior))
+	}
+	slices.Sort(scores)
+	return scores
+}
+
+// agree compares the scores of a search with the oracle's.
+func agree(t *testing.T, s *candidates.Searcher, lex *lexicon.Lexicon, m *channel.Model, observed string, w candidates.Weights, k int) {
+	t.Helper()
+	got := s.Search(nil, []byte(observed), k, math.MaxFloat32)
+	want := scan(lex, m, observed, w)
+	if len(got) != min(k, len(want)) {
+		t.Fatalf("%q: %d candidates, want %d", observed, len(got), min(k, len(want)))
+	}
+	for i, c := range got {
+		form := string(lex.AppendForm(nil, c.ID))
+		if cost := m.Cost(observed, form); math.Abs(cost-float64(c.Channel)) > 1e-6 {
+			t.Fatalf("%q: %q costs %v, want %v", observed, form, c.Channel, cost)
+		}
+		if math.Abs(float64(c.Score(w))-want[i]) > 1e-4 {
+			t.Fatalf("%q: number %d is %q with score %v, want %v", observed, i, form, c.Score(w), want[i])
+		}
+	}
+}
+
+func TestSearchEqualsScan(t *testing.T) {
+	lex, m := buildLexicon(t, words), fitSlips(t)
+	w := candidates.Weights{Channel: 1, Prior: 0.5}
+	alone := candidates.NewSearcher(lex, m, w)
+	mirrored := candidates.NewSearcher(lex, m, w)
+	mirrored.SetMirror(buildMirror(t, lex))
+	random := rand.New(rand.NewPCG(1, 2))
+	for range 1500 {
+		observed := garble(random, words[random.IntN(len(words))])
+		for _, k := range []int{1, 5, 1000} {
+			agree(t, alone, lex, m, observed, w, k)
+			agree(t, mirrored, lex, m, observed, w, k)
+		}
+	}
+}
+
+// garble makes up to four slips anywhere in a word.
+func garble(random *rand.Rand, word string) string {
+	letters := []rune(word)
+	const alphabet = "abcdefghijklmnopqrstuvwxyz'é"
+	for range random.IntN(5) {
+		at := random.IntN(len(letters) + 1)
+		x := []rune(alphabet)[random.IntN(28)]
+		switch op := random.IntN(4); {
+		case op == 0 || at >= len(letters)-1:
+			letters = slices.Insert(letters, at, x)
+		case op == 1 && len(letters) > 1:
+			letters = slices.Delete(letters, at, at+1)
+		case op == 2:
+			letters[at] = x
+		default:
+			letters[at], letters[at+1] = letters[at+1], letters[at]
+		}
+	}
+	return string(letters)
+}
