@@ -143,9 +143,9 @@ func (a *arpaReader) section(order int) ([]byte, error) {
 			}
 			a.grams = append(a.grams, grams)
 			if order == 1 {
-				return line, a.sizeKeys()
+				err = a.sizeKeys()
 			}
-			return line, nil
+			return line, err
 		}
 		fields = split(fields[:0], line)
 		gram, err := a.gram(order, fields)
@@ -171,8 +171,16 @@ func split(fields [][]byte, line []byte) [][]byte {
 	return fields
 }
 
-// sizeKeys sets the width of a word once all unigrams are known.
+// sizeKeys sets the width of a word once all unigrams are known, each once.
 func (a *arpaReader) sizeKeys() error {
+	lines := make([]int, a.vocabulary.Len())
+	for _, g := range a.grams[0] {
+		if first := &lines[g.key.lo]; *first == 0 {
+			*first = g.line
+		} else {
+			return a.fail("the unigram of line %d was in line %d before", g.line, *first)
+		}
+	}
 	a.width = uint(bits.Len(uint(a.vocabulary.Len())))
 	if len(a.counts) > 1 && a.width*uint(len(a.counts)) > 128 {
 		return a.fail("%d words at order %d; this program handles %d bits of them an n-gram, not %d",

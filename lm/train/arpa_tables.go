@@ -11,14 +11,12 @@ import (
 // tables sorts the n-grams read into the levels of a model.
 func (a *arpaReader) tables() (lm.Tables, error) {
 	t := make(lm.Tables, len(a.grams))
-	if err := a.unigrams(&t[0]); err != nil {
-		return nil, err
-	}
+	a.unigrams(&t[0])
 	for k := len(t) - 1; k > 0; k-- {
 		slices.SortStableFunc(a.grams[k], func(x, y arpaGram) int { return compareKeys(x.key, y.key) })
 		for i := 1; i < len(a.grams[k]); i++ {
 			if here := a.grams[k][i]; here.key == a.grams[k][i-1].key {
-				return nil, fmt.Errorf("%w: line %d: the %d-gram of line %d again", ErrARPA, here.line, k+1, a.grams[k][i-1].line)
+				return nil, fmt.Errorf("%w: line %d: the %d-gram was in line %d before", ErrARPA, here.line, k+1, a.grams[k][i-1].line)
 			}
 		}
 		if k > 1 {
@@ -41,24 +39,18 @@ func compareKeys(x, y key) int {
 	return 1
 }
 
-func (a *arpaReader) unigrams(t *lm.Table) error {
+func (a *arpaReader) unigrams(t *lm.Table) {
 	n := a.vocabulary.Len()
 	t.LogProb, t.Backoff = make([]float32, n), make([]float32, n)
 	for i := range t.LogProb {
 		t.LogProb[i] = unknownNats
 	}
-	lines := make([]int, n)
 	for _, g := range a.grams[0] {
-		w := g.key.lo
-		if lines[w] > 0 {
-			return fmt.Errorf("%w: line %d: the unigram of line %d again", ErrARPA, g.line, lines[w])
-		}
-		lines[w], t.LogProb[w], t.Backoff[w] = g.line, g.prob, g.backoff
+		t.LogProb[g.key.lo], t.Backoff[g.key.lo] = g.prob, g.backoff
 	}
 	if len(a.grams) == 1 {
 		t.Backoff = nil
 	}
-	return nil
 }
 
 // complete adds to order k the parents and contexts that order k+1 needs. The

@@ -28,6 +28,11 @@ type estimator struct {
 	lost      [][]float64 // by order, counts pruned from each context; nil without pruning
 }
 
+// newEstimator takes counts over, with discounts estimated from them.
+func newEstimator(counts *Counts, o Options) *estimator {
+	return &estimator{options: o, counts: counts, discounts: counts.discounts(), contexts: make([][]uint32, 1)}
+}
+
 // estimate fills the tables with plain probabilities.
 func (e *estimator) estimate(ctx context.Context) error {
 	e.tables = e.counts.tables()

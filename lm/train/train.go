@@ -34,7 +34,7 @@ func Build(ctx context.Context, counts *Counts, o Options) (*Result, error) {
 	if err != nil {
 		return nil, err
 	}
-	e := &estimator{options: o, counts: counts, discounts: counts.discounts(), contexts: make([][]uint32, 1)}
+	e := newEstimator(counts, o)
 	r := &Result{Sentences: counts.Sentences, Tokens: counts.Tokens, Discounts: e.discounts, Threshold: keepAll}
 	for k := range counts.levels {
 		r.Counted = append(r.Counted, counts.Len(k+1))
