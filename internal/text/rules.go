@@ -52,22 +52,22 @@ func whole(holds func([]byte) bool) func([]byte) int {
 }
 
 // leftAlone appends the token of what begins at p and is left alone, and returns
-// its end; it returns p when no rule holds. Code between back quotes, markup tags
-// and placeholders may hold white space, and so end beyond the run, which ends
-// at q.
-func (s *Segmenter) leftAlone(p, q int) int {
+// its end; it returns p when no rule holds, and how many bytes it had to look at.
+// Code between back quotes, markup tags and placeholders may hold white space,
+// and so end beyond the run, which ends at q.
+func (s *Segmenter) leftAlone(p, q int) (end, read int) {
 	if !beginsCore(s.text[p:q]) {
-		return p
+		return p, 1
 	}
 	if n := enclosed(s.text[p:]); n > 0 {
 		s.add(Literal, p, p+n)
-		return p + n
+		return p + n, n
 	}
 	if n := url(s.text[p:q]); n > 0 {
 		s.add(Literal, p, p+n)
-		return p + n
+		return p + n, n
 	}
-	core := coreOf(s.text[p:q])
+	core, read := coreOf(s.text[p:q])
 	var mask class
 	for _, c := range core {
 		mask |= classes[c]
@@ -78,10 +78,10 @@ func (s *Segmenter) leftAlone(p, q int) int {
 			continue
 		}
 		if n := r.match(core); n > 0 {
-			return s.addRuled(r.kind, p, p+n, q)
+			return s.addRuled(r.kind, p, p+n, q), n
 		}
 	}
-	return p
+	return p, read
 }
 
 // addRuled appends the token of a rule. A dotted acronym takes the point after
@@ -102,24 +102,33 @@ func (s *Segmenter) addRuled(kind Kind, start, end, q int) int {
 	return end
 }
 
-// coreOf returns the part of a run that the rules see.
-func coreOf(run []byte) []byte {
-	end := len(run)
-	for i := range run {
-		if i > 0 && cutsCore(run, i) {
-			end = i
-			break
-		}
+// coreOf returns the part of a run that the rules see, and how many bytes it had
+// to look at.
+func coreOf(run []byte) (core []byte, read int) {
+	end := 1
+	for end < len(run) && !cutsCore(run, end) {
+		end++
 	}
-	core := run[:end]
+	core = run[:end]
+	tag, brace := bytes.IndexByte(core, '<') >= 0, bytes.IndexByte(core, '{') >= 0
 	for len(core) > 1 {
 		r, n := utf8.DecodeLastRune(core)
-		if !trailing(core, r) {
+		if !trails(r) && (r != '>' || tag) && (r != '}' || brace) {
 			break
 		}
 		core = core[:len(core)-n]
 	}
-	return core
+	return core, end
+}
+
+// trails reports characters that a core does not end with; > and } are others
+// unless they close what it opened.
+func trails(r rune) bool {
+	switch r {
+	case '.', ',', ':', '\'', '*', '`', '|', '\u2019', '\u2018', '\u00BB':
+		return true
+	}
+	return false
 }
 
 // beginsCore reports that a rule may hold from here: letters and digits, and the
@@ -158,19 +167,6 @@ func cutsCore(run []byte, i int) bool {
 	case 0xE2:
 		r, _ := utf8.DecodeRune(run[i:])
 		return r == '\u2014' || r == '\u2015' || r == '\u201C' || r == '\u201D' || r == '\u2026' || r == '\uFFFC'
-	}
-	return false
-}
-
-// trailing reports a character that the core does not end with.
-func trailing(core []byte, r rune) bool {
-	switch r {
-	case '.', ',', ':', '\'', '*', '`', '|', '\u2019', '\u2018', '\u00BB':
-		return true
-	case '}':
-		return bytes.IndexByte(core, '{') < 0
-	case '>':
-		return bytes.IndexByte(core, '<') < 0
 	}
 	return false
 }

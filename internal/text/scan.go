@@ -10,15 +10,21 @@ import (
 // inside the run.
 //
 // The rules of rules.go are asked at the start of the run and after every
-// punctuation mark, but only when the classes of the run make them possible.
+// punctuation mark, but only when the classes of the run make them possible, and
+// as long as they have not read the run eight times over: a run of nothing but
+// marks is no prose and must not take quadratic time.
 func (s *Segmenter) scan(p, q int, mask class) int {
 	suspect := s.suspect(p, q, mask)
+	budget := 8*(q-p) + 1024 // bytes
 	for fresh := suspect; p < q; {
 		if fresh {
-			if end := s.leftAlone(p, q); end > p {
+			end, read := s.leftAlone(p, q)
+			if end > p {
 				p, fresh = end, false
 				continue
 			}
+			budget -= read
+			suspect = budget > 0
 		}
 		c := s.text[p]
 		if classes[c]&cLetter != 0 {
@@ -115,6 +121,9 @@ func (s *Segmenter) mark(r rune, p, n, q int) int {
 			end++
 		}
 	default:
+		for r < utf8.RuneSelf && end < q && s.text[end] == byte(r) {
+			end++ // a ruled line
+		}
 		end = s.symbols(end, q)
 	}
 	s.add(kind, p, end)

@@ -94,6 +94,13 @@ func TestLongSentence(t *testing.T) {
 	}
 }
 
+// TestLongRuns: runs of marks without white space are read in good time.
+func TestLongRuns(t *testing.T) {
+	for _, unit := range []string{"=", "=>", ":=", "/=", "'='", "(=", ",=", ".=", "a=,", "<", "`", "''", "a.", ".a", "-a", "a/", "\u2019", "\u20AC", "_", "@", "1.", "1-", "x1-", "a'", "\u0301", "\xff"} {
+		checkTokens(t, []byte(strings.Repeat(unit, 300_000/len(unit))))
+	}
+}
+
 // TestStopEarly: the loop may end before the text does, and begin anew.
 func TestStopEarly(t *testing.T) {
 	var s text.Segmenter
