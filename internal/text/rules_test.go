@@ -115,7 +115,9 @@ func TestCapitalHeading(t *testing.T) {
 	for in, want := range map[string]string{
 		"NOTICE TO ALL MASTERS":    "NOTICE TO ALL MASTERS",
 		"NOTICE to NASA":           "NOTICE to Acronym(NASA)",
-		"NASA AND THE EU":          "Acronym(NASA) Acronym(AND) Acronym(THE) Acronym(EU)",
+		"NASA AND EU":              "Acronym(NASA) Acronym(AND) Acronym(EU)",
+		"WHAT IS THE R&D FOR":      "WHAT IS THE Acronym(R&D) FOR",
+		"NASA, ESA, EU, UN":        "Acronym(NASA) +Comma(,) Acronym(ESA) +Comma(,) Acronym(EU) +Comma(,) Acronym(UN)",
 		"MASTERS OF THE U.S. NAVY": "MASTERS OF THE Acronym(U.S.) NAVY",
 	} {
 		if got := sentences(in); len(got) != 1 || got[0] != want {

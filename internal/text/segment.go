@@ -1,6 +1,7 @@
 package text
 
 import (
+	"bytes"
 	"iter"
 	"unicode/utf8"
 )
@@ -136,14 +137,32 @@ func (s *Segmenter) add(kind Kind, start, end int) {
 
 // lowerHeading makes words of the short all-capital tokens of a sentence that
 // is all capitals ("NOTICE TO MASTERS"): when no word of it has lower-case
-// letters and one has six capitals or more.
+// letters, and one has six capitals or more or there are four without a comma.
 func (s *Segmenter) lowerHeading() {
-	if s.lower > 0 || s.upper == 0 {
+	if s.lower > 0 || s.upper == 0 && (len(s.tokens) < 4 || !s.shouted()) {
 		return
 	}
 	for i := range s.tokens {
-		if t := &s.tokens[i]; t.Kind == Acronym && t.Case == Upper && s.text[t.End-1] != '.' {
+		if t := &s.tokens[i]; t.Kind == Acronym && s.allCapitals(t) {
 			t.Kind = Word
 		}
 	}
+}
+
+func (s *Segmenter) shouted() bool {
+	n := 0
+	for i := range s.tokens {
+		switch t := &s.tokens[i]; {
+		case t.Kind == Comma:
+			return false
+		case t.Kind == Acronym && s.allCapitals(t):
+			n++
+		}
+	}
+	return n > 3
+}
+
+// allCapitals reports an acronym without points or ampersands.
+func (s *Segmenter) allCapitals(t *Token) bool {
+	return t.Case == Upper && bytes.IndexAny(s.text[t.Start:t.End], ".&") < 0
 }
