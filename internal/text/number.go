@@ -136,16 +136,10 @@ func joinerLen(b []byte) int {
 // dottedDate reports three groups, the first two of at most two digits, the
 // last of two or four: 12.05.2021.
 func dottedDate(digits []byte) bool {
-	parts := bytes.Split(digits, []byte("."))
-	if len(parts) != 3 {
-		return false
-	}
-	for i, p := range parts {
-		if !all(p, cDigit) || len(p) > 2 && !(i == 2 && len(p) == 4) || i == 2 && len(p) < 2 {
-			return false
-		}
-	}
-	return true
+	day, rest, _ := bytes.Cut(digits, []byte("."))
+	month, year, _ := bytes.Cut(rest, []byte("."))
+	return all(day, cDigit) && len(day) < 3 && all(month, cDigit) && len(month) < 3 &&
+		all(year, cDigit) && (len(year) == 2 || len(year) == 4)
 }
 
 // separates reports that what follows a number is a hyphen or slash and then
@@ -154,7 +148,7 @@ func separates(b []byte) bool {
 	r, n := utf8.DecodeRune(b)
 	switch r {
 	case '-', '\u2010', '\u2011', '\u2013', '/':
-		return n < len(b) && alnumByte(b[n]) && bytes.IndexAny(b, "0123456789_@=\\") < 0
+		return n < len(b) && alnumByte(b[n]) && !bytes.ContainsAny(b, "0123456789_@=\\")
 	}
 	return false
 }

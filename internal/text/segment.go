@@ -164,5 +164,5 @@ func (s *Segmenter) shouted() bool {
 
 // allCapitals reports an acronym without points or ampersands.
 func (s *Segmenter) allCapitals(t *Token) bool {
-	return t.Case == Upper && bytes.IndexAny(s.text[t.Start:t.End], ".&") < 0
+	return t.Case == Upper && !bytes.ContainsAny(s.text[t.Start:t.End], ".&")
 }

@@ -97,7 +97,7 @@ func TestLongSentence(t *testing.T) {
 // TestLongRuns: runs of marks without white space are read in good time.
 func TestLongRuns(t *testing.T) {
 	for _, unit := range []string{"=", "=>", ":=", "/=", "'='", "(=", ",=", ".=", "a=,", "<", "`", "''", "a.", ".a", "-a", "a/", "\u2019", "\u20AC", "_", "@", "1.", "1-", "x1-", "a'", "\u0301", "\xff"} {
-		checkTokens(t, []byte(strings.Repeat(unit, 300_000/len(unit))))
+		checkTokens(t, []byte(strings.Repeat(unit, 100_000/len(unit))))
 	}
 }
 
@@ -117,6 +117,7 @@ func TestStopEarly(t *testing.T) {
 
 func TestSegmenterAllocatesNothing(t *testing.T) {
 	block := []byte("The Pilot's cafe\u0301 \u2014 \u201CNa\u00EFve?\u201D \u2014 in the U.S. at 10:30 of foo_bar, J. Brook\u2019s HMS well-known https://x.y/z \u0130I. " +
+		"On 12.05.2021 at 192.168.0.1 the AT&T <a b> {c} `d e` $f --g h/i j.k (l()) XIV PCs McDonald 1.2.3 5\u00D710\u00B3 km\u00B2 'tis \u20187\u2019. " +
 		"NOTICE TO MASTERS, e.g. 5kg of \u6E2F\u53E3 and \U0001F600.")
 	var s text.Segmenter
 	run := func() {

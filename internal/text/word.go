@@ -181,5 +181,5 @@ func (s *Segmenter) leadingApostrophe(p, first, q int) bool {
 		return false // a quoted word
 	}
 	var buf [8]byte
-	return clipped(Fold(buf[:0], s.text[first:end]))
+	return clipped(appendFolded(buf[:0], s.text[first:end]))
 }
