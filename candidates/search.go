@@ -46,6 +46,7 @@ type Searcher struct {
 	forwards, reverse reading
 	best              []found // the best k words seen, ascending by score
 	limit             float32
+	joined            []byte
 	k                 int
 	budget            int
 	spread            float32
@@ -60,10 +61,10 @@ type found struct {
 
 const (
 	// budget is the number of states a query may leave before it gives up with
-	// what it has found, a few dozen milliseconds of work.
-	budget = 200_000
+	// what it has found, some ten milliseconds of work.
+	budget = 50_000
 	// spread is the default of SetSpread.
-	spread = 8
+	spread = 7
 	// longest is the number of letters of the longest observed word.
 	longest = 62
 )

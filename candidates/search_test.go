@@ -63,6 +63,10 @@ var slips = []channel.Pair{
 	{Observed: "enuf", Intended: "enough", Count: 9}, {Observed: "ruf", Intended: "rough", Count: 9},
 	{Observed: "tuf", Intended: "tough", Count: 9}, {Observed: "stashun", Intended: "station", Count: 9},
 	{Observed: "nashun", Intended: "nation", Count: 9}, {Observed: "moshun", Intended: "motion", Count: 9},
+	{Observed: "tidle", Intended: "tidal", Count: 9}, {Observed: "timmber", Intended: "timber", Count: 9},
+	{Observed: "ationn", Intended: "ation", Count: 9}, {Observed: "tieing", Intended: "tying", Count: 9},
+	{Observed: "ontoo", Intended: "onto", Count: 9}, {Observed: "stationn", Intended: "station", Count: 9},
+	{Observed: "tinn", Intended: "tin", Count: 9}, {Observed: "tip", Intended: "tipp", Count: 9},
 }
 
 func fitSlips(t testing.TB) *channel.Model {
@@ -112,10 +116,12 @@ func TestSearchEqualsScan(t *testing.T) {
 	lex, m := buildLexicon(t, words), fitSlips(t)
 	w := candidates.Weights{Channel: 1, Prior: 0.5}
 	alone := candidates.NewSearcher(lex, m, w)
+	alone.SetSpread(math.MaxFloat32)
 	mirrored := candidates.NewSearcher(lex, m, w)
+	mirrored.SetSpread(math.MaxFloat32)
 	mirrored.SetMirror(buildMirror(t, lex))
 	random := rand.New(rand.NewPCG(1, 2))
-	for range 1500 {
+	for range 300 {
 		observed := garble(random, words[random.IntN(len(words))])
 		for _, k := range []int{1, 5, 1000} {
 			agree(t, alone, lex, m, observed, w, k)

@@ -39,11 +39,12 @@ type estimates struct {
 
 // Smoothing strengths: how many events a less specific estimate is worth.
 const (
-	trustNone   = 20 // no neighbour, against all edits alike
-	trustSide   = 12 // one neighbour, against none
-	trustBoth   = 12 // two neighbours, against one on each side
-	rarest      = 2e-5
-	mostlyWrong = 0.9 // no edit is likelier than this anywhere
+	trustNone = 20 // no neighbour, against all edits alike
+	trustSide = 25 // one neighbour, against none
+	trustBoth = 25 // two neighbours, against one on each side
+
+	rarest      = 2e-5 // probability of an edit before anything is known
+	mostlyWrong = 0.9  // no edit is likelier than this anywhere
 )
 
 // smooth estimates probabilities from counts by interpolation: two neighbours,

@@ -32,7 +32,7 @@ const (
 	singleRounds = 4
 	ruleRounds   = 3
 	// countPower makes the hundredth sight of one slip tell less than the first.
-	countPower = 0.5
+	countPower = 0.25
 	// longestPair is the most letters a word may have to be fitted on; longer
 	// ones would need scaled probabilities.
 	longestPair = 40
@@ -61,8 +61,9 @@ func Fit(pairs []Pair, options FitOptions) (*Model, FitReport, error) {
 			return nil, f.report, err
 		}
 		for range ruleRounds {
-			n = f.round(n)
-			f.rules = f.occurrences.estimate(n.rules)
+			withRules := f.round(n)
+			n.rewritten = withRules.rewritten
+			f.rules = f.occurrences.estimate(withRules.rules)
 		}
 		f.report.Rules = len(f.rules)
 	}

@@ -63,7 +63,7 @@ func (o occurrences) probability(key ruleKey, n float64) float64 {
 type proposal struct{ sights, cost float64 }
 
 // propose finds rules in the best alignments under single-letter steps: runs of
-// steps with at least one slip that touch up to four letters on either side.
+// steps with at least two slips that touch up to four letters on either side.
 func (f *fitter) propose(n *counts) error {
 	m, err := f.draft(n).model()
 	if err != nil {
@@ -103,7 +103,7 @@ func collect(seen map[ruleKey]proposal, steps []Step, weight float64) {
 			if s.Kind != Kept {
 				slips++
 			}
-			if slips > 0 && intended > 0 && to > from {
+			if slips > 1 && intended > 0 {
 				eachPlace(from == 0, to == len(steps)-1, func(p Place) {
 					key.place = p
 					seen[key] = proposal{seen[key].sights + weight, seen[key].cost + weight*cost}
