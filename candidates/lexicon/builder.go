@@ -28,6 +28,14 @@ func (b *Builder) Add(form string, e Entry, spelled string) {
 	b.entries[form] = builderEntry{e, spelled}
 }
 
+// AddLexicon enters all forms of l as they are, to build a larger lexicon: house
+// words into a general one. Ids change.
+func (b *Builder) AddLexicon(l *Lexicon) {
+	for id := range l.forms {
+		b.Add(string(l.AppendForm(nil, id)), l.Entry(id), l.Canonical(id))
+	}
+}
+
 // Section writes the section. It fails on forms that are empty, longer than
 // MaxForm or not UTF-8, and on more than 16 million.
 func (b *Builder) Section() ([]byte, error) {

@@ -78,9 +78,10 @@ const priorSteps = 12
 
 // priorCost stores a log relative frequency. It rounds towards 0, so that the
 // stored prior is never below the true one: as a cost in a best-first search
-// it stays admissible.
+// it stays admissible. (A thousandth of a step is added, so that a prior read
+// from one lexicon is stored the same in another.)
 func priorCost(logp float64) byte {
-	return byte(min(max(math.Floor(-logp*priorSteps), 0), 255))
+	return byte(min(max(math.Floor(-logp*priorSteps+1e-3), 0), 255))
 }
 
 func prior(cost byte) float32 { return -float32(cost) / priorSteps }

@@ -124,6 +124,10 @@ func (e *Evidence) judge(form string) Verdict {
 	if v.Reason = shapeFault(form, &v.Count); v.Reason != "" {
 		return v
 	}
+	if e.listed[form+"'t"] != nil {
+		v.Reason = "the start of " + form + "'t"
+		return v
+	}
 	if v.Reason = e.enough(form, &v.Count); v.Reason == "" {
 		v.Reason = "too seldom"
 		return v

@@ -104,17 +104,11 @@ func (l *Lexicon) ID(form []byte) (uint32, bool) {
 	}
 	pos, id := first.target, first.skip
 	for _, b := range form[1:] {
-		nd := l.states.at(pos)
-		i := l.states.edge(&nd, b)
-		if i < 0 {
-			return 0, false
-		}
-		id += l.states.skip(&nd, i)
-		target, ok := l.states.target(&nd, i)
+		target, skip, ok := l.states.step(pos, b)
 		if !ok {
 			return 0, false
 		}
-		pos = target
+		pos, id = target, id+skip
 	}
 	return id, l.states.final(pos) && id < l.forms
 }
@@ -127,7 +121,7 @@ func (l *Lexicon) AppendForm(dst []byte, id uint32) []byte {
 	pos := uint32(0)
 	for range MaxForm {
 		nd := l.states.at(pos)
-		if nd.final && id == 0 || nd.n == 0 {
+		if nd.own == 1 && id == 0 || nd.n == 0 {
 			break
 		}
 		i := l.states.edgeOf(&nd, id)

@@ -12,7 +12,7 @@ const (
 	vowelEdit                      // a vowel for another, one lost or added: seperate
 	swapEdit                       // two neighbours swapped: recieve
 	firstEdit                      // the first letter
-	finalEdit                   // the last letter: another, or one more
+	finalEdit                      // the last letter: another, or one more
 	endingEdit                     // an inflection put on, taken off or changed: boat, boats
 	accentEdit                     // marks on letters: cafe, café
 	apostropheEdit                 // dont, don't

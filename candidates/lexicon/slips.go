@@ -15,7 +15,7 @@ var slipShares = [...]float64{
 	otherEdit:      0.05,
 	doublingEdit:   0.25,
 	vowelEdit:      0.20,
-	swapEdit:       0.10,
+	swapEdit:       0.20,
 	firstEdit:      0.01,
 	finalEdit:      0.02,
 	endingEdit:     0.001,
@@ -24,7 +24,8 @@ var slipShares = [...]float64{
 }
 
 // lengthFactor scales slipShares by the letters of the form: short forms have
-// many chance neighbours, and short words are seldom misspelled.
+// many chance neighbours, and short words are seldom misspelled (contractions,
+// which lose their apostrophe at any length, aside).
 func lengthFactor(letters int) float64 {
 	switch {
 	case letters <= 3:
@@ -32,9 +33,9 @@ func lengthFactor(letters int) float64 {
 	case letters == 4:
 		return 0.05
 	case letters == 5:
-		return 0.15
+		return 0.3
 	case letters == 6:
-		return 0.4
+		return 0.5
 	}
 	return 1
 }
@@ -47,13 +48,38 @@ const (
 	acronymFactor = 0.01 // abbreviations lie close together
 )
 
-// variantShare bounds the share for spelling variants, where both are right:
-// only a rare one ("noticable") is taken for a slip.
+// A technical word recurs where it stands, a slip does not: of a word of
+// burstLetters letters that stands burstRate times in a document, in
+// burstDocuments at least, slips are taken to make up less.
+const (
+	burstRate      = 1.7
+	burstDocuments = 8
+	burstLetters   = 6
+	burstFactor    = 0.1
+)
+
+func (n *Count) isBursty() bool {
+	return n.Documents >= burstDocuments && float64(n.Total()) >= burstRate*float64(n.Documents)
+}
+
+// variantShare bounds the share where habits of spelling differ and both are
+// right (judgment, containerise): only a rare variant is taken for a slip.
 const variantShare = 0.02
+
+func isFreeVariant(a, b string) bool {
+	return respelled(a, true) == respelled(b, true) || strings.ReplaceAll(a, "s", "z") == strings.ReplaceAll(b, "s", "z")
+}
 
 // slipShare is the share of the neighbour's count that form must reach.
 func slipShare(form string, n, neighbour *Count, kind editKind) float64 {
-	share := slipShares[kind] * lengthFactor(utf8.RuneCountInString(form))
+	letters := utf8.RuneCountInString(form)
+	share := slipShares[kind]
+	if kind != apostropheEdit {
+		share *= lengthFactor(letters)
+	}
+	if letters >= burstLetters && n.isBursty() {
+		share *= burstFactor
+	}
 	switch {
 	case n.isAcronym():
 		return share * acronymFactor
@@ -69,14 +95,14 @@ func slipShare(form string, n, neighbour *Count, kind editKind) float64 {
 // slip, and notes the neighbour that comes nearest to it.
 func (e *Evidence) weighNeighbours(v *Verdict) {
 	total := float64(v.Count.Total())
-	worst := 0.0
+	worst := 0.0 // slips over occurrences
 	weigh := func(other string, kind editKind) {
 		n := e.counts.Get(other)
 		if other == v.Form || n.Total() <= v.Count.Total() {
 			return
 		}
 		share := slipShare(v.Form, &v.Count, &n, kind)
-		if SpellingVariants(v.Form, other) {
+		if isFreeVariant(v.Form, other) {
 			share = min(share, variantShare)
 		}
 		if slips := share * float64(n.Total()) / total; slips > worst {
@@ -93,41 +119,40 @@ func (e *Evidence) weighNeighbours(v *Verdict) {
 	if marked := e.plain[plain]; marked != "" {
 		weigh(marked, accentEdit)
 	}
-	if worst > 1 {
+	if worst >= 1 {
 		v.In, v.Reason = false, "a slip of "+v.Neighbour
 	}
 }
 
 // closedClass are words that begin or end no compound written as one; particles
-// that do (up, on, out, over ...) are left out.
-const closedClass = " the an and or but of to from for with at as that this these those it is are was were be been " +
-	"has have had will would can could should may might every each all any some no not so if than then there " +
-	"their they them we us you your his her its our my he she which who what when where how why very too more " +
-	"most many much "
+// that do (up, on, out, over ...) are left out, as are short ones that other
+// words happen to end in (as, is, us, an).
+const closedClass = " the and but of to from for with that this these those was were been has have had will would can could " +
+	"should every each all than then there their they your very too more most many much what when where how why which who "
 
 func isClosedClass(word string) bool { return strings.Contains(closedClass, " "+word+" ") }
 
-// runTogether splits a form into a closed-class word and another frequent
-// word, in either order; "" and "" where it does not split so, or is a name.
+// runTogether splits a form into a closed-class word and another listed word
+// that is runTogetherFactor times as frequent as the form; an "a" at the start
+// ("alot") needs a hundred times, as it also begins words (atypical). It gives
+// "" and "" where the form does not split so, or is a name.
 func (e *Evidence) runTogether(form string, n *Count) (first, second string) {
 	if n.isName() || n.isAcronym() {
 		return "", ""
 	}
+	frequent := func(word string, factor uint32) bool {
+		return e.listed[word] != nil && e.total(word)/factor > n.Total()
+	}
 	for i := 2; i <= len(form)-2; i++ {
 		a, b := form[:i], form[i:]
-		other := a
-		switch {
-		case isClosedClass(a):
-			other = b
-		case !isClosedClass(b):
-			continue
-		}
-		if e.listed[other] != nil && e.total(other)/runTogetherFactor > n.Total() {
+		if isClosedClass(a) && frequent(b, runTogetherFactor) || isClosedClass(b) && frequent(a, runTogetherFactor) {
 			return a, b
 		}
+	}
+	if rest, ok := strings.CutPrefix(form, "a"); ok && frequent(rest, 100) {
+		return "a", rest
 	}
 	return "", ""
 }
 
-// runTogetherFactor is how much more frequent than the whole the other word must be.
 const runTogetherFactor = 20

@@ -39,8 +39,8 @@ var respellings = []respelling{
 		right: []string{"$", "s$", "ed$", "ing$", "ings$", "er", "ful", "less", "abl", "ation", "ite", "hood", "ly$", "y$", "ism", "ist", "al", "iz"},
 	},
 	// centre, fibre, metre, theatre, kilometres, centring
-	{from: "re", to: "er", stem: 2, left: "tbhv", right: []string{"$", "s$", "d$"}},
-	{from: "r", to: "er", stem: 3, left: "t", right: []string{"ing$"}},
+	{from: "re", to: "er", stem: 2, left: "tbhv", right: []string{"$", "s$"}},
+	{from: "r", to: "er", stem: 3, left: "t", right: []string{"ing$", "ed$"}},
 	// travelled, jeweller, marvellous; worshipped; benefitted; focussed
 	{
 		from: "ll", to: "l", stem: 2, left: "aeiou", unsure: true,

@@ -29,19 +29,17 @@ type Edges struct {
 	Target Node   // where it leads
 	Skip   uint32 // forms of the node that sort before those of the edge
 
-	l     *Lexicon
-	nd    node
-	i     int
-	after uint32 // Skip of the next edge
-	count uint32
+	states automaton
+	nd     node
+	i      uint32
+	after  uint32 // Skip of the next edge
+	count  uint32 // of the node
 }
 
 // Edges gives an iterator that stands before the first edge of n.
 func (l *Lexicon) Edges(n Node) Edges {
 	nd := l.states.at(n.pos)
-	e := Edges{l: l, nd: nd, count: n.count}
-	e.after = min(l.states.skip(&nd, 0), n.count)
-	return e
+	return Edges{states: l.states, nd: nd, after: min(uint32(nd.own), n.count), count: n.count}
 }
 
 // Next moves to the next edge; it is false behind the last.
@@ -51,10 +49,10 @@ func (e *Edges) Next() bool {
 		e.i++
 		e.Skip, e.after = e.after, e.count
 		if e.i < e.nd.n {
-			e.after = min(max(e.l.states.skip(&e.nd, e.i), e.Skip), e.count)
+			e.after = min(max(e.states.skip(&e.nd, e.i), e.Skip), e.count)
 		}
-		if target, ok := e.l.states.target(&e.nd, i); ok {
-			e.Label = e.l.states[e.nd.labels+i]
+		if target, ok := e.states.target(&e.nd, i); ok {
+			e.Label = e.states[e.nd.labels+i]
 			e.Target = Node{target, e.after - e.Skip}
 			return true
 		}
@@ -65,8 +63,8 @@ func (e *Edges) Next() bool {
 // Step follows the one edge of n with the label.
 func (l *Lexicon) Step(n Node, label byte) (target Node, skip uint32, ok bool) {
 	nd := l.states.at(n.pos)
-	i := l.states.edge(&nd, label)
-	if i < 0 {
+	i, ok := l.states.edge(&nd, label)
+	if !ok {
 		return Node{}, 0, false
 	}
 	skip = min(l.states.skip(&nd, i), n.count)
