@@ -25,8 +25,9 @@ are the same byte for byte.
 
 Texts are plain: a paragraph a line, blank lines between documents; every tenth
 document is left out, to measure on. Word lists have a word a line. Pairs are
-lines of observed, intended and count, parted by tabs. Homophones are lines of
-words parted by commas.`,
+lines of observed, intended and count, parted by tabs. Edits are lines of
+observed and intended letters and a count. Homophones are lines of words parted
+by commas.`,
 		examples: `
 			foulcase model build --text testdata/tiny/corpus.txt --words en-GB=testdata/tiny/words-en-GB.txt --words en-US=testdata/tiny/words-en-US.txt --pairs testdata/tiny/pairs.tsv -o base.fcm`,
 		declare: declareModelBuild,
@@ -38,6 +39,7 @@ type modelParts struct {
 	texts      []string // plain text, files or folders
 	words      []wordList
 	pairs      []string // tab-separated
+	edits      string   // counts of single-letter edits
 	homophones string
 	from       []string // model files whose sections are taken over, later ones first
 	judgement  string   // JSON
@@ -56,6 +58,7 @@ func declareModelBuild(fs *pflag.FlagSet) action {
 	fs.StringArrayVar(&p.texts, "text", nil, "`FILE` or folder of text to count words in; may be repeated")
 	fs.Var((*wordLists)(&p.words), "words", "word list of a variety: en-US=FILE, en-GB=FILE or any=FILE; may be repeated")
 	fs.StringArrayVar(&p.pairs, "pairs", nil, "`FILE` of corrections to learn the channel from; may be repeated")
+	fs.StringVar(&p.edits, "edits", "", "`FILE` of counts of single-letter edits to smooth the channel with")
 	fs.StringVar(&p.homophones, "homophones", "", "`FILE` of words that sound alike")
 	fs.StringArrayVar(&p.from, "from", nil, "model `FILE` to take sections from; of several, the last that has one gives it")
 	fs.StringVar(&p.judgement, "judgement", "", "`FILE` of weights and thresholds, JSON")

@@ -1,0 +1,168 @@
+package foulcase
+
+import (
+	"slices"
+
+	"example.org/foulcase/candidates/lexicon"
+	"example.org/foulcase/internal/text"
+)
+
+// change is one way to read some slots of a sentence otherwise than as typed.
+type change struct {
+	from, to int // slots it replaces
+	kind     Kind
+	cost     float64 // channel cost, nats
+	score    float64 // log weight beside the language model, nats
+	lo, hi   int     // its words in judge.words
+	house    string  // the form, when it is a house word
+	gain     float64 // what the language model gains by it in the typed sentence, nats
+	edge     int     // in the lattice
+	p        float64 // posterior
+}
+
+// propose collects the changes of the sentence that are worth weighing.
+func (j *judge) propose() {
+	j.changes, j.words = j.changes[:0], j.words[:0]
+	for i := range j.slots {
+		sl := &j.slots[i]
+		switch sl.status {
+		case known:
+			j.proposeConfusables(i)
+		case unknown, foreign:
+			j.proposeCandidates(i)
+		}
+		if i+1 < len(j.slots) && j.apart(i) {
+			j.proposeJoin(i)
+			j.proposeRepeat(i)
+		}
+	}
+}
+
+// apart reports whether slots i and i+1 are two words with nothing but white
+// space between them.
+func (j *judge) apart(i int) bool {
+	a, b := &j.slots[i], &j.slots[i+1]
+	return a.status != closed && b.token.Kind == text.Word && !b.token.Glued &&
+		b.place == a.place+1
+}
+
+// proposeConfusables weighs the words that a known word is taken for.
+func (j *judge) proposeConfusables(i int) {
+	sl := &j.slots[i]
+	if sl.token.Case == text.Upper && !j.shouting {
+		return
+	}
+	rest := j.ids[sl.from+1 : sl.to]
+	for n := j.e.confusables.Lookup(sl.id); n.Next(); {
+		if j.spelt(n.ID) {
+			j.weigh(change{from: i, to: i + 1, kind: Realword, cost: float64(n.Cost)}, n.ID, rest)
+		}
+	}
+}
+
+// proposeCandidates weighs what a form that is no word may stand for.
+func (j *judge) proposeCandidates(i int) {
+	sl := &j.slots[i]
+	for _, c := range j.finder.find(sl.token.Norm) {
+		ch := change{from: i, to: i + 1, kind: Nonword, cost: float64(c.cost), house: c.house}
+		if c.spaced {
+			ch.kind = Runon
+		}
+		lo := len(j.words)
+		j.words = append(j.words, c.words()...)
+		j.consider(ch, lo, nil)
+	}
+}
+
+// proposeJoin weighs the reading of two words as one.
+func (j *judge) proposeJoin(i int) {
+	a, b := &j.slots[i], &j.slots[i+1]
+	if a.to-a.from != 1 {
+		return
+	}
+	if c, ok := j.finder.join(a.token.Norm, b.token.Norm); ok {
+		j.weigh(change{from: i, to: i + 2, kind: Split, cost: float64(c.Channel)}, c.ID, nil)
+	}
+}
+
+// proposeRepeat weighs the reading of a word typed twice as typed once.
+func (j *judge) proposeRepeat(i int) {
+	a, b := &j.slots[i], &j.slots[i+1]
+	if string(a.token.Norm) == string(b.token.Norm) {
+		lo := len(j.words)
+		j.words = append(j.words, j.ids[a.from:a.to]...)
+		j.consider(change{from: i, to: i + 2, kind: Repeat}, lo, a)
+	}
+}
+
+// weigh considers the change to one word and what follows it in the slot.
+func (j *judge) weigh(c change, id uint32, rest []uint32) {
+	lo := len(j.words)
+	j.words = append(append(j.words, id), rest...)
+	j.consider(c, lo, nil)
+}
+
+// consider keeps the change to judge.words[lo:] if it may come within reach of
+// the typed reading, and takes the words back if not. The words of a repeat
+// keep the score of the slot they came from.
+func (j *judge) consider(c change, lo int, kept *slot) {
+	w := j.e.judgement
+	typed := 0.0
+	for _, sl := range j.slots[c.from:c.to] {
+		typed += sl.score
+	}
+	c.score = w.Slip.Of(c.kind) - w.Channel*c.cost + j.penalties(&c, j.words[lo:])
+	if kept != nil {
+		c.score += kept.score
+	}
+	floor := (typed - c.score - j.hopeless) / w.LanguageModel
+	c.gain = j.gain(j.slots[c.from].from, j.slots[c.to-1].to, j.words[lo:], floor)
+	if c.gain < floor && j.slots[c.from].status == known {
+		j.words = j.words[:lo]
+		return
+	}
+	c.lo, c.hi = lo, len(j.words)
+	j.changes = append(j.changes, c)
+}
+
+// penalties is the evidence about a change that neither model holds: the
+// document's own use of the word, capitals, inflection.
+func (j *judge) penalties(c *change, words []uint32) float64 {
+	w, lex := j.e.judgement, j.e.lexicon
+	if c.house != "" {
+		return -w.House
+	}
+	sl, sum := &j.slots[c.from], 0.0
+	if int(words[0]) < lex.Len() {
+		e := lex.Entry(words[0])
+		sum += w.Recurrence * j.recurring.word(words[0], float64(e.Prior), 0)
+		if sl.token.Case == text.Title && c.from > 0 && e.Cases&lexicon.TitleCase == 0 {
+			sum -= w.Capital
+		}
+	}
+	if c.kind == Realword && j.inflections(sl.id, words[0]) {
+		sum -= w.Inflection
+	}
+	return sum
+}
+
+// inflections reports whether two words differ in no more than an inflection's
+// ending.
+func (j *judge) inflections(a, b uint32) bool {
+	lex := j.e.lexicon
+	j.form = lex.AppendForm(j.form[:0], a)
+	n := len(j.form)
+	j.form = lex.AppendForm(j.form, b)
+	x, y := j.form[:n], j.form[n:]
+	same := 0
+	for same < min(len(x), len(y)) && x[same] == y[same] {
+		same++
+	}
+	return same >= 3 && isEnding(x[same:]) && isEnding(y[same:])
+}
+
+// endings are the inflections of English nouns and verbs, as they remain
+// after the letters two forms share ("carr-y", "carr-ies").
+var endings = []string{"", "s", "es", "d", "ed", "ing", "e", "y", "ies", "ied", "'s"}
+
+func isEnding(tail []byte) bool { return slices.Contains(endings, string(tail)) }

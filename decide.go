@@ -1,0 +1,157 @@
+package foulcase
+
+import (
+	"bytes"
+	"cmp"
+	"slices"
+	"strings"
+
+	"example.org/foulcase/candidates/lexicon"
+	"example.org/foulcase/internal/text"
+	"example.org/foulcase/lm/lattice"
+)
+
+const (
+	// maxCorrections is how many corrections a mark offers.
+	maxCorrections = 10
+	// leastShare is the least posterior of a correction beyond the first.
+	leastShare = 1e-4
+)
+
+// finding is a group of changes to the same slots, with its place in the block.
+type finding struct {
+	from, to int // slots
+	kind     Kind
+	p        float64  // that the typed reading is wrong
+	changes  []change // best first
+}
+
+// findings weighs the sentence and returns what may be wrong in it, in order,
+// without regard to thresholds. The result is the caller's.
+func (j *judge) findings(s text.Sentence) ([]finding, error) {
+	j.read(s)
+	j.propose()
+	if len(j.changes) == 0 {
+		return nil, nil
+	}
+	if err := j.weighTogether(); err != nil {
+		return nil, err
+	}
+	return j.group(), nil
+}
+
+// weighTogether builds the lattice around the changes and gives each its
+// posterior. Outside [first, last) all readings agree, so it is left out.
+func (j *judge) weighTogether() error {
+	first, last := len(j.slots), 0
+	for _, c := range j.changes {
+		first, last = min(first, c.from), max(last, c.to)
+	}
+	ids := len(j.ids)
+	if last < len(j.slots) { // the context that the last change reaches into
+		ids = min(ids, j.slots[last].from+j.e.lm.Order()-1)
+	}
+	tail := j.ids[j.slots[last-1].to:ids]
+
+	nodes := last - first
+	j.lattice.Reset(nodes + len(tail))
+	for i := first; i < last; i++ {
+		sl := &j.slots[i]
+		j.addEdge(i-first, i+1-first, j.ids[sl.from:sl.to], sl.score)
+	}
+	for i := range tail {
+		j.addEdge(nodes+i, nodes+i+1, tail[i:i+1], 0)
+	}
+	for i := range j.changes {
+		c := &j.changes[i]
+		c.edge = j.addEdge(c.from-first, c.to-first, j.words[c.lo:c.hi], c.score)
+	}
+	if err := j.lattice.Run(j.e.lm, j.states[j.slots[first].from], j.e.judgement.LanguageModel); err != nil {
+		return err
+	}
+	for i := range j.changes {
+		j.changes[i].p = j.lattice.Posterior(j.changes[i].edge)
+	}
+	return nil
+}
+
+func (j *judge) addEdge(from, to int, words []uint32, score float64) int {
+	return j.lattice.Add(lattice.Edge{From: from, To: to, Words: words, Score: score})
+}
+
+// group collects the changes of the same slots, and of overlapping groups
+// keeps the likelier.
+func (j *judge) group() []finding {
+	slices.SortStableFunc(j.changes, func(a, b change) int {
+		return cmp.Or(cmp.Compare(a.from, b.from), cmp.Compare(a.to, b.to), cmp.Compare(b.p, a.p))
+	})
+	var found []finding
+	for i := 0; i < len(j.changes); {
+		k := i
+		p := 0.0
+		for ; k < len(j.changes) && j.changes[k].from == j.changes[i].from && j.changes[k].to == j.changes[i].to; k++ {
+			p += j.changes[k].p
+		}
+		f := finding{j.changes[i].from, j.changes[i].to, j.changes[i].kind, min(p, 1), j.changes[i:k]}
+		i = k
+		if n := len(found); n > 0 && found[n-1].to > f.from {
+			if found[n-1].p < f.p {
+				found[n-1] = f
+			}
+			continue
+		}
+		found = append(found, f)
+	}
+	return found
+}
+
+// corrections writes out the changes of a finding as the text would have them.
+func (j *judge) corrections(f finding, block []byte) []Correction {
+	out := make([]Correction, 0, min(len(f.changes), maxCorrections))
+	observed := string(block[j.slots[f.from].token.Start:j.slots[f.to-1].token.End])
+	for i, c := range f.changes {
+		if len(out) == maxCorrections || i > 0 && c.p < leastShare {
+			break
+		}
+		written := j.write(&c, block)
+		same := func(o Correction) bool { return o.Text == written }
+		if written != observed && !slices.ContainsFunc(out, same) {
+			out = append(out, Correction{written, c.p})
+		}
+	}
+	return out
+}
+
+// write spells a change with the capitals and the apostrophe of what it
+// replaces.
+func (j *judge) write(c *change, block []byte) string {
+	first := j.slots[c.from].token
+	if c.house != "" {
+		return text.ApplyCase(first.Case, c.house)
+	}
+	written := spell(j.e.lexicon, j.words[c.lo:c.hi])
+	if bytes.ContainsRune(block[first.Start:first.End], '’') {
+		written = strings.ReplaceAll(written, "'", "’")
+	}
+	return text.ApplyCase(first.Case, written)
+}
+
+// spell joins words with spaces, clitics and hyphens without.
+func spell(lex *lexicon.Lexicon, words []uint32) string {
+	var b strings.Builder
+	glue := true
+	for _, id := range words {
+		if id == lex.ClassID(lexicon.Hyphen) {
+			b.WriteByte('-')
+			glue = true
+			continue
+		}
+		form := lex.Canonical(id)
+		if !glue && !strings.HasPrefix(form, "'") {
+			b.WriteByte(' ')
+		}
+		b.WriteString(form)
+		glue = false
+	}
+	return b.String()
+}

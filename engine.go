@@ -1,0 +1,186 @@
+// Package foulcase finds misspellings in running text, those that are words
+// included, and proposes what was meant.
+//
+// An Engine is opened from one model file: a lexicon, a channel (how writers
+// mis-write), an n-gram language model and the judgement that weighs them.
+// Engine.Proof reads a document and yields its marks, Engine.Rank the
+// candidates for one word, Engine.Ledger the parts of every score in a
+// sentence. Nothing is written to the document, nothing is fetched, and the
+// model's bytes are used where they lie.
+//
+// The embedded English model is package lm/english; a program that brings its
+// own model does not link it.
+package foulcase
+
+import (
+	"fmt"
+	"strings"
+	"sync"
+
+	"example.org/foulcase/candidates"
+	"example.org/foulcase/candidates/lexicon"
+	"example.org/foulcase/channel"
+	"example.org/foulcase/internal/modelfile"
+	"example.org/foulcase/internal/text"
+	"example.org/foulcase/lm"
+)
+
+// Errors of Open and OpenFile, for errors.Is.
+var (
+	ErrForeign = modelfile.ErrForeign // not a model file
+	ErrNewer   = modelfile.ErrNewer   // made for a later version of foulcase
+	ErrDamaged = modelfile.ErrDamaged // cut or altered
+)
+
+// Names of the sections of a model file.
+const (
+	SectionCard        = "card"        // the model card, UTF-8 text
+	SectionLexicon     = "lexicon"     // candidates/lexicon
+	SectionChannel     = "channel"     // channel
+	SectionLM          = "lm"          // lm, over lexicon ids
+	SectionMirror      = "mirror"      // candidates: the lexicon from the end of its words
+	SectionSpelling    = "spelling"    // lm, over characters: the price of a new word
+	SectionConfusables = "confusables" // candidates: words taken for one another
+	SectionJudgement   = "judgement"   // Judgement, JSON
+)
+
+// Engine is an opened model. It is safe for concurrent use.
+type Engine struct {
+	file        *modelfile.File
+	lexicon     *lexicon.Lexicon
+	channel     *channel.Model
+	lm          *lm.Model
+	spelling    *lm.Spelling
+	mirror      *candidates.Mirror
+	confusables *candidates.Confusables
+	judgement   *Judgement
+	judges      sync.Pool // *judge
+}
+
+// Open opens a model in place. The caller must not change the bytes while the
+// Engine is in use. Every section is checksummed first, so a damaged model is
+// an error that says so.
+func Open(model []byte) (*Engine, error) {
+	file, err := modelfile.Open(model)
+	if err != nil {
+		return nil, err
+	}
+	return newEngine(file)
+}
+
+// OpenFile opens the model at path, memory-mapped where the platform can.
+// Close releases it.
+func OpenFile(path string) (*Engine, error) {
+	file, err := modelfile.OpenPath(path)
+	if err != nil {
+		return nil, err
+	}
+	e, err := newEngine(file)
+	if err != nil {
+		file.Close()
+		return nil, fmt.Errorf("%s: %w", path, err)
+	}
+	return e, nil
+}
+
+func newEngine(file *modelfile.File) (*Engine, error) {
+	e := &Engine{file: file}
+	parts := []struct {
+		name string
+		open func([]byte) error
+	}{
+		{SectionLexicon, opener(&e.lexicon, lexicon.Open)},
+		{SectionChannel, opener(&e.channel, channel.Open)},
+		{SectionLM, opener(&e.lm, lm.Open)},
+		{SectionSpelling, opener(&e.spelling, lm.OpenSpelling)},
+		{SectionMirror, opener(&e.mirror, candidates.OpenMirror)},
+		{SectionConfusables, opener(&e.confusables, candidates.OpenConfusables)},
+		{SectionJudgement, opener(&e.judgement, parseJudgement)},
+	}
+	for _, p := range parts {
+		body, ok := file.Section(p.name)
+		if !ok {
+			return nil, fmt.Errorf("model has no section %q; complete it with `foulcase model build`", p.name)
+		}
+		if err := p.open(body); err != nil {
+			return nil, err
+		}
+	}
+	if got, want := e.lm.Vocabulary(), e.lexicon.Vocabulary(); got != want {
+		return nil, fmt.Errorf("language model has %d words and the lexicon %d: they were not built together; train the one with the other", got, want)
+	}
+	if got, want := e.confusables.Words(), e.lexicon.Len(); got != want {
+		return nil, fmt.Errorf("table of confusables has %d words and the lexicon %d: they were not built together; rebuild the model", got, want)
+	}
+	e.judges.New = func() any { return newJudge(e) }
+	return e, nil
+}
+
+// opener makes of a typed open function one that stores what it opened.
+func opener[T any](dst *T, open func([]byte) (T, error)) func([]byte) error {
+	return func(body []byte) (err error) {
+		*dst, err = open(body)
+		return err
+	}
+}
+
+// Close releases a model opened by OpenFile; the Engine must not be used
+// afterwards.
+func (e *Engine) Close() error { return e.file.Close() }
+
+// Hash identifies the model: 16 hexadecimal digits of its SHA-256.
+func (e *Engine) Hash() string { return e.file.Hash() }
+
+// Card returns the model card: sources, licences, recipe and figures.
+func (e *Engine) Card() string {
+	card, _ := e.file.Section(SectionCard)
+	return string(card)
+}
+
+// Section is one part of a model file.
+type Section struct {
+	Name    string `json:"name"`
+	Bytes   int    `json:"bytes"`
+	Summary string `json:"summary"`
+}
+
+// Describe lists the parts of the model in file order.
+func (e *Engine) Describe() []Section {
+	summaries := map[string]string{
+		SectionLexicon: fmt.Sprintf("%d forms", e.lexicon.Len()),
+		SectionLM:      describeNGrams(e.lm),
+	}
+	var parts []Section
+	for _, name := range e.file.Names() {
+		body, _ := e.file.Section(name)
+		parts = append(parts, Section{name, len(body), summaries[name]})
+	}
+	return parts
+}
+
+func describeNGrams(m *lm.Model) string {
+	var counts []string
+	for k := range m.Order() {
+		counts = append(counts, fmt.Sprint(m.Count(k+1)))
+	}
+	return "n-grams by order: " + strings.Join(counts, ", ")
+}
+
+// Known reports whether the lexicon has the form, its case aside.
+func (e *Engine) Known(word string) bool {
+	_, ok := e.lexicon.ID(text.Fold(nil, []byte(word)))
+	return ok
+}
+
+// Formats names the document formats that Options.Format takes.
+func Formats() []string {
+	var names []string
+	for _, f := range text.Formats() {
+		names = append(names, string(f))
+	}
+	return names
+}
+
+// FormatOf returns the format that a path's extension stands for, "plain" if
+// none.
+func FormatOf(path string) string { return string(text.FormatOf(path)) }

@@ -1,0 +1,126 @@
+package foulcase
+
+import (
+	"example.org/foulcase/candidates"
+	"example.org/foulcase/candidates/lexicon"
+	"example.org/foulcase/lm/lattice"
+)
+
+const (
+	// depth is how many candidates of a form that is no word are weighed.
+	depth = 12
+	// maxScore is the weighted cost, nats, beyond which a word is not looked for.
+	maxScore = 60
+	// maxCached bounds the remembered searches; all are forgotten when it is
+	// reached.
+	maxCached = 1 << 13
+)
+
+// proposal is one reading of a form by itself, before any context.
+type proposal struct {
+	ids    [lattice.MaxWords]uint32
+	n      int
+	house  string  // the form, when it is a house word
+	cost   float32 // channel cost, nats
+	prior  float64 // log relative frequency, nats
+	spaced bool    // a run-on: more words than were typed
+}
+
+func (p *proposal) words() []uint32 { return p.ids[:p.n] }
+
+// finder gives the readings of forms, by search or from the model's table, and
+// remembers what it searched for. One goroutine uses it at a time.
+type finder struct {
+	e        *Engine
+	searcher *candidates.Searcher
+	house    *House
+	variety  Variety
+	cache    map[string][]proposal // of find
+	found    []candidates.Candidate
+	runons   []candidates.RunOn
+	form     []byte
+}
+
+func newFinder(e *Engine) finder {
+	f := finder{e: e, searcher: e.newSearcher(), cache: make(map[string][]proposal)}
+	return f
+}
+
+// newSearcher returns a searcher that orders by the weights of isolated words.
+func (e *Engine) newSearcher() *candidates.Searcher {
+	s := candidates.NewSearcher(e.lexicon, e.channel, candidates.Weights{
+		Channel: float32(e.judgement.RankChannel),
+		Prior:   float32(e.judgement.RankPrior),
+	})
+	s.SetMirror(e.mirror)
+	return s
+}
+
+// hold prepares the finder for the words of a variety and a house.
+func (f *finder) hold(v Variety, h *House) {
+	if v == f.variety && h == f.house {
+		return
+	}
+	f.variety, f.house = v, h
+	clear(f.cache)
+	f.searcher.SetVariety(v.bits())
+	if h == nil {
+		f.searcher.SetHouse(nil)
+	} else {
+		f.searcher.SetHouse(h.words)
+	}
+}
+
+// find gives the readings of a form that is no word, best first by themselves.
+// The slice is the finder's and must not be changed.
+func (f *finder) find(form []byte) []proposal {
+	if p, ok := f.cache[string(form)]; ok {
+		return p
+	}
+	if len(f.cache) >= maxCached {
+		clear(f.cache)
+	}
+	p := f.search(form, depth)
+	f.cache[string(form)] = p
+	return p
+}
+
+// search finds words, possessives and run-ons alike: at most k of each.
+func (f *finder) search(form []byte, k int) []proposal {
+	var out []proposal
+	f.found = f.searcher.Search(f.found[:0], form, k, maxScore)
+	for _, c := range f.found {
+		out = append(out, f.propose(c))
+	}
+	if clitic, ok := f.e.lexicon.ID([]byte("'s")); ok {
+		f.found = f.searcher.Possessives(f.found[:0], form, k, maxScore)
+		for _, c := range f.found {
+			p := f.propose(c)
+			p.ids[p.n] = clitic
+			p.n++
+			out = append(out, p)
+		}
+	}
+	f.runons = f.searcher.RunOns(f.runons[:0], form, k/2, maxScore)
+	for _, r := range f.runons {
+		p := proposal{n: r.N, cost: r.Channel, prior: float64(r.Prior), spaced: true}
+		copy(p.ids[:], r.IDs[:r.N])
+		out = append(out, p)
+	}
+	return out
+}
+
+func (f *finder) propose(c candidates.Candidate) proposal {
+	p := proposal{n: 1, cost: c.Channel, prior: float64(c.Prior)}
+	p.ids[0] = c.ID
+	if c.House {
+		p.house = f.house.words.Canonical(c.ID)
+		p.ids[0] = f.e.lexicon.ClassID(lexicon.Name)
+	}
+	return p
+}
+
+// join reads two forms as one word.
+func (f *finder) join(first, second []byte) (candidates.Candidate, bool) {
+	return f.searcher.Join(first, second)
+}

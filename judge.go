@@ -1,0 +1,192 @@
+package foulcase
+
+import (
+	"example.org/foulcase/candidates/lexicon"
+	"example.org/foulcase/internal/text"
+	"example.org/foulcase/lm"
+	"example.org/foulcase/lm/lattice"
+)
+
+// Bounds of the lattice. They trade exactness for time; development text shows
+// no difference beyond them.
+const (
+	latticeStates = 64  // language-model states kept at a node
+	latticeMargin = 14  // nats below a node's best at which a state is dropped
+	hopeless      = 8.0 // nats below the typed reading at which a change is not weighed
+)
+
+// judge weighs one sentence at a time. It owns every buffer that takes, so
+// after warm-up a sentence costs no allocation until something is found in
+// it. One goroutine uses it at a time; Engine.judges keeps idle ones.
+type judge struct {
+	e       *Engine
+	house   *House
+	variety Variety
+
+	segmenter text.Segmenter
+	finder    finder
+	lattice   *lattice.Lattice[lm.State]
+	recurring recurrence
+
+	slots  []slot
+	ids    []uint32   // the typed words of all slots, then </s>
+	states []lm.State // before each of ids
+	logp   []float32  // of each of ids, nats
+
+	changes []change
+	words   []uint32 // what the changes put in, end to end
+	form    []byte   // scratch
+	// shouting: the sentence is in capitals, so capitals say nothing of a word.
+	shouting bool
+	hopeless float64 // see the constant; the ledger lifts it
+}
+
+// slot is one token of a sentence as the language model reads it.
+type slot struct {
+	token    text.Token
+	place    int // its token's place in the sentence
+	from, to int // its words in judge.ids
+	id       uint32
+	status   status
+	score    float64 // what the typed reading scores beside the language model
+}
+
+// status is what the lexicon knows of a slot.
+type status uint8
+
+const (
+	closed  status = iota // number, punctuation, code: nothing to change
+	known                 // in the lexicon; slot.id is its word, or its stem
+	unknown               // a form the lexicon lacks
+	foreign               // a word, but not in the variety asked for
+)
+
+func newJudge(e *Engine) *judge {
+	j := &judge{
+		finder:   newFinder(e),
+		e:        e,
+		hopeless: hopeless,
+		lattice:  lattice.New[lm.State](lattice.Options{States: latticeStates, Margin: latticeMargin}),
+	}
+	j.recurring.init(e.lexicon.Len())
+	return j
+}
+
+// take hands out an idle judge for a document under the given options.
+func (e *Engine) take(o Options) *judge {
+	j := e.judges.Get().(*judge)
+	j.variety = o.Variety
+	j.house = o.House
+	j.finder.hold(o.Variety, o.House)
+	j.recurring.reset()
+	return j
+}
+
+func (e *Engine) give(j *judge) { e.judges.Put(j) }
+
+// read lays the sentence out in slots and scores it as it was typed.
+func (j *judge) read(s text.Sentence) {
+	lex := j.e.lexicon
+	j.slots, j.ids = j.slots[:0], j.ids[:0]
+	j.shouting = inCapitals(s.Tokens)
+	for place, t := range s.Tokens {
+		from := len(j.ids)
+		j.ids = lex.Read(j.ids, t)
+		if len(j.ids) == from {
+			continue
+		}
+		sl := slot{token: t, place: place, from: from, to: len(j.ids)}
+		if t.Kind == text.Word {
+			j.classify(&sl)
+		}
+		j.slots = append(j.slots, sl)
+	}
+	j.ids = append(j.ids, lex.ClassID(lexicon.End))
+	j.scoreTyped()
+}
+
+// classify settles what the lexicon and the house know of a word, and what
+// keeping it as typed scores.
+func (j *judge) classify(sl *slot) {
+	e, form := j.e, sl.token.Norm
+	first := j.ids[sl.from]
+	switch {
+	case j.house.has(form):
+		sl.status = closed
+	case int(first) >= e.lexicon.Len():
+		sl.status = unknown
+		sl.score = -e.judgement.NewWord*float64(e.spelling.Price(form)) + e.judgement.Recurrence*j.recurring.form(form)
+	case !j.spelt(first):
+		sl.status, sl.id = foreign, first
+		sl.score = -e.judgement.Variety
+	default:
+		sl.status, sl.id = known, first
+		sl.score = e.judgement.Recurrence * j.recurring.word(first, float64(e.lexicon.Prior(first)), 1)
+	}
+}
+
+// inCapitals reports whether most words of a sentence are written in capitals
+// throughout.
+func inCapitals(tokens []text.Token) bool {
+	upper, words := 0, 0
+	for _, t := range tokens {
+		if t.Kind == text.Word {
+			words++
+			if t.Case == text.Upper {
+				upper++
+			}
+		}
+	}
+	return words > 1 && 2*upper > words
+}
+
+// spelt reports whether the variety asked for has the word.
+func (j *judge) spelt(id uint32) bool {
+	v := j.variety.bits()
+	return v == 0 || j.e.lexicon.Entry(id).Variety&v != 0
+}
+
+// scoreTyped runs the language model over the sentence as it stands.
+func (j *judge) scoreTyped() {
+	j.states, j.logp = j.states[:0], j.logp[:0]
+	state := j.e.lm.Begin(j.e.lexicon.ClassID(lexicon.Begin))
+	for _, id := range j.ids {
+		p, next := j.e.lm.Score(state, id)
+		j.states, j.logp = append(j.states, state), append(j.logp, p)
+		state = next
+	}
+}
+
+// gain is how much better, in nats of the language model, the sentence reads
+// with words in place of the typed ids [from, to). It stops where the contexts
+// fall together again. A gain that must stay under floor may be reported as
+// any number under it.
+func (j *judge) gain(from, to int, words []uint32, floor float64) float64 {
+	m := j.e.lm
+	state := j.states[from]
+	sum := 0.0
+	for i := from; i < to; i++ {
+		sum -= float64(j.logp[i])
+	}
+	for _, w := range words {
+		p, next := m.Score(state, w)
+		sum += float64(p)
+		state = next
+	}
+	// What follows can gain no more than its typed cost, for log p <= 0.
+	reach := min(len(j.ids), to+m.Order()-1)
+	hope := 0.0
+	for i := to; i < reach; i++ {
+		hope -= float64(j.logp[i])
+	}
+	for i := to; i < reach && state != j.states[i]; i++ {
+		if sum+hope < floor {
+			return sum + hope
+		}
+		p, next := m.Score(state, j.ids[i])
+		sum += float64(p) - float64(j.logp[i])
+		hope += float64(j.logp[i])
+		state = next
+	}
+	return sum
+}

@@ -1,0 +1,135 @@
+package foulcase
+
+import (
+	"bytes"
+	"encoding/json"
+	"fmt"
+	"math"
+	"slices"
+)
+
+// Judgement is the handful of numbers between the models and a decision. All
+// were fitted on development text; none is a matter of taste. Amounts are nats
+// unless said otherwise.
+//
+// A reading of a sentence scores
+//
+//	LanguageModel × log P(words) + Σ over changed words (Slip[kind] − Channel × cost − penalties)
+//	+ Σ over unknown words kept (−NewWord × character price + evidence)
+//
+// and the posterior of a change is the share of all readings' weight that
+// passes through it.
+type Judgement struct {
+	LanguageModel float64 `json:"language_model"` // weight of the n-gram model's log-probability
+	Channel       float64 `json:"channel"`        // weight of the channel's cost
+	NewWord       float64 `json:"new_word"`       // weight of the character model's price of an unknown word
+
+	// Slip is the log prior odds that a word is miswritten in each kind of way.
+	Slip KindTable `json:"slip"`
+
+	Recurrence float64 `json:"recurrence"` // for each doubling of a form's count in the document, in favour of keeping it
+	Capital    float64 `json:"capital"`    // against changing a word capitalised inside a sentence into one that is not
+	Inflection float64 `json:"inflection"` // against changing a word into another inflection of it
+	House      float64 `json:"house"`      // price of a house word as a candidate, the language model's class price aside
+	Variety    float64 `json:"variety"`    // against a form that the asked-for variety does not spell so
+
+	// RankChannel and RankPrior weigh channel cost against unigram prior where
+	// there is no context.
+	RankChannel float64 `json:"rank_channel"`
+	RankPrior   float64 `json:"rank_prior"`
+
+	// Budgets gives, by false alarms a 1,000 words of good text (ascending), the
+	// least probability at which a finding of each kind is reported.
+	Budgets []BudgetRow `json:"budgets"`
+	// DefaultBudget is the budget of queries and marks together when none is asked for.
+	DefaultBudget float64 `json:"default_budget"`
+	// MarkShare is the part of the budget that marks alone may use.
+	MarkShare float64 `json:"mark_share"`
+}
+
+// KindTable holds a number for each kind.
+type KindTable struct {
+	Nonword  float64 `json:"nonword"`
+	Realword float64 `json:"realword"`
+	Runon    float64 `json:"runon"`
+	Split    float64 `json:"split"`
+	Repeat   float64 `json:"repeat"`
+}
+
+// Of returns the number for kind k.
+func (t *KindTable) Of(k Kind) float64 {
+	return [...]float64{t.Nonword, t.Realword, t.Runon, t.Split, t.Repeat}[k]
+}
+
+// BudgetRow is one row of Judgement.Budgets.
+type BudgetRow struct {
+	Budget float64   `json:"budget"`
+	P      KindTable `json:"p"`
+}
+
+// parseJudgement reads and checks the judgement section of a model.
+func parseJudgement(section []byte) (*Judgement, error) {
+	dec := json.NewDecoder(bytes.NewReader(section))
+	dec.DisallowUnknownFields()
+	j := new(Judgement)
+	if err := dec.Decode(j); err != nil {
+		return nil, fmt.Errorf("judgement: %w", err)
+	}
+	if len(j.Budgets) == 0 {
+		return nil, fmt.Errorf("judgement: no budgets")
+	}
+	ascending := slices.IsSortedFunc(j.Budgets, func(a, b BudgetRow) int {
+		if a.Budget < b.Budget {
+			return -1
+		}
+		return 1
+	})
+	if !ascending || j.Budgets[0].Budget <= 0 {
+		return nil, fmt.Errorf("judgement: budgets are not positive and ascending")
+	}
+	return j, nil
+}
+
+// thresholds are the least probabilities at which each kind is reported.
+type thresholds struct {
+	query, mark [len(kindNames)]float64
+}
+
+// thresholdsFor returns what a budget of false alarms a 1,000 words allows.
+func (j *Judgement) thresholdsFor(budget float64) thresholds {
+	if budget <= 0 {
+		budget = j.DefaultBudget
+	}
+	var t thresholds
+	for _, k := range Kinds() {
+		t.query[k] = j.leastP(k, budget)
+		t.mark[k] = max(t.query[k], j.leastP(k, budget*j.MarkShare))
+	}
+	return t
+}
+
+// leastP interpolates the table in the logs of budget and odds, and holds the
+// end rows beyond them.
+func (j *Judgement) leastP(k Kind, budget float64) float64 {
+	rows := j.Budgets
+	i, found := slices.BinarySearchFunc(rows, budget, func(r BudgetRow, b float64) int {
+		if r.Budget < b {
+			return -1
+		} else if r.Budget > b {
+			return 1
+		}
+		return 0
+	})
+	switch {
+	case found, i == 0:
+		return rows[i].P.Of(k)
+	case i == len(rows):
+		return rows[i-1].P.Of(k)
+	}
+	a, b := rows[i-1], rows[i]
+	t := math.Log(budget/a.Budget) / math.Log(b.Budget/a.Budget)
+	return logistic((1-t)*logit(a.P.Of(k)) + t*logit(b.P.Of(k)))
+}
+
+func logit(p float64) float64    { return math.Log(p / (1 - p)) }
+func logistic(x float64) float64 { return 1 / (1 + math.Exp(-x)) }

@@ -1,0 +1,222 @@
+package foulcase
+
+import (
+	"fmt"
+	"math"
+	"strings"
+
+	"example.org/foulcase/candidates/lexicon"
+	"example.org/foulcase/channel"
+	"example.org/foulcase/internal/text"
+)
+
+// Ledger takes the judgement of a text apart, word by word.
+type Ledger struct {
+	Sentence string         `json:"sentence"`
+	Weights  Judgement      `json:"weights"`
+	Words    []LedgerColumn `json:"words"`
+}
+
+// LedgerColumn is one word and every reading of it that was weighed.
+type LedgerColumn struct {
+	Observed string          `json:"observed"`
+	Offset   int             `json:"offset"` // bytes into the sentence
+	Status   string          `json:"status"` // known, unknown, other-variety or closed
+	P        float64         `json:"p"`      // probability that it is an error
+	Query    float64         `json:"query"`  // least p for a query of the kind
+	Mark     float64         `json:"mark"`   // least p for a mark of the kind
+	Verdict  string          `json:"verdict"`
+	Readings []LedgerReading `json:"readings"` // the typed one first, then best first
+}
+
+// LedgerReading is the account of one reading. All amounts are nats, and
+// Score = language_model × LM + Slip − channel × Channel + Evidence.
+type LedgerReading struct {
+	Text     string        `json:"text"`
+	Kind     string        `json:"kind"` // "typed" or a kind of error
+	Channel  float64       `json:"channel"`
+	Steps    []string      `json:"steps,omitempty"` // the channel's cheapest way, word for word
+	LM       float64       `json:"lm"`              // log P of the slot's words and of those they bear on
+	NGrams   []LedgerNGram `json:"ngrams"`
+	Slip     float64       `json:"slip"`     // log prior odds of the kind
+	Evidence float64       `json:"evidence"` // of document, capitals, inflection, new-word price
+	Score    float64       `json:"score"`
+	P        float64       `json:"p"` // posterior
+}
+
+// LedgerNGram is one language-model score.
+type LedgerNGram struct {
+	Word    string  `json:"word"`
+	Order   int     `json:"order"`    // length of the n-gram found
+	LogProb float64 `json:"log_prob"` // stored for it
+	Backoff float64 `json:"backoff"`  // added for the contexts it was not found in
+}
+
+var statusNames = [...]string{closed: "closed", known: "known", unknown: "unknown", foreign: "other-variety"}
+
+// Ledger accounts for every word of a plain text, readings too poor to be
+// weighed in Proof included.
+func (e *Engine) Ledger(sentence string, o Options) Ledger {
+	j := e.take(o)
+	defer e.give(j)
+	j.hopeless = math.Inf(1)
+	defer func() { j.hopeless = hopeless }()
+
+	l := Ledger{Sentence: sentence, Weights: *e.judgement, Words: []LedgerColumn{}}
+	limits := e.judgement.thresholdsFor(o.Budget)
+	block := &text.Block{Text: []byte(sentence)}
+	j.count([]*text.Block{block})
+	for s := range j.segmenter.Sentences(block.Text) {
+		found, err := j.findings(s)
+		if err != nil {
+			continue // no reading has a probability: nothing to account for
+		}
+		for i := range j.slots {
+			if j.slots[i].token.Kind == text.Word {
+				l.Words = append(l.Words, j.column(i, found, block.Text, limits))
+			}
+		}
+	}
+	return l
+}
+
+// column accounts for slot i.
+func (j *judge) column(i int, found []finding, block []byte, limits thresholds) LedgerColumn {
+	sl := &j.slots[i]
+	c := LedgerColumn{
+		Observed: string(block[sl.token.Start:sl.token.End]),
+		Offset:   sl.token.Start,
+		Status:   statusNames[sl.status],
+		Verdict:  "let stand",
+		Readings: []LedgerReading{j.typedReading(sl, block)},
+	}
+	rest := 1.0
+	for _, ch := range j.changes {
+		if ch.from <= i && i < ch.to {
+			rest -= ch.p
+		}
+		if ch.from == i {
+			c.Readings = append(c.Readings, j.changedReading(&ch, block))
+		}
+	}
+	c.Readings[0].P = max(rest, 0)
+	for _, f := range found {
+		if f.from != i {
+			continue
+		}
+		c.P, c.Query, c.Mark = f.p, limits.query[f.kind], limits.mark[f.kind]
+		switch {
+		case f.p >= c.Mark:
+			c.Verdict = "mark " + f.kind.String()
+		case f.p >= c.Query:
+			c.Verdict = "query " + f.kind.String()
+		}
+	}
+	return c
+}
+
+func (j *judge) typedReading(sl *slot, block []byte) LedgerReading {
+	reach := min(len(j.ids), sl.to+j.e.lm.Order()-1)
+	r := LedgerReading{
+		Text:     string(block[sl.token.Start:sl.token.End]),
+		Kind:     "typed",
+		Evidence: sl.score,
+		NGrams:   j.ngrams(sl.from, j.ids[sl.from:sl.to]),
+	}
+	for _, p := range j.logp[sl.from:reach] {
+		r.LM += float64(p)
+	}
+	r.Score = j.e.judgement.LanguageModel*r.LM + r.Evidence
+	return r
+}
+
+func (j *judge) changedReading(ch *change, block []byte) LedgerReading {
+	w := j.e.judgement
+	from, to := j.slots[ch.from].from, j.slots[ch.to-1].to
+	reach := min(len(j.ids), to+j.e.lm.Order()-1)
+	words := j.words[ch.lo:ch.hi]
+	r := LedgerReading{
+		Text:    j.write(ch, block),
+		Kind:    ch.kind.String(),
+		Channel: ch.cost,
+		LM:      ch.gain,
+		NGrams:  j.ngrams(from, words),
+		Slip:    w.Slip.Of(ch.kind),
+		P:       ch.p,
+	}
+	for _, p := range j.logp[from:reach] {
+		r.LM += float64(p)
+	}
+	r.Evidence = ch.score - r.Slip + w.Channel*ch.cost
+	r.Score = w.LanguageModel*r.LM + ch.score
+	if ch.kind == Nonword || ch.kind == Realword {
+		r.Steps = j.steps(ch, words)
+	}
+	return r
+}
+
+// steps spells the channel's cheapest way from what was meant to what stands
+// there; steps that keep a letter are left out.
+func (j *judge) steps(ch *change, words []uint32) []string {
+	intended := ch.house
+	if intended == "" {
+		intended = strings.ToLower(spell(j.e.lexicon, words))
+	}
+	var steps []string
+	for _, s := range j.e.channel.Explain(string(j.slots[ch.from].token.Norm), intended) {
+		if s.Kind != channel.Kept && s.Kind != channel.Ended {
+			steps = append(steps, fmt.Sprintf("%s %q as %q after %q: %.2f", s.Kind, s.Intended, s.Observed, string(s.Left), s.Cost))
+		}
+	}
+	return steps
+}
+
+// ngrams accounts for words in the place of the typed ids from `from` on.
+func (j *judge) ngrams(from int, words []uint32) []LedgerNGram {
+	state := j.states[from]
+	var out []LedgerNGram
+	for _, id := range words {
+		x := j.e.lm.Explain(state, id)
+		out = append(out, LedgerNGram{j.name(id), x.Order, float64(x.LogProb), float64(x.Total - x.LogProb)})
+		_, state = j.e.lm.Score(state, id)
+	}
+	return out
+}
+
+// name is how a word id is shown: its form, or the name of its class.
+func (j *judge) name(id uint32) string {
+	if n := j.e.lexicon.Len(); int(id) >= n {
+		return lexicon.Class(int(id) - n).String()
+	}
+	return string(j.e.lexicon.AppendForm(nil, id))
+}
+
+// String lays the ledger out for a terminal.
+func (l Ledger) String() string {
+	var b strings.Builder
+	w := l.Weights
+	fmt.Fprintf(&b, "%s\n", strings.TrimSpace(l.Sentence))
+	fmt.Fprintf(&b, "score = %.3g × lm + slip - %.3g × channel + evidence   (nats)\n", w.LanguageModel, w.Channel)
+	for _, c := range l.Words {
+		fmt.Fprintf(&b, "\n%q  %s  p %.4f", c.Observed, c.Status, c.P)
+		if c.Mark > 0 {
+			fmt.Fprintf(&b, " (query from %.4f, mark from %.4f)", c.Query, c.Mark)
+		}
+		fmt.Fprintf(&b, "  %s\n", c.Verdict)
+		for _, r := range c.Readings[:min(len(c.Readings), 8)] {
+			r.write(&b)
+		}
+	}
+	return b.String()
+}
+
+func (r *LedgerReading) write(b *strings.Builder) {
+	fmt.Fprintf(b, "  %-16s %-8s p %.4f  score %8.2f = lm %8.2f  slip %6.2f  channel %6.2f  evidence %6.2f\n",
+		r.Text, r.Kind, r.P, r.Score, r.LM, r.Slip, r.Channel, r.Evidence)
+	for _, g := range r.NGrams {
+		fmt.Fprintf(b, "      %-14s %d-gram %7.2f  back-off %6.2f\n", g.Word, g.Order, g.LogProb, g.Backoff)
+	}
+	for _, s := range r.Steps {
+		fmt.Fprintf(b, "      channel: %s\n", s)
+	}
+}

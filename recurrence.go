@@ -1,0 +1,89 @@
+package foulcase
+
+import "math"
+
+// recurrence counts the forms of a document. A form that comes again and again
+// is likelier the writer's own word than a slip (Kuhn & De Mori 1990 give the
+// same evidence to a language model as a cache).
+type recurrence struct {
+	words   []uint16 // by lexicon id, saturating
+	touched []uint32
+	forms   map[string]uint16 // of forms the lexicon lacks
+	total   float64           // words counted
+}
+
+const (
+	// maxForms bounds the forms remembered, so that a document of any length
+	// takes bounded memory; later new forms are then not counted.
+	maxForms = 1 << 16
+	// decayAt is the number of words after which counts stop growing into the
+	// past of a very long document: all are halved.
+	decayAt = 1 << 22
+)
+
+func (r *recurrence) init(words int) {
+	r.words = make([]uint16, words)
+	r.forms = make(map[string]uint16)
+}
+
+func (r *recurrence) reset() {
+	for _, id := range r.touched {
+		r.words[id] = 0
+	}
+	r.touched = r.touched[:0]
+	clear(r.forms)
+	r.total = 0
+}
+
+// addWord counts one occurrence of a lexicon word.
+func (r *recurrence) addWord(id uint32) {
+	r.total++
+	switch r.words[id] {
+	case math.MaxUint16:
+		return
+	case 0:
+		r.touched = append(r.touched, id)
+	}
+	r.words[id]++
+	if r.total >= decayAt {
+		r.decay()
+	}
+}
+
+// addForm counts one occurrence of a form the lexicon lacks.
+func (r *recurrence) addForm(form []byte) {
+	r.total++
+	if n, ok := r.forms[string(form)]; ok {
+		if n < math.MaxUint16 {
+			r.forms[string(form)] = n + 1
+		}
+	} else if len(r.forms) < maxForms {
+		r.forms[string(form)] = 1
+	}
+}
+
+func (r *recurrence) decay() {
+	r.total /= 2
+	for _, id := range r.touched {
+		r.words[id] = max(1, r.words[id]/2)
+	}
+	for form, n := range r.forms {
+		r.forms[form] = max(1, n/2)
+	}
+}
+
+// word is the evidence for a lexicon word whose log relative frequency in
+// running text is prior: the log of how many times more often than expected
+// the document has it, other occurrences than `own` counted. At least 0, nats.
+func (r *recurrence) word(id uint32, prior float64, own int) float64 {
+	n := float64(max(0, int(r.words[id])-own))
+	if n == 0 {
+		return 0
+	}
+	return math.Log(1 + n/(1+r.total*math.Exp(prior)))
+}
+
+// form is the evidence for a form the lexicon lacks, as word.
+func (r *recurrence) form(form []byte) float64 {
+	return math.Log(float64(max(1, r.forms[string(form)])))
+}
