@@ -27,7 +27,10 @@ func Encode(t Tables, books Codebooks) ([]byte, error) {
 	if !validWidth(e.probBits) || !validWidth(e.backBits) {
 		return nil, fmt.Errorf("lm: codes of %d and %d bits", e.probBits, e.backBits)
 	}
-	var err error
+	err := checkValues(t)
+	if err != nil {
+		return nil, err
+	}
 	if e.plan, err = newPlan(t, e.probBits, e.backBits); err != nil {
 		return nil, err
 	}
@@ -39,7 +42,8 @@ func Encode(t Tables, books Codebooks) ([]byte, error) {
 }
 
 // Size returns the bytes of the section that Encode makes of tables with codes
-// of the given widths, 32 for exact values.
+// of the given widths, 32 for exact values. Back-offs may be absent, to stand
+// for those that estimating gives: none but contexts have one.
 func Size(t Tables, probBits, backBits uint) (int64, error) {
 	p, err := newPlan(t, uint64(probBits), uint64(backBits))
 	if err != nil {

@@ -67,8 +67,17 @@ func checkShape(t Tables) error {
 		if uint64(n) >= 1<<30 {
 			return fmt.Errorf("lm: %d %d-grams are too many", n, k+1)
 		}
-		last := k == len(t)-1
-		if len(t[k].LogProb) != n || !last && (len(t[k].Backoff) != n || len(t[k].First) != n+1 || int(t[k].First[n]) != t.Len(k+1)) {
+		if k < len(t)-1 && (len(t[k].First) != n+1 || int(t[k].First[n]) != t.Len(k+1)) {
+			return fmt.Errorf("lm: the children of the %d-grams are not the %d-grams", k+1, k+2)
+		}
+	}
+	return nil
+}
+
+func checkValues(t Tables) error {
+	for k := range t {
+		n := t.Len(k)
+		if len(t[k].LogProb) != n || k < len(t)-1 && len(t[k].Backoff) != n {
 			return fmt.Errorf("lm: arrays of the %d-grams differ in length", k+1)
 		}
 	}

@@ -31,7 +31,7 @@ func (e *estimator) pruneAll(ctx context.Context) (float32, error) {
 			return 0, err
 		}
 		e.prune(losses, threshold)
-		size, err := lm.Size(e.tables, e.options.ProbBits, e.options.BackoffBits)
+		size, err := lm.Size(e.shape(), e.options.ProbBits, e.options.BackoffBits)
 		if err != nil {
 			return 0, err
 		}
@@ -51,6 +51,13 @@ func (e *estimator) pruneAll(ctx context.Context) (float32, error) {
 		return threshold, e.estimate(ctx)
 	}
 	return threshold, nil
+}
+
+// shape returns the tables without values, which pruning leaves stale.
+func (e *estimator) shape() lm.Tables {
+	t := e.counts.tables()
+	t[0].LogProb = e.tables[0].LogProb
+	return t
 }
 
 // fixed returns roughly the bytes of the unigrams, which are never pruned.
