@@ -105,6 +105,9 @@ func (in input) open() (io.ReadCloser, error) {
 	return os.Open(in.path)
 }
 
+// isTyped tells whether someone types the document as it is read.
+func (in input) isTyped() bool { return in.in != nil && isTerminal(in.in) }
+
 // totalSize is the number of bytes in all documents, 0 if one is unknown.
 func totalSize(inputs []input) int64 {
 	var total int64

@@ -5,6 +5,7 @@ import (
 	"context"
 	"io"
 	"os"
+	"slices"
 
 	"example.org/foulcase"
 	"github.com/spf13/pflag"
@@ -69,7 +70,7 @@ func (f *proofFlags) run(c *console, operands []string) (status, error) {
 	o.Budget = float64(f.budget)
 
 	inputs := findInputs(operands, c.in, f.name)
-	if !isTerminal(c.in) {
+	if !slices.ContainsFunc(inputs, input.isTyped) {
 		c.progress.Set("proof", totalSize(inputs))
 	}
 	p := &proofreader{
