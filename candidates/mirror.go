@@ -4,6 +4,7 @@ import (
 	"encoding/binary"
 	"errors"
 	"fmt"
+	"math/bits"
 	"slices"
 	"unicode/utf8"
 
@@ -19,10 +20,12 @@ var ErrSection = errors.New("candidates: not a section of this version (rebuild 
 //
 // The section is: magic, number of words and size of the lexicon section (4
 // bytes each, little-endian), a lexicon section of the reversed words, and for
-// each of those the id of the word, in 4 bytes.
+// each of those the id of the word, in as many bits as the greatest id takes
+// (from the low bits of each byte up), and 7 spare bytes.
 type Mirror struct {
-	lex *lexicon.Lexicon
-	ids []byte
+	lex  *lexicon.Lexicon
+	ids  []byte
+	bits int
 }
 
 const (
@@ -49,17 +52,27 @@ func BuildMirror(lex *lexicon.Lexicon) ([]byte, error) {
 	if err != nil {
 		return nil, fmt.Errorf("candidates: reversing the lexicon: %w", err)
 	}
+	ids := make([]byte, idsBytes(uint64(lex.Len())))
+	width := bits.Len(uint(lex.Len()))
+	for number := range uint32(reversed.Len()) {
+		form = reversed.AppendForm(form[:0], number)
+		reverse(form)
+		id, _ := lex.ID(form)
+		at := int(number) * width
+		word := binary.LittleEndian.Uint64(ids[at/8:])
+		binary.LittleEndian.PutUint64(ids[at/8:], word|uint64(id)<<(at%8))
+	}
 	out := append([]byte(nil), mirrorMagic...)
 	out = binary.LittleEndian.AppendUint32(out, uint32(lex.Len()))
 	out = binary.LittleEndian.AppendUint32(out, uint32(len(section)))
 	out = append(out, section...)
-	for id := range uint32(reversed.Len()) {
-		form = reversed.AppendForm(form[:0], id)
-		reverse(form)
-		original, _ := lex.ID(form)
-		out = binary.LittleEndian.AppendUint32(out, original)
-	}
-	return out, nil
+	return append(out, ids...), nil
+}
+
+// idsBytes is the size of the table of ids.
+func idsBytes(words uint64) uint64 {
+	const spare = 7 // so that eight bytes can be read from any place
+	return (words*uint64(bits.Len64(words))+7)/8 + spare
 }
 
 // reverse turns the order of the code points of a word.
@@ -83,7 +96,7 @@ func OpenMirror(section []byte) (*Mirror, error) {
 	}
 	words := uint64(binary.LittleEndian.Uint32(section[len(mirrorMagic):]))
 	size := uint64(binary.LittleEndian.Uint32(section[len(mirrorMagic)+4:]))
-	if want := uint64(mirrorHeader) + size + 4*words; uint64(len(section)) != want {
+	if want := uint64(mirrorHeader) + size + idsBytes(words); uint64(len(section)) != want {
 		return nil, fmt.Errorf("%w: mirror of %d bytes, expected %d", ErrSection, len(section), want)
 	}
 	body := section[mirrorHeader:]
@@ -94,10 +107,11 @@ func OpenMirror(section []byte) (*Mirror, error) {
 	if uint64(lex.Len()) != words {
 		return nil, fmt.Errorf("%w: mirror of %d words, expected %d", ErrSection, lex.Len(), words)
 	}
-	return &Mirror{lex: lex, ids: body[size:]}, nil
+	return &Mirror{lex: lex, ids: body[size:], bits: bits.Len64(words)}, nil
 }
 
 // id gives the id of a word by its number among the reversed words.
 func (m *Mirror) id(number uint32) uint32 {
-	return binary.LittleEndian.Uint32(m.ids[4*number:])
+	at := int(number) * m.bits
+	return uint32(binary.LittleEndian.Uint64(m.ids[at/8:])>>(at%8)) & (1<<m.bits - 1)
 }

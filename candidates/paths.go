@@ -83,28 +83,46 @@ func (s *Searcher) grow(at int32) {
 			prior: s.priorCost(lex.Prior(p.base)),
 		})
 	}
-	s.growLetters(lex, &p, p.node, p.base, nil)
+	s.growLetters(lex, &p, p.node, p.base, letterBytes{})
 	s.paths[at].first = first
 	s.paths[at].n = uint8(min(len(s.paths)-int(first), mostChildren))
 }
 
+// letterBytes are the first bytes of a letter in UTF-8.
+type letterBytes struct {
+	bytes [utf8.UTFMax]byte
+	n     int
+}
+
 // growLetters adds a child for every letter below a node. A letter of several
 // bytes is followed through as many edges; start holds the bytes so far.
-func (s *Searcher) growLetters(lex *lexicon.Lexicon, p *path, n lexicon.Node, base uint32, start []byte) {
+func (s *Searcher) growLetters(lex *lexicon.Lexicon, p *path, n lexicon.Node, base uint32, start letterBytes) {
 	for e := lex.Edges(n); e.Next(); {
-		var room [utf8.UTFMax]byte
-		letter := append(append(room[:0], start...), e.Label)
-		if !utf8.FullRune(letter) {
-			s.growLetters(lex, p, e.Target, base+e.Skip, letter)
-			continue
-		}
-		r, _ := utf8.DecodeRune(letter)
+		letter := start
+		letter.bytes[letter.n] = e.Label
+		letter.n++
 		from := base + e.Skip
-		s.paths = append(s.paths, path{
-			node: e.Target, base: from, letter: channel.LetterOf(r), before: p.letter.Sym, tree: p.tree,
-			prior: s.priorCost(lex.BestPrior(from, from+lex.Count(e.Target))),
-		})
+		if r, ok := letter.rune(); ok {
+			s.paths = append(s.paths, path{
+				node: e.Target, base: from, letter: channel.LetterOf(r), before: p.letter.Sym, tree: p.tree,
+				prior: s.priorCost(lex.BestPrior(from, from+lex.Count(e.Target))),
+			})
+		} else {
+			s.growLetters(lex, p, e.Target, from, letter)
+		}
 	}
+}
+
+// rune decodes the letter; false while bytes are missing.
+func (l *letterBytes) rune() (rune, bool) {
+	if l.bytes[0] < utf8.RuneSelf {
+		return rune(l.bytes[0]), true
+	}
+	if !utf8.FullRune(l.bytes[:l.n]) {
+		return 0, false
+	}
+	r, _ := utf8.DecodeRune(l.bytes[:l.n])
+	return r, true
 }
 
 func (s *Searcher) priorCost(prior float32) float32 { return -prior * s.weights.Prior }

@@ -41,28 +41,26 @@ type Searcher struct {
 	paths             []path
 	visits            []visit
 	query             uint32
-	queue             heap
+	queue             queue
 	observed          []channel.Letter
 	forwards, reverse reading
 	best              []found // the best k words seen, ascending by score
 	limit             float32
 	joined            []byte
 	k                 int
-	budget            int
 	spread            float32
 }
 
-// found is a whole word reached by the search, not yet in its turn.
+// found is a whole word reached by the search.
 type found struct {
+	Candidate
 	score float32
-	id    uint32
-	house bool
 }
 
 const (
 	// budget is the number of states a query may leave before it gives up with
 	// what it has found, some ten milliseconds of work.
-	budget = 50_000
+	budget = 40_000
 	// spread is the default of SetSpread.
 	spread = 7
 	// longest is the number of letters of the longest observed word.
@@ -71,7 +69,7 @@ const (
 
 // NewSearcher searches one lexicon by one error model.
 func NewSearcher(lex *lexicon.Lexicon, ch *channel.Model, w Weights) *Searcher {
-	s := &Searcher{lex: lex, channel: ch, weights: w, budget: budget, spread: spread}
+	s := &Searcher{lex: lex, channel: ch, weights: w, spread: spread}
 	s.plant()
 	return s
 }
@@ -121,42 +119,26 @@ func (s *Searcher) Search(dst []Candidate, observed []byte, k int, bound float32
 		return dst
 	}
 	s.begin(k, bound)
-	from := len(dst)
-	for work := 0; len(s.queue) > 0 && work < s.budget; work++ {
-		st := s.queue.pop()
-		p := &s.paths[st.path]
-		if st.score > s.limit {
+	for range budget {
+		st, ok := s.queue.pop(s.limit)
+		if !ok {
 			break
 		}
-		if s.leftCheaper(p, st.i, st.cost) {
+		p := &s.paths[st.path]
+		if st.score > s.limit || s.leftCheaper(p, st.i, st.cost) {
 			continue
 		}
 		s.note(p, st.i, st.cost)
-		switch {
-		case p.letter.Sym != channel.Edge:
+		if p.letter.Sym != channel.Edge {
 			s.leave(st)
-		case int(st.i) < len(s.observed):
+		} else if int(st.i) < len(s.observed) {
 			s.insert(st, p)
-		default:
-			if dst = s.collect(dst, from, p, st.cost); len(dst)-from == k {
-				return dst
-			}
 		}
+	}
+	for _, f := range s.best {
+		dst = append(dst, f.Candidate)
 	}
 	return dst
-}
-
-// collect appends the word that ends at a path, unless the other reading found
-// it before.
-func (s *Searcher) collect(dst []Candidate, from int, p *path, cost float32) []Candidate {
-	t := &s.trees[p.tree]
-	id := t.id(p.base)
-	for _, c := range dst[from:] {
-		if c.ID == id && c.House == t.house {
-			return dst
-		}
-	}
-	return append(dst, Candidate{ID: id, House: t.house, Channel: cost, Prior: t.lex.Prior(p.base)})
 }
 
 // begin prepares the search and starts it at every first letter.
@@ -166,7 +148,8 @@ func (s *Searcher) begin(k int, bound float32) {
 		s.forget()
 	}
 	s.query++
-	s.queue, s.best, s.visits = s.queue[:0], s.best[:0], append(s.visits[:0], visit{})
+	s.queue.reset()
+	s.best, s.visits = s.best[:0], append(s.visits[:0], visit{})
 	s.k, s.limit = k, bound
 	half := 0
 	if s.mirror != nil {
@@ -204,16 +187,17 @@ func (s *Searcher) push(from state, at, i int32, cost float32) {
 		return
 	}
 	if p.letter.Sym == channel.Edge && int(i) == len(s.observed) {
-		s.tighten(found{score, t.id(p.base), t.house})
+		s.tighten(found{Candidate{t.id(p.base), t.house, cost, t.lex.Prior(p.base)}, score})
+		return
 	}
-	s.queue.push(state{score, cost, half, at, i})
+	s.queue.push(state{score: score, cost: cost, half: half, path: at, i: i})
 }
 
 // tighten lowers the limit to the k-th best score of the whole words seen.
 func (s *Searcher) tighten(f found) {
 	at := len(s.best)
 	for i, b := range s.best {
-		if b.id == f.id && b.house == f.house {
+		if b.ID == f.ID && b.House == f.House {
 			if b.score <= f.score {
 				return
 			}

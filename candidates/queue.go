@@ -1,0 +1,54 @@
+package candidates
+
+// state is a place of the search: the observed letters before i, in reading
+// order, are explained by the path without its last letter.
+type state struct {
+	score float32 // floor under the score of every word reached from here
+	cost  float32 // channel cost so far
+	half  float32 // channel cost of the half read first
+	path  int32
+	i     int32
+	older int32 // the state below in the same bucket, 0 for none
+}
+
+// queue holds the states to come, in buckets by score: the search may take them
+// in any order, it is only quicker when the least come first. Scores never fall
+// along a path but for rounding, so the buckets are emptied from the left.
+type queue struct {
+	states []state
+	top    [buckets]int32 // latest state of each bucket, 0 for none
+	at     int            // no bucket before is in use
+	most   int            // nor any behind
+}
+
+const (
+	buckets     = 1024 // the last one takes all scores above
+	bucketsANat = 8
+)
+
+func (q *queue) reset() {
+	clear(q.top[:])
+	q.states = append(q.states[:0], state{})
+	q.at, q.most = 0, 0
+}
+
+func (q *queue) push(s state) {
+	b := min(max(int(s.score*bucketsANat), q.at), buckets-1)
+	q.most = max(q.most, b)
+	s.older = q.top[b]
+	q.top[b] = int32(len(q.states))
+	q.states = append(q.states, s)
+}
+
+// pop takes a state out of the lowest bucket in use; false when there is none
+// left with a score of at most limit.
+func (q *queue) pop(limit float32) (state, bool) {
+	for ; q.at <= q.most && float32(q.at) <= limit*bucketsANat; q.at++ {
+		if t := q.top[q.at]; t != 0 {
+			s := q.states[t]
+			q.top[q.at] = s.older
+			return s, true
+		}
+	}
+	return state{}, false
+}
