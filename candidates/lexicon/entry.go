@@ -6,6 +6,8 @@ import (
 	"sort"
 	"unicode"
 	"unicode/utf8"
+
+	"example.org/foulcase/internal/text"
 )
 
 // Variety says which written varieties of English a form belongs to, in bits.
@@ -115,9 +117,9 @@ func (l *Lexicon) Canonical(id uint32) string {
 	}
 	switch unpack(l.attrs[id], 0).Usual {
 	case TitleCase:
-		return capitalise(form, 1)
+		return text.ApplyCase(text.Title, string(form))
 	case UpperCase:
-		return capitalise(form, math.MaxUint32)
+		return text.ApplyCase(text.Upper, string(form))
 	case MixedCase:
 		return capitalise(form, l.capitals(id))
 	}

@@ -2,7 +2,7 @@
 // automaton over the UTF-8 bytes of the folded forms, in which the number of a
 // form (its id) is its rank in byte order, with packed attributes for each form,
 // all read in place. It also builds that section from word lists and corpus
-// counts (Count, Compile), and turns tokens into the id stream that the language
+// counts (CountDocuments, Build), and turns tokens into the id stream that the language
 // model reads.
 //
 // # Section

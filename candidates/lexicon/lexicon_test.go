@@ -125,7 +125,7 @@ func TestBuilderRefuses(t *testing.T) {
 }
 
 func TestBestPrior(t *testing.T) {
-	for _, n := range []int{1, 31, 32, 33, 64, 500, 3000} {
+	for _, n := range []int{1, 15, 16, 17, 32, 64, 500, 3000} {
 		forms := randomForms(rand.New(rand.NewPCG(6, uint64(n))), n, []rune("abcdefghij"), 9)
 		shuffled := slices.Clone(forms)
 		r := rand.New(rand.NewPCG(7, uint64(n)))

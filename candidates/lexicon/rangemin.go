@@ -14,7 +14,7 @@ type rangeMin struct {
 	levels [][]byte
 }
 
-const blockSize = 32
+const blockSize = 16
 
 func newRangeMin(data []byte) rangeMin {
 	n := (len(data) + blockSize - 1) / blockSize
