@@ -47,10 +47,8 @@ const (
 	mostlyWrong = 0.9  // no edit is likelier than this anywhere
 )
 
-// smooth estimates probabilities from counts by interpolation: two neighbours,
-// one neighbour on either side, none, and at last all edits alike.
-func smooth(n *counts) *estimates {
-	e := &estimates{
+func newEstimates() *estimates {
+	return &estimates{
 		emit:      make([]float64, symbols*cube),
 		swap:      make([]float64, square),
 		insert:    make([]float64, cube),
@@ -59,6 +57,12 @@ func smooth(n *counts) *estimates {
 		subLeft:   make([]float64, cube),
 		subNext:   make([]float64, cube),
 	}
+}
+
+// smooth estimates probabilities from counts by interpolation: two neighbours,
+// one neighbour on either side, none, and at last all edits alike.
+func smooth(n *counts) *estimates {
+	e := newEstimates()
 	visits := sidesOf(func(l, c, r Symbol) float64 { return n.visits[at3(l, c, r)] })
 	for c := Symbol(1); c < symbols; c++ {
 		for x := Symbol(0); x < symbols; x++ {

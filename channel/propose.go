@@ -62,8 +62,9 @@ func (o occurrences) probability(key ruleKey, n float64) float64 {
 // single-letter steps it stands for cost.
 type proposal struct{ sights, cost float64 }
 
-// propose finds rules in the best alignments under single-letter steps: runs of
-// steps with at least two slips that touch up to four letters on either side.
+// propose finds rules in the best alignments under single-letter steps: runs
+// from a slip to a later slip that touch up to four letters on either side. What
+// stands around a run is left to the neighbours of the single-letter steps.
 func (f *fitter) propose(n *counts) error {
 	m, err := f.draft(n).model()
 	if err != nil {
@@ -79,16 +80,26 @@ func (f *fitter) propose(n *counts) error {
 	f.rules = map[ruleKey]float64{}
 	for key, s := range seen {
 		p := f.occurrences.probability(key, s.sights)
-		if s.sights >= leastSights && nats(p) < s.cost/s.sights-leastGain {
+		if s.sights >= leastSights && nats(p) < s.cost/s.sights-leastGain && f.tellsMore(key, p, seen) {
 			f.rules[key] = p
 		}
 	}
 	return nil
 }
 
+// tellsMore reports whether a rule with a place is likelier there than anywhere,
+// by enough to be worth having.
+func (f *fitter) tellsMore(key ruleKey, p float64, seen map[ruleKey]proposal) bool {
+	anywhere := ruleKey{key.intended, key.observed, Anywhere}
+	return key.place == Anywhere || nats(p) < nats(f.occurrences.probability(anywhere, seen[anywhere].sights))-leastGain
+}
+
 // collect counts the runs of steps that could be rules.
 func collect(seen map[ruleKey]proposal, steps []Step, weight float64) {
 	for from := range steps {
+		if steps[from].Kind == Kept {
+			continue
+		}
 		var key ruleKey
 		intended, observed, slips, cost := 0, 0, 0, 0.0
 		for to := from; to < len(steps); to++ {
@@ -103,7 +114,7 @@ func collect(seen map[ruleKey]proposal, steps []Step, weight float64) {
 			if s.Kind != Kept {
 				slips++
 			}
-			if slips > 1 && intended > 0 {
+			if slips > 1 && s.Kind != Kept && intended > 0 {
 				eachPlace(from == 0, to == len(steps)-1, func(p Place) {
 					key.place = p
 					seen[key] = proposal{seen[key].sights + weight, seen[key].cost + weight*cost}
