@@ -166,7 +166,7 @@ func TestKnownMisspellings(t *testing.T) {
 
 func TestBuild(t *testing.T) {
 	lists := []WordList{
-		{"us", US, strings.Fields("color center Center organize travel pilot Pilot's pilots Auburn iPad NASA may May polish Polish analyzable O'Brien")},
+		{"us", US, strings.Fields("B B's color center Center organize travel pilot Pilot's pilots Auburn iPad NASA may May polish Polish analyzable O'Brien")},
 		{"gb", GB, strings.Fields("colour centre Center organise travel pilot pilot's pilots iPad NASA may May polish Polish unseen O'Brien")},
 	}
 	counts := tally{"pilot": 80, "travel": 40, "may": 90, "polish": 2, "iphone": 0, "telehealth": 30, "colour": 1, "color": 1}.counter(text.Lower)
@@ -184,8 +184,10 @@ func TestBuild(t *testing.T) {
 		return section
 	}
 	section := build()
-	if !bytes.Equal(section, build()) {
-		t.Error("building twice gives different bytes")
+	for range 5 {
+		if !bytes.Equal(section, build()) {
+			t.Fatal("building twice gives different bytes")
+		}
 	}
 	l, err := Open(section)
 	if err != nil {
@@ -221,7 +223,7 @@ func TestBuild(t *testing.T) {
 			t.Errorf("%s: %q %+v, want %q, variety %d, cases %d, listed %v", tt.form, got, e, tt.canonical, tt.variety, tt.cases, tt.listed)
 		}
 	}
-	for _, form := range []string{"pilot's", "obrien", "recieve"} {
+	for _, form := range []string{"pilot's", "obrien", "recieve", "b", "b's"} {
 		if _, ok := l.ID([]byte(form)); ok {
 			t.Errorf("%s is a form", form)
 		}

@@ -31,10 +31,14 @@ func listedForms(lists []WordList) map[string]*listing {
 			enterWord(forms, word, list.Variety)
 		}
 	}
+	var dropped []string
 	for form := range forms {
 		if stem, ok := possessiveStem([]byte(form)); ok && forms[string(stem)] != nil || isLetterName(form) {
-			delete(forms, form)
+			dropped = append(dropped, form)
 		}
+	}
+	for _, form := range dropped {
+		delete(forms, form)
 	}
 	for form := range contractions {
 		enterWord(forms, form, Both)
