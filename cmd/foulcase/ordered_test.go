@@ -32,13 +32,17 @@ func TestOrdered(t *testing.T) {
 }
 
 func TestOrderedStops(t *testing.T) {
-	var begun atomic.Int32
-	for i := range ordered(1000, 2, func(i int) int { begun.Add(1); return i }) {
+	var begun, ended atomic.Int32
+	for i := range ordered(1000, 2, func(i int) int {
+		begun.Add(1)
+		defer ended.Add(1)
+		return i
+	}) {
 		if i == 3 {
 			break
 		}
 	}
-	if n := begun.Load(); n > 10 {
-		t.Errorf("%d were begun after a stop at the fourth", n)
+	if n := begun.Load(); n > 10 || ended.Load() != n {
+		t.Errorf("%d were begun and %d had ended after a stop at the fourth", n, ended.Load())
 	}
 }

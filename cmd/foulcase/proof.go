@@ -98,14 +98,11 @@ type proofreader struct {
 
 // stream proofreads one document and hands each mark on as it is found.
 func (p *proofreader) stream(c *console, in input) (status, error) {
-	n, err := p.proof(in, c.out, c.out.Flush)
-	if c.out.err != nil {
-		return trouble, c.out.err
-	}
-	if err != nil {
+	n, err := p.proof(context.Background(), in, c.out, c.out.Flush)
+	if err != nil && c.out.err == nil {
 		c.complain(err)
 	}
-	return statusOf(n), nil
+	return statusOf(n), c.out.err
 }
 
 // report is the outcome of one document.
@@ -119,28 +116,31 @@ type report struct {
 // documents' order. What is wrong with one document is reported there and does
 // not stop the others.
 func (p *proofreader) all(c *console, inputs []input) (status, error) {
+	ctx, cancel := context.WithCancel(context.Background())
+	defer cancel()
 	total := 0
 	reports := ordered(len(inputs), int(*p.flags.jobs), func(i int) report {
 		var text bytes.Buffer
-		n, err := p.proof(inputs[i], &text, func() error { return nil })
+		n, err := p.proof(ctx, inputs[i], &text, func() error { return nil })
 		return report{text.Bytes(), n, err}
 	})
 	for _, r := range reports {
+		total += r.marks
 		c.out.Write(r.text)
 		if err := c.out.Flush(); err != nil {
-			return trouble, err
+			cancel()
+			return statusOf(total), err
 		}
 		if r.err != nil {
 			c.complain(r.err)
 		}
-		total += r.marks
 	}
 	return statusOf(total), nil
 }
 
 // proof prints the marks of one document and returns their number. Flush is
 // called after each.
-func (p *proofreader) proof(in input, w io.Writer, flush func() error) (marks int, err error) {
+func (p *proofreader) proof(ctx context.Context, in input, w io.Writer, flush func() error) (marks int, err error) {
 	r, err := in.open()
 	if err != nil {
 		return 0, err
@@ -151,7 +151,7 @@ func (p *proofreader) proof(in input, w io.Writer, flush func() error) (marks in
 		o.Format = foulcase.FormatOf(in.path)
 	}
 	print := newMarkPrinter(w, p.flags.emit.value, in.path, p.palette)
-	for m, err := range p.engine.Proof(context.Background(), watched{r, p.progress}, o) {
+	for m, err := range p.engine.Proof(ctx, watched{r, p.progress}, o) {
 		if err != nil {
 			return marks, &os.PathError{Op: "read", Path: in.path, Err: cause(err)}
 		}
