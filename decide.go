@@ -26,10 +26,10 @@ type finding struct {
 	changes  []change // best first
 }
 
-// findings weighs the sentence and returns what may be wrong in it, in order,
+// findings weighs a sentence of the block and returns what may be wrong in it, in order,
 // without regard to thresholds. The result is the caller's.
-func (j *judge) findings(s text.Sentence) ([]finding, error) {
-	j.read(s)
+func (j *judge) findings(s text.Sentence, block []byte) ([]finding, error) {
+	j.read(s, block)
 	j.propose()
 	if len(j.changes) == 0 {
 		return nil, nil

@@ -1,6 +1,8 @@
 package foulcase
 
 import (
+	"bytes"
+
 	"example.org/foulcase/candidates/lexicon"
 	"example.org/foulcase/internal/text"
 	"example.org/foulcase/lm"
@@ -84,8 +86,8 @@ func (e *Engine) take(o Options) *judge {
 
 func (e *Engine) give(j *judge) { e.judges.Put(j) }
 
-// read lays the sentence out in slots and scores it as it was typed.
-func (j *judge) read(s text.Sentence) {
+// read lays a sentence of the block out in slots and scores it as it was typed.
+func (j *judge) read(s text.Sentence, block []byte) {
 	lex := j.e.lexicon
 	j.slots, j.ids = j.slots[:0], j.ids[:0]
 	j.shouting = inCapitals(s.Tokens)
@@ -96,8 +98,11 @@ func (j *judge) read(s text.Sentence) {
 			continue
 		}
 		sl := slot{token: t, place: place, from: from, to: len(j.ids)}
-		if t.Kind == text.Word {
+		if t.Kind == text.Word && !misdecoded(s.Tokens, place, block) {
 			j.classify(&sl)
+			if sl.status == unknown && j.pluralPossessive(t, block) {
+				sl.status, sl.score = closed, 0
+			}
 		}
 		j.slots = append(j.slots, sl)
 	}
@@ -115,7 +120,7 @@ func (j *judge) classify(sl *slot) {
 		sl.status = closed
 	case int(first) >= e.lexicon.Len():
 		sl.status = unknown
-		sl.score = -e.judgement.NewWord*float64(e.spelling.Price(form)) + e.judgement.Recurrence*j.recurring.form(form)
+		sl.score = -e.judgement.NewWord*float64(e.spelling.Price(form)) + e.judgement.RecurrenceNew*j.recurring.form(form)
 	case !j.spelt(first):
 		sl.status, sl.id = foreign, first
 		sl.score = -e.judgement.Variety
@@ -123,6 +128,26 @@ func (j *judge) classify(sl *slot) {
 		sl.status, sl.id = known, first
 		sl.score = e.judgement.Recurrence * j.recurring.word(first, float64(e.lexicon.Prior(first)), 1)
 	}
+}
+
+// misdecoded reports whether the word at a place stands against a symbol beyond
+// ASCII, as in "peace¡Xand": the remains of a dash or quotation mark read in
+// the wrong encoding, with letters that are nobody's spelling.
+func misdecoded(tokens []text.Token, place int, block []byte) bool {
+	return place > 0 && tokens[place].Glued && tokens[place-1].Kind == text.Other &&
+		block[tokens[place-1].Start] >= 0x80
+}
+
+// pluralPossessive reports whether a form is the regular plural of a word, in
+// the possessive: "the Daves' boat". The apostrophe is no part of the token.
+func (j *judge) pluralPossessive(t text.Token, block []byte) bool {
+	stem, ok := bytes.CutSuffix(t.Norm, []byte("s"))
+	rest := block[t.End:]
+	if !ok || !bytes.HasPrefix(rest, []byte("'")) && !bytes.HasPrefix(rest, []byte("’")) {
+		return false
+	}
+	_, ok = j.e.lexicon.ID(stem)
+	return ok
 }
 
 // inCapitals reports whether most words of a sentence are written in capitals

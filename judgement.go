@@ -27,11 +27,12 @@ type Judgement struct {
 	// Slip is the log prior odds that a word is miswritten in each kind of way.
 	Slip KindTable `json:"slip"`
 
-	Recurrence float64 `json:"recurrence"` // for each doubling of a form's count in the document, in favour of keeping it
-	Capital    float64 `json:"capital"`    // against changing a word capitalised inside a sentence into one that is not
-	Inflection float64 `json:"inflection"` // against changing a word into another inflection of it
-	House      float64 `json:"house"`      // price of a house word as a candidate, the language model's class price aside
-	Variety    float64 `json:"variety"`    // against a form that the asked-for variety does not spell so
+	Recurrence    float64 `json:"recurrence"`     // times the log of how much oftener than expected the document has a word
+	RecurrenceNew float64 `json:"recurrence_new"` // times the log of the document's count of a form the lexicon lacks
+	Capital       float64 `json:"capital"`        // against changing a word capitalised inside a sentence into one that is not
+	Inflection    float64 `json:"inflection"`     // against changing a word into another inflection of it
+	House         float64 `json:"house"`          // price of a house word as a candidate, the language model's class price aside
+	Variety       float64 `json:"variety"`        // against a form that the asked-for variety does not spell so
 
 	// RankChannel and RankPrior weigh channel cost against unigram prior where
 	// there is no context.

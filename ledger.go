@@ -67,7 +67,7 @@ func (e *Engine) Ledger(sentence string, o Options) Ledger {
 	block := &text.Block{Text: []byte(sentence)}
 	j.count([]*text.Block{block})
 	for s := range j.segmenter.Sentences(block.Text) {
-		found, err := j.findings(s)
+		found, err := j.findings(s, block.Text)
 		if err != nil {
 			continue // no reading has a probability: nothing to account for
 		}

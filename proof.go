@@ -108,7 +108,7 @@ func (j *judge) count(blocks []*text.Block) {
 func (j *judge) marks(b *text.Block, limits thresholds) iter.Seq2[Mark, error] {
 	return func(yield func(Mark, error) bool) {
 		for s := range j.segmenter.Sentences(b.Text) {
-			found, err := j.findings(s)
+			found, err := j.findings(s, b.Text)
 			if err != nil {
 				yield(Mark{}, err)
 				return

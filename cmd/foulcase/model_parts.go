@@ -20,6 +20,15 @@ import (
 // spellingSize is the room for the model of new words, in bytes.
 const spellingSize = 640 << 10
 
+// Bounds of the table of words taken for one another, tuned on development
+// text: channel cost and spread of scores in nats, and entries a word.
+const (
+	confusableCost   = 8.5
+	confusableSpread = 8
+	confusablePrior  = -15 // least log relative frequency of a word in it
+	confusablesMost  = 16
+)
+
 // builder puts a model file together, part by part, each from the parts
 // before it.
 type builder struct {
@@ -256,7 +265,10 @@ func (b *builder) findConfusables(ctx context.Context) error {
 		return err
 	}
 	o := candidates.ConfusableOptions{
-		Jobs: runtime.NumCPU(),
+		LeastPrior: confusablePrior,
+		MostCost:   confusableCost,
+		Most:       confusablesMost,
+		Jobs:       runtime.NumCPU(),
 		Progress: func(done, all int) {
 			b.progress.Set(fmt.Sprintf("words taken for one another: %d %%", 100*done/all), 0)
 		},
@@ -273,6 +285,7 @@ func (b *builder) findConfusables(ctx context.Context) error {
 	newSearcher := func() *candidates.Searcher {
 		s := candidates.NewSearcher(lex, slips, candidates.DefaultWeights)
 		s.SetMirror(mirror)
+		s.SetSpread(confusableSpread)
 		return s
 	}
 	b.held[foulcase.SectionConfusables], err = candidates.BuildConfusables(ctx, lex, newSearcher, o)
