@@ -110,7 +110,8 @@ func OpenMirror(section []byte) (*Mirror, error) {
 	return &Mirror{lex: lex, ids: body[size:], bits: bits.Len64(words)}, nil
 }
 
-// id gives the id of a word by its number among the reversed words.
+// id gives the id of a word by its number among the reversed words. It is
+// beyond the lexicon where the bytes were damaged.
 func (m *Mirror) id(number uint32) uint32 {
 	at := int(number) * m.bits
 	return uint32(binary.LittleEndian.Uint64(m.ids[at/8:])>>(at%8)) & (1<<m.bits - 1)

@@ -14,7 +14,7 @@ type Weights struct {
 }
 
 // DefaultWeights rank isolated words best on the lists they were tuned on.
-var DefaultWeights = Weights{Channel: 1, Prior: 0.6}
+var DefaultWeights = Weights{Channel: 1, Prior: 0.8}
 
 // Candidate is a word that may have been meant.
 type Candidate struct {
@@ -59,8 +59,10 @@ type found struct {
 
 const (
 	// budget is the number of states a query may leave before it gives up with
-	// what it has found, some ten milliseconds of work.
-	budget = 40_000
+	// what it has found, some ten milliseconds of work; hardBudget if it has
+	// found nothing yet.
+	budget     = 40_000
+	hardBudget = 160_000
 	// spread is the default of SetSpread.
 	spread = 7
 	// longest is the number of letters of the longest observed word.
@@ -119,7 +121,7 @@ func (s *Searcher) Search(dst []Candidate, observed []byte, k int, bound float32
 		return dst
 	}
 	s.begin(k, bound)
-	for range budget {
+	for work := 0; work < budget || work < hardBudget && len(s.best) == 0; work++ {
 		st, ok := s.queue.pop(s.limit)
 		if !ok {
 			break
@@ -187,7 +189,9 @@ func (s *Searcher) push(from state, at, i int32, cost float32) {
 		return
 	}
 	if p.letter.Sym == channel.Edge && int(i) == len(s.observed) {
-		s.tighten(found{Candidate{t.id(p.base), t.house, cost, t.lex.Prior(p.base)}, score})
+		if id := t.id(p.base); t.house || int(id) < s.lex.Len() {
+			s.tighten(found{Candidate{id, t.house, cost, t.lex.Prior(p.base)}, score})
+		}
 		return
 	}
 	s.queue.push(state{score: score, cost: cost, half: half, path: at, i: i})
