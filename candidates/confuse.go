@@ -25,7 +25,7 @@ type ConfusableOptions struct {
 	// LeastPrior is the least log prior of a word that is typed or meant
 	// (-16 nats when zero).
 	LeastPrior float32
-	// MostCost is the greatest channel cost of an entry (7.5 nats when zero).
+	// MostCost is the greatest channel cost of an entry (9.5 nats when zero).
 	MostCost float32
 	// Most is the greatest number of entries a word (12 when zero).
 	Most int
@@ -39,7 +39,7 @@ type ConfusableOptions struct {
 func (o *ConfusableOptions) complete() {
 	o.HomophoneCost = cmp.Or(o.HomophoneCost, 4.5)
 	o.LeastPrior = cmp.Or(o.LeastPrior, -16)
-	o.MostCost = cmp.Or(o.MostCost, 7.5)
+	o.MostCost = cmp.Or(o.MostCost, 9.5)
 	o.Most = min(cmp.Or(o.Most, 12), math.MaxUint8)
 	o.Jobs = max(o.Jobs, 1)
 }
@@ -112,6 +112,7 @@ type confusableBuilder struct {
 func (b *confusableBuilder) work(ctx context.Context, s *Searcher) {
 	var form []byte
 	var found []Candidate
+	bound := Candidate{Channel: b.options.MostCost, Prior: b.options.LeastPrior}.Score(s.weights)
 	for ctx.Err() == nil {
 		block := int(b.next.Add(1)) - 1
 		if block >= len(b.blocks) {
@@ -122,7 +123,7 @@ func (b *confusableBuilder) work(ctx context.Context, s *Searcher) {
 			if b.lex.Prior(uint32(id)) >= b.options.LeastPrior {
 				form = b.lex.AppendForm(form[:0], uint32(id))
 				// Twice as many as are kept: variants and rare words fall away.
-				found = s.Search(found, form, 2*b.options.Most+1, math.MaxFloat32)
+				found = s.Search(found, form, 2*b.options.Most+1, bound)
 			}
 			b.blocks[block] = appendEntries(b.blocks[block], b.entries(uint32(id), found, s.weights))
 		}

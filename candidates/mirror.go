@@ -88,9 +88,9 @@ func reverse(word []byte) {
 	}
 }
 
-// OpenMirror reads a section in place; the bytes must not change afterwards.
-// It must have been built from the lexicon it is used with.
-func OpenMirror(section []byte) (*Mirror, error) {
+// OpenMirror reads the section built from a lexicon in place; the bytes must not
+// change afterwards.
+func OpenMirror(section []byte, lex *lexicon.Lexicon) (*Mirror, error) {
 	if len(section) < mirrorHeader || string(section[:len(mirrorMagic)]) != mirrorMagic {
 		return nil, fmt.Errorf("%w: unknown beginning", ErrSection)
 	}
@@ -100,18 +100,17 @@ func OpenMirror(section []byte) (*Mirror, error) {
 		return nil, fmt.Errorf("%w: mirror of %d bytes, expected %d", ErrSection, len(section), want)
 	}
 	body := section[mirrorHeader:]
-	lex, err := lexicon.Open(body[:size])
+	reversed, err := lexicon.Open(body[:size])
 	if err != nil {
 		return nil, fmt.Errorf("%w: mirror: %w", ErrSection, err)
 	}
-	if uint64(lex.Len()) != words {
-		return nil, fmt.Errorf("%w: mirror of %d words, expected %d", ErrSection, lex.Len(), words)
+	if uint64(reversed.Len()) != words || reversed.Len() != lex.Len() {
+		return nil, fmt.Errorf("%w: mirror of %d words for a lexicon of %d", ErrSection, reversed.Len(), lex.Len())
 	}
-	return &Mirror{lex: lex, ids: body[size:], bits: bits.Len64(words)}, nil
+	return &Mirror{lex: reversed, ids: body[size:], bits: bits.Len64(words)}, nil
 }
 
-// id gives the id of a word by its number among the reversed words. It is
-// beyond the lexicon where the bytes were damaged.
+// id gives the id of a word by its number among the reversed words.
 func (m *Mirror) id(number uint32) uint32 {
 	at := int(number) * m.bits
 	return uint32(binary.LittleEndian.Uint64(m.ids[at/8:])>>(at%8)) & (1<<m.bits - 1)

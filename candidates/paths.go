@@ -36,15 +36,18 @@ type tree struct {
 	mirror *Mirror // nil when read forwards
 	house  bool
 	read   *reading
+	halved bool // searched only for words whose half read first is the cheaper
 	root   int32
 }
 
-// id gives the id of a word from its number in the tree.
-func (t *tree) id(number uint32) uint32 {
-	if t.mirror == nil {
-		return number
+// id gives the id of a word from its number in the tree; false if there is none,
+// which damaged bytes alone can bring about.
+func (t *tree) id(number uint32) (uint32, bool) {
+	n := uint32(t.lex.Len())
+	if t.mirror != nil && number < n {
+		number = t.mirror.id(number)
 	}
-	return t.mirror.id(number)
+	return number, number < n
 }
 
 const (

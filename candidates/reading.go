@@ -27,8 +27,7 @@ func (r *reading) rulesAt(i int) []channel.Rule {
 	return r.rules[from:r.ruleEnd[i]]
 }
 
-// readForwards prepares the word in writing order. The search backwards takes
-// over where half the letters are read, or forwards alone reads to the end.
+// readForwards prepares the word in writing order.
 func (r *reading) readForwards(m *channel.Model, observed []channel.Letter, half int) {
 	r.observed = append(r.observed[:0], observed...)
 	r.rules, r.ruleEnd = r.rules[:0], r.ruleEnd[:0]

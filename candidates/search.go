@@ -64,7 +64,7 @@ const (
 	budget     = 40_000
 	hardBudget = 160_000
 	// spread is the default of SetSpread.
-	spread = 7
+	spread = 8
 	// longest is the number of letters of the longest observed word.
 	longest = 62
 )
@@ -102,9 +102,9 @@ func (s *Searcher) SetVariety(v lexicon.Variety) {
 
 // plant sets up the trees to search.
 func (s *Searcher) plant() {
-	s.trees = append(s.trees[:0], tree{lex: s.lex, read: &s.forwards})
+	s.trees = append(s.trees[:0], tree{lex: s.lex, read: &s.forwards, halved: s.mirror != nil})
 	if s.mirror != nil {
-		s.trees = append(s.trees, tree{lex: s.mirror.lex, mirror: s.mirror, read: &s.reverse})
+		s.trees = append(s.trees, tree{lex: s.mirror.lex, mirror: s.mirror, read: &s.reverse, halved: true})
 	}
 	if s.house != nil {
 		s.trees = append(s.trees, tree{lex: s.house, house: true, read: &s.forwards})
@@ -112,9 +112,14 @@ func (s *Searcher) plant() {
 	s.forget()
 }
 
-// Search appends the best k words for an observed form in normal form, best
-// first, with scores of at most bound. The observed form itself is among them
-// if it is a word. An observed form of more than 62 letters has no candidates.
+// Search finds the best words by two searches in one queue, forwards and
+// backwards. Of any word's best alignment either the half read first or the other
+// costs no more than the rest; so each search may price a half it has read at
+// twice its cost, and gives up early on words that the other will find.
+//
+// It appends the best k words for an observed form in normal form, best
+// first, with scores of at most bound, and returns the extended slice. The
+// observed form itself is among them if it is a word. An observed form of more than 62 letters has no candidates.
 func (s *Searcher) Search(dst []Candidate, observed []byte, k int, bound float32) []Candidate {
 	s.observed = channel.AppendLetters(s.observed[:0], observed[:min(len(observed), 4*longest+1)])
 	if n := len(s.observed); n == 0 || n > longest || k <= 0 {
@@ -138,7 +143,9 @@ func (s *Searcher) Search(dst []Candidate, observed []byte, k int, bound float32
 		}
 	}
 	for _, f := range s.best {
-		dst = append(dst, f.Candidate)
+		if f.score <= s.limit {
+			dst = append(dst, f.Candidate)
+		}
 	}
 	return dst
 }
@@ -153,10 +160,7 @@ func (s *Searcher) begin(k int, bound float32) {
 	s.queue.reset()
 	s.best, s.visits = s.best[:0], append(s.visits[:0], visit{})
 	s.k, s.limit = k, bound
-	half := 0
-	if s.mirror != nil {
-		half = (len(s.observed) + 1) / 2
-	}
+	half := (len(s.observed) + 1) / 2
 	s.forwards.readForwards(s.channel, s.observed, half)
 	if s.mirror != nil {
 		s.reverse.readBackwards(s.channel, &s.forwards, len(s.observed)-half)
@@ -177,19 +181,23 @@ func (s *Searcher) begin(k int, bound float32) {
 func (s *Searcher) push(from state, at, i int32, cost float32) {
 	p := &s.paths[at]
 	t := &s.trees[p.tree]
+	floor := cost + t.read.floor[i]
 	half := from.half
-	if int(from.i) < t.read.half {
-		half = cost
-		if int(i) > t.read.half {
-			half = from.cost
+	if t.halved {
+		if int(from.i) < t.read.half {
+			half = cost
+			if int(i) > t.read.half {
+				half = from.cost
+			}
 		}
+		floor = max(floor, 2*(half+t.read.toHalf[i]))
 	}
-	score := s.weights.Channel*max(cost+t.read.floor[i], 2*(half+t.read.toHalf[i])) + p.prior
+	score := s.weights.Channel*floor + p.prior
 	if score > s.limit || s.leftCheaper(p, i, cost) {
 		return
 	}
 	if p.letter.Sym == channel.Edge && int(i) == len(s.observed) {
-		if id := t.id(p.base); t.house || int(id) < s.lex.Len() {
+		if id, ok := t.id(p.base); ok {
 			s.tighten(found{Candidate{id, t.house, cost, t.lex.Prior(p.base)}, score})
 		}
 		return

@@ -48,7 +48,7 @@ func buildMirror(t testing.TB, lex *lexicon.Lexicon) *candidates.Mirror {
 	if err != nil {
 		t.Fatal(err)
 	}
-	m, err := candidates.OpenMirror(section)
+	m, err := candidates.OpenMirror(section, lex)
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -190,11 +190,17 @@ func TestSearchHouse(t *testing.T) {
 	s := candidates.NewSearcher(lex, m, candidates.DefaultWeights)
 	s.SetMirror(buildMirror(t, lex))
 	s.SetHouse(house)
-	got := s.Search(nil, []byte("skarow"), 1, math.MaxFloat32)
-	if len(got) != 1 || !got[0].House || string(house.AppendForm(nil, got[0].ID)) != "skarrow" {
-		t.Errorf("skarow: %+v", got)
+	s.SetSpread(math.MaxFloat32)
+	for _, observed := range []string{"skarow", "xkhrrow", "skarrno"} {
+		got := s.Search(nil, []byte(observed), 1, math.MaxFloat32)
+		if len(got) != 1 || !got[0].House || string(house.AppendForm(nil, got[0].ID)) != "skarrow" {
+			t.Fatalf("%s: %+v", observed, got)
+		}
+		if cost := m.Cost(observed, "skarrow"); math.Abs(cost-float64(got[0].Channel)) > 1e-6 {
+			t.Errorf("%s for skarrow costs %v, want %v", observed, got[0].Channel, cost)
+		}
 	}
-	got = s.Search(nil, []byte("vesel"), 1, math.MaxFloat32)
+	got := s.Search(nil, []byte("vesel"), 1, math.MaxFloat32)
 	if len(got) != 1 || got[0].House || string(lex.AppendForm(nil, got[0].ID)) != "vessel" {
 		t.Errorf("vesel: %+v", got)
 	}
@@ -271,14 +277,18 @@ func TestSearchDoesNotAllocate(t *testing.T) {
 }
 
 func TestOpenMirrorRefuses(t *testing.T) {
-	section, err := candidates.BuildMirror(buildLexicon(t, words))
+	lex := buildLexicon(t, words)
+	section, err := candidates.BuildMirror(lex)
 	if err != nil {
 		t.Fatal(err)
 	}
 	for _, cut := range []int{0, 7, 15, 16, 100, len(section) - 1} {
-		if _, err := candidates.OpenMirror(section[:cut]); !errors.Is(err, candidates.ErrSection) {
+		if _, err := candidates.OpenMirror(section[:cut], lex); !errors.Is(err, candidates.ErrSection) {
 			t.Errorf("cut to %d bytes: %v", cut, err)
 		}
+	}
+	if _, err := candidates.OpenMirror(section, buildLexicon(t, words[1:])); !errors.Is(err, candidates.ErrSection) {
+		t.Errorf("mirror of another lexicon: %v", err)
 	}
 }
 
@@ -291,12 +301,13 @@ func FuzzSearch(f *testing.F) {
 		f.Fatal(err)
 	}
 	f.Add([]byte("harbr"), uint32(0), byte(0))
+	f.Add([]byte("h000y"), uint32(81), byte('I')) // a number beyond the words
 	f.Add([]byte("caf\xc3"), uint32(len(section)-9), byte(0xff))
 	f.Fuzz(func(t *testing.T, observed []byte, at uint32, flip byte) {
 		damaged := slices.Clone(section)
 		damaged[int(at)%len(damaged)] ^= flip
 		s := candidates.NewSearcher(lex, m, candidates.DefaultWeights)
-		if mirror, err := candidates.OpenMirror(damaged); err == nil {
+		if mirror, err := candidates.OpenMirror(damaged, lex); err == nil {
 			s.SetMirror(mirror)
 		}
 		for _, c := range s.Search(nil, observed, 5, math.MaxFloat32) {
