@@ -88,9 +88,9 @@ func reverse(word []byte) {
 	}
 }
 
-// OpenMirror reads the section built from a lexicon in place; the bytes must not
-// change afterwards.
-func OpenMirror(section []byte, lex *lexicon.Lexicon) (*Mirror, error) {
+// OpenMirror reads a section in place; the bytes must not change afterwards. It
+// must have been built from the lexicon it is used with; compare Words.
+func OpenMirror(section []byte) (*Mirror, error) {
 	if len(section) < mirrorHeader || string(section[:len(mirrorMagic)]) != mirrorMagic {
 		return nil, fmt.Errorf("%w: unknown beginning", ErrSection)
 	}
@@ -104,11 +104,14 @@ func OpenMirror(section []byte, lex *lexicon.Lexicon) (*Mirror, error) {
 	if err != nil {
 		return nil, fmt.Errorf("%w: mirror: %w", ErrSection, err)
 	}
-	if uint64(reversed.Len()) != words || reversed.Len() != lex.Len() {
-		return nil, fmt.Errorf("%w: mirror of %d words for a lexicon of %d", ErrSection, reversed.Len(), lex.Len())
+	if uint64(reversed.Len()) != words {
+		return nil, fmt.Errorf("%w: mirror of %d words, expected %d", ErrSection, reversed.Len(), words)
 	}
 	return &Mirror{lex: reversed, ids: body[size:], bits: bits.Len64(words)}, nil
 }
+
+// Words is the number of words of the lexicon the mirror was built from.
+func (m *Mirror) Words() int { return m.lex.Len() }
 
 // id gives the id of a word by its number among the reversed words.
 func (m *Mirror) id(number uint32) uint32 {

@@ -34,20 +34,23 @@ type visit struct {
 type tree struct {
 	lex    *lexicon.Lexicon
 	mirror *Mirror // nil when read forwards
+	words  uint32  // of the lexicon that ids count in
 	house  bool
 	read   *reading
 	halved bool // searched only for words whose half read first is the cheaper
 	root   int32
 }
 
-// id gives the id of a word from its number in the tree; false if there is none,
-// which damaged bytes alone can bring about.
+// id gives the id of a word from its number in the tree; false if the lexicon
+// has none, which only damaged bytes or a foreign mirror bring about.
 func (t *tree) id(number uint32) (uint32, bool) {
-	n := uint32(t.lex.Len())
-	if t.mirror != nil && number < n {
+	if int(number) >= t.lex.Len() {
+		return 0, false
+	}
+	if t.mirror != nil {
 		number = t.mirror.id(number)
 	}
-	return number, number < n
+	return number, number < t.words
 }
 
 const (

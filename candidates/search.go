@@ -102,12 +102,13 @@ func (s *Searcher) SetVariety(v lexicon.Variety) {
 
 // plant sets up the trees to search.
 func (s *Searcher) plant() {
-	s.trees = append(s.trees[:0], tree{lex: s.lex, read: &s.forwards, halved: s.mirror != nil})
+	words := uint32(s.lex.Len())
+	s.trees = append(s.trees[:0], tree{lex: s.lex, words: words, read: &s.forwards, halved: s.mirror != nil})
 	if s.mirror != nil {
-		s.trees = append(s.trees, tree{lex: s.mirror.lex, mirror: s.mirror, read: &s.reverse, halved: true})
+		s.trees = append(s.trees, tree{lex: s.mirror.lex, mirror: s.mirror, words: words, read: &s.reverse, halved: true})
 	}
 	if s.house != nil {
-		s.trees = append(s.trees, tree{lex: s.house, house: true, read: &s.forwards})
+		s.trees = append(s.trees, tree{lex: s.house, words: uint32(s.house.Len()), house: true, read: &s.forwards})
 	}
 	s.forget()
 }
