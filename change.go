@@ -1,6 +1,7 @@
 package foulcase
 
 import (
+	"math"
 	"slices"
 
 	"example.org/foulcase/candidates/lexicon"
@@ -63,7 +64,11 @@ func (j *judge) proposeConfusables(i int) {
 // proposeCandidates weighs what a form that is no word may stand for.
 func (j *judge) proposeCandidates(i int) {
 	sl := &j.slots[i]
-	for _, c := range j.finder.find(sl.token.Norm) {
+	reach := float32(slipReach)
+	if sl.token.Case == text.Title && i > 0 {
+		reach = nameReach
+	}
+	for _, c := range j.finder.find(sl.token.Norm, reach) {
 		ch := change{from: i, to: i + 1, kind: Nonword, cost: float64(c.cost), house: c.house}
 		if c.spaced {
 			ch.kind = Runon
@@ -111,37 +116,40 @@ func (j *judge) consider(c change, lo int, kept *slot) {
 	for _, sl := range j.slots[c.from:c.to] {
 		typed += sl.score
 	}
-	c.score = w.Slip.Of(c.kind) - w.Channel*c.cost + j.penalties(&c, j.words[lo:])
+	c.score = w.Slip.Of(c.kind) - w.Channel*c.cost + j.evidence(&c, j.words[lo:])
 	if kept != nil {
 		c.score += kept.score
 	}
-	floor := (typed - c.score - j.hopeless) / w.LanguageModel
+	hopeless := j.hopeless
+	if j.slots[c.from].status != known {
+		hopeless = math.Inf(1) // what is no word needs its candidates, however poor
+	}
+	floor := (typed - c.score - hopeless) / w.LanguageModel
 	c.gain = j.gain(j.slots[c.from].from, j.slots[c.to-1].to, j.words[lo:], floor)
-	if c.gain < floor && j.slots[c.from].status == known {
+	if c.gain < floor {
 		j.words = j.words[:lo]
 		return
+	}
+	if c.kind == Realword && j.inflections(j.slots[c.from].id, j.words[lo]) {
+		c.score -= w.Inflection
 	}
 	c.lo, c.hi = lo, len(j.words)
 	j.changes = append(j.changes, c)
 }
 
-// penalties is the evidence about a change that neither model holds: the
-// document's own use of the word, capitals, inflection.
-func (j *judge) penalties(c *change, words []uint32) float64 {
+// evidence is what is known about a change that neither model holds: the
+// document's own use of the word, and capitals.
+func (j *judge) evidence(c *change, words []uint32) float64 {
 	w, lex := j.e.judgement, j.e.lexicon
 	if c.house != "" {
 		return -w.House
 	}
 	sl, sum := &j.slots[c.from], 0.0
 	if int(words[0]) < lex.Len() {
-		e := lex.Entry(words[0])
-		sum += w.Recurrence * j.recurring.word(words[0], float64(e.Prior), 0)
-		if sl.token.Case == text.Title && c.from > 0 && e.Cases&lexicon.TitleCase == 0 {
+		sum += w.Recurrence * j.recurring.word(words[0], lex, 0)
+		if sl.token.Case == text.Title && c.from > 0 && lex.Entry(words[0]).Cases&lexicon.TitleCase == 0 {
 			sum -= w.Capital
 		}
-	}
-	if c.kind == Realword && j.inflections(sl.id, words[0]) {
-		sum -= w.Inflection
 	}
 	return sum
 }

@@ -93,7 +93,9 @@ func newEngine(file *modelfile.File) (*Engine, error) {
 		{SectionChannel, opener(&e.channel, channel.Open)},
 		{SectionLM, opener(&e.lm, lm.Open)},
 		{SectionSpelling, opener(&e.spelling, lm.OpenSpelling)},
-		{SectionMirror, opener(&e.mirror, candidates.OpenMirror)},
+		{SectionMirror, opener(&e.mirror, func(body []byte) (*candidates.Mirror, error) {
+			return candidates.OpenMirror(body, e.lexicon)
+		})},
 		{SectionConfusables, opener(&e.confusables, candidates.OpenConfusables)},
 		{SectionJudgement, opener(&e.judgement, parseJudgement)},
 	}

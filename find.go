@@ -1,19 +1,27 @@
 package foulcase
 
 import (
+	"cmp"
+	"slices"
+
 	"example.org/foulcase/candidates"
 	"example.org/foulcase/candidates/lexicon"
 	"example.org/foulcase/lm/lattice"
 )
 
 const (
-	// depth is how many candidates of a form that is no word are weighed.
-	depth = 12
-	// maxScore is the weighted cost, nats, beyond which a word is not looked for.
-	maxScore = 60
+	// depth is how many candidates of a form that is no word are weighed in a
+	// sentence.
+	depth = 8
+	// slipReach is the weighted cost, nats, up to which they are looked for:
+	// beyond it a new word is the likelier reading of any form. nameReach is the
+	// same for a form with a capital inside a sentence, likely a name.
+	slipReach, nameReach = 18, 14
+	// rankReach is the same for a ranking, where no new word competes.
+	rankReach = 60
 	// maxCached bounds the remembered searches; all are forgotten when it is
 	// reached.
-	maxCached = 1 << 13
+	maxCached = 1 << 14
 )
 
 // proposal is one reading of a form by itself, before any context.
@@ -35,14 +43,20 @@ type finder struct {
 	searcher *candidates.Searcher
 	house    *House
 	variety  Variety
-	cache    map[string][]proposal // of find
+	cache    map[string]searched
 	found    []candidates.Candidate
 	runons   []candidates.RunOn
 	form     []byte
 }
 
+// searched is a remembered search and how far it reached.
+type searched struct {
+	found []proposal
+	reach float32
+}
+
 func newFinder(e *Engine) finder {
-	f := finder{e: e, searcher: e.newSearcher(), cache: make(map[string][]proposal)}
+	f := finder{e: e, searcher: e.newSearcher(), cache: make(map[string]searched)}
 	return f
 }
 
@@ -73,27 +87,32 @@ func (f *finder) hold(v Variety, h *House) {
 
 // find gives the readings of a form that is no word, best first by themselves.
 // The slice is the finder's and must not be changed.
-func (f *finder) find(form []byte) []proposal {
-	if p, ok := f.cache[string(form)]; ok {
-		return p
+func (f *finder) find(form []byte, reach float32) []proposal {
+	if p, ok := f.cache[string(form)]; ok && p.reach >= reach {
+		return p.found
 	}
 	if len(f.cache) >= maxCached {
 		clear(f.cache)
 	}
-	p := f.search(form, depth)
-	f.cache[string(form)] = p
+	p := f.search(form, depth, reach)
+	w := f.e.judgement
+	score := func(p *proposal) float64 { return w.RankChannel*float64(p.cost) - w.RankPrior*p.prior }
+	slices.SortStableFunc(p, func(a, b proposal) int { return cmp.Compare(score(&a), score(&b)) })
+	p = slices.Clip(p[:min(depth, len(p))])
+	f.cache[string(form)] = searched{p, reach}
 	return p
 }
 
-// search finds words, possessives and run-ons alike: at most k of each.
-func (f *finder) search(form []byte, k int) []proposal {
+// search finds words, possessives and run-ons alike, at most k of each, with
+// weighted costs of at most bound.
+func (f *finder) search(form []byte, k int, bound float32) []proposal {
 	var out []proposal
-	f.found = f.searcher.Search(f.found[:0], form, k, maxScore)
+	f.found = f.searcher.Search(f.found[:0], form, k, bound)
 	for _, c := range f.found {
 		out = append(out, f.propose(c))
 	}
 	if clitic, ok := f.e.lexicon.ID([]byte("'s")); ok {
-		f.found = f.searcher.Possessives(f.found[:0], form, k, maxScore)
+		f.found = f.searcher.Possessives(f.found[:0], form, k, bound)
 		for _, c := range f.found {
 			p := f.propose(c)
 			p.ids[p.n] = clitic
@@ -101,7 +120,7 @@ func (f *finder) search(form []byte, k int) []proposal {
 			out = append(out, p)
 		}
 	}
-	f.runons = f.searcher.RunOns(f.runons[:0], form, k/2, maxScore)
+	f.runons = f.searcher.RunOns(f.runons[:0], form, k/2, bound)
 	for _, r := range f.runons {
 		p := proposal{n: r.N, cost: r.Channel, prior: float64(r.Prior), spaced: true}
 		copy(p.ids[:], r.IDs[:r.N])

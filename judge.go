@@ -2,6 +2,7 @@ package foulcase
 
 import (
 	"bytes"
+	"slices"
 
 	"example.org/foulcase/candidates/lexicon"
 	"example.org/foulcase/internal/text"
@@ -14,7 +15,7 @@ import (
 const (
 	latticeStates = 64  // language-model states kept at a node
 	latticeMargin = 14  // nats below a node's best at which a state is dropped
-	hopeless      = 8.0 // nats below the typed reading at which a change is not weighed
+	hopeless      = 7.0 // nats below the typed reading at which a change is not weighed
 )
 
 // judge weighs one sentence at a time. It owns every buffer that takes, so
@@ -38,6 +39,7 @@ type judge struct {
 	changes []change
 	words   []uint32 // what the changes put in, end to end
 	form    []byte   // scratch
+	ahead   [2]lm.State
 	// shouting: the sentence is in capitals, so capitals say nothing of a word.
 	shouting bool
 	hopeless float64 // see the constant; the ledger lifts it
@@ -126,7 +128,7 @@ func (j *judge) classify(sl *slot) {
 		sl.score = -e.judgement.Variety
 	default:
 		sl.status, sl.id = known, first
-		sl.score = e.judgement.Recurrence * j.recurring.word(first, float64(e.lexicon.Prior(first)), 1)
+		sl.score = e.judgement.Recurrence * j.recurring.word(first, e.lexicon, 1)
 	}
 }
 
@@ -173,12 +175,12 @@ func (j *judge) spelt(id uint32) bool {
 
 // scoreTyped runs the language model over the sentence as it stands.
 func (j *judge) scoreTyped() {
-	j.states, j.logp = j.states[:0], j.logp[:0]
-	state := j.e.lm.Begin(j.e.lexicon.ClassID(lexicon.Begin))
-	for _, id := range j.ids {
-		p, next := j.e.lm.Score(state, id)
-		j.states, j.logp = append(j.states, state), append(j.logp, p)
-		state = next
+	n := len(j.ids)
+	j.states = slices.Grow(j.states[:0], n+1)[:n+1]
+	j.logp = slices.Grow(j.logp[:0], n)[:n]
+	j.states[0] = j.e.lm.Begin(j.e.lexicon.ClassID(lexicon.Begin))
+	for i, id := range j.ids {
+		j.logp[i] = j.e.lm.Advance(&j.states[i], id, &j.states[i+1])
 	}
 }
 
@@ -188,30 +190,32 @@ func (j *judge) scoreTyped() {
 // any number under it.
 func (j *judge) gain(from, to int, words []uint32, floor float64) float64 {
 	m := j.e.lm
-	state := j.states[from]
+	state, next := &j.ahead[0], &j.ahead[1]
+	*state = j.states[from]
 	sum := 0.0
-	for i := from; i < to; i++ {
-		sum -= float64(j.logp[i])
-	}
-	for _, w := range words {
-		p, next := m.Score(state, w)
-		sum += float64(p)
-		state = next
+	for _, p := range j.logp[from:to] {
+		sum -= float64(p)
 	}
 	// What follows can gain no more than its typed cost, for log p <= 0.
 	reach := min(len(j.ids), to+m.Order()-1)
 	hope := 0.0
-	for i := to; i < reach; i++ {
-		hope -= float64(j.logp[i])
+	for _, p := range j.logp[to:reach] {
+		hope -= float64(p)
 	}
-	for i := to; i < reach && state != j.states[i]; i++ {
+	for _, w := range words {
 		if sum+hope < floor {
 			return sum + hope
 		}
-		p, next := m.Score(state, j.ids[i])
-		sum += float64(p) - float64(j.logp[i])
+		sum += float64(m.Advance(state, w, next))
+		state, next = next, state
+	}
+	for i := to; i < reach && *state != j.states[i]; i++ {
+		if sum+hope < floor {
+			return sum + hope
+		}
+		sum += float64(m.Advance(state, j.ids[i], next) - j.logp[i])
 		hope += float64(j.logp[i])
-		state = next
+		state, next = next, state
 	}
 	return sum
 }

@@ -36,6 +36,11 @@ func TestThresholdsFollowTheBudget(t *testing.T) {
 	}
 }
 
+// share is a frequency that every word has.
+type share float64
+
+func (s share) Prior(uint32) float32 { return float32(math.Log(float64(s))) }
+
 func TestRecurrenceComparesWithExpectation(t *testing.T) {
 	var r recurrence
 	r.init(3)
@@ -45,7 +50,7 @@ func TestRecurrenceComparesWithExpectation(t *testing.T) {
 	r.addWord(1)
 	r.addForm([]byte("zilverbank"))
 	r.addForm([]byte("zilverbank"))
-	often, seldom := math.Log(0.9), math.Log(1e-7)
+	often, seldom := share(0.9), share(1e-7)
 	if got := r.word(0, often, 1); got > math.Log(3) {
 		t.Errorf("a word as frequent as everywhere has evidence %v", got)
 	}

@@ -52,7 +52,7 @@ func (e *Engine) Rank(word string, o RankOptions) Ranking {
 
 	price := j.pricer(o)
 	var scores []float64
-	for _, p := range j.finder.search(form, max(o.K, rankDepth)) {
+	for _, p := range j.finder.search(form, max(o.K, rankDepth), rankReach) {
 		if !j.allSpelt(p.words()) {
 			continue
 		}

@@ -72,15 +72,18 @@ func (r *recurrence) decay() {
 	}
 }
 
-// word is the evidence for a lexicon word whose log relative frequency in
-// running text is prior: the log of how many times more often than expected
-// the document has it, other occurrences than `own` counted. At least 0, nats.
-func (r *recurrence) word(id uint32, prior float64, own int) float64 {
+// prior tells how frequent a word is in running text: log share, nats.
+type prior interface{ Prior(id uint32) float32 }
+
+// word is the evidence for a lexicon word: the log of how many times more often
+// than expected the document has it, other occurrences than its `own` counted.
+// At least 0, nats.
+func (r *recurrence) word(id uint32, lex prior, own int) float64 {
 	n := float64(max(0, int(r.words[id])-own))
 	if n == 0 {
 		return 0
 	}
-	return math.Log(1 + n/(1+r.total*math.Exp(prior)))
+	return math.Log(1 + n/(1+r.total*math.Exp(float64(lex.Prior(id)))))
 }
 
 // form is the evidence for a form the lexicon lacks, as word.

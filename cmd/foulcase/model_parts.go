@@ -260,7 +260,7 @@ func (b *builder) findConfusables(ctx context.Context) error {
 	if err != nil {
 		return err
 	}
-	mirror, err := candidates.OpenMirror(b.held[foulcase.SectionMirror])
+	mirror, err := candidates.OpenMirror(b.held[foulcase.SectionMirror], lex)
 	if err != nil {
 		return err
 	}
