@@ -93,9 +93,7 @@ func newEngine(file *modelfile.File) (*Engine, error) {
 		{SectionChannel, opener(&e.channel, channel.Open)},
 		{SectionLM, opener(&e.lm, lm.Open)},
 		{SectionSpelling, opener(&e.spelling, lm.OpenSpelling)},
-		{SectionMirror, opener(&e.mirror, func(body []byte) (*candidates.Mirror, error) {
-			return candidates.OpenMirror(body, e.lexicon)
-		})},
+		{SectionMirror, opener(&e.mirror, candidates.OpenMirror)},
 		{SectionConfusables, opener(&e.confusables, candidates.OpenConfusables)},
 		{SectionJudgement, opener(&e.judgement, parseJudgement)},
 	}
@@ -108,11 +106,17 @@ func newEngine(file *modelfile.File) (*Engine, error) {
 			return nil, err
 		}
 	}
-	if got, want := e.lm.Vocabulary(), e.lexicon.Vocabulary(); got != want {
-		return nil, fmt.Errorf("language model has %d words and the lexicon %d: they were not built together; train the one with the other", got, want)
-	}
-	if got, want := e.confusables.Words(), e.lexicon.Len(); got != want {
-		return nil, fmt.Errorf("table of confusables has %d words and the lexicon %d: they were not built together; rebuild the model", got, want)
+	for _, part := range []struct {
+		name      string
+		got, want int
+	}{
+		{SectionLM, e.lm.Vocabulary(), e.lexicon.Vocabulary()},
+		{SectionMirror, e.mirror.Words(), e.lexicon.Len()},
+		{SectionConfusables, e.confusables.Words(), e.lexicon.Len()},
+	} {
+		if part.got != part.want {
+			return nil, fmt.Errorf("section %q counts %d words where the lexicon has %d: they were not built together; rebuild the model", part.name, part.got, part.want)
+		}
 	}
 	e.judges.New = func() any { return newJudge(e) }
 	return e, nil

@@ -260,7 +260,7 @@ func (b *builder) findConfusables(ctx context.Context) error {
 	if err != nil {
 		return err
 	}
-	mirror, err := candidates.OpenMirror(b.held[foulcase.SectionMirror], lex)
+	mirror, err := candidates.OpenMirror(b.held[foulcase.SectionMirror])
 	if err != nil {
 		return err
 	}
