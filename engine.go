@@ -13,6 +13,7 @@
 package foulcase
 
 import (
+	"bytes"
 	"fmt"
 	"strings"
 	"sync"
@@ -172,10 +173,23 @@ func describeNGrams(m *lm.Model) string {
 	return "n-grams by order: " + strings.Join(counts, ", ")
 }
 
-// Known reports whether the lexicon has the form, its case aside.
+// Known reports whether the lexicon has a word, its case aside: as it stands,
+// as a possessive, or as a compound of known words.
 func (e *Engine) Known(word string) bool {
-	_, ok := e.lexicon.ID(text.Fold(nil, []byte(word)))
-	return ok
+	return e.knows(text.Fold(nil, []byte(word)))
+}
+
+func (e *Engine) knows(form []byte) bool {
+	for piece := range bytes.SplitSeq(form, []byte("-")) {
+		if _, ok := e.lexicon.ID(piece); ok {
+			continue
+		}
+		stem, possessive := bytes.CutSuffix(piece, []byte("'s"))
+		if _, ok := e.lexicon.ID(stem); !possessive || !ok {
+			return false
+		}
+	}
+	return true
 }
 
 // Formats names the document formats that Options.Format takes.

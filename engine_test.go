@@ -97,8 +97,10 @@ func TestOpenFile(t *testing.T) {
 	if err != nil {
 		t.Fatal(err)
 	}
-	if !e.Known("Berth") || e.Known("brth") {
-		t.Error("Known is wrong about berth or brth")
+	for word, want := range map[string]bool{"Berth": true, "pilot’s": true, "well-known": true, "brth": false, "brth's": false, "well-knwon": false, "": false} {
+		if e.Known(word) != want {
+			t.Errorf("Known(%q) = %v", word, !want)
+		}
 	}
 	if e.Hash() != engine().Hash() || len(e.Hash()) != 16 {
 		t.Error("the same model has another hash")

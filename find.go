@@ -1,6 +1,7 @@
 package foulcase
 
 import (
+	"bytes"
 	"cmp"
 	"slices"
 
@@ -101,6 +102,17 @@ func (f *finder) find(form []byte, reach float32) []proposal {
 	p = slices.Clip(p[:min(depth, len(p))])
 	f.cache[string(form)] = searched{p, reach}
 	return p
+}
+
+// rank gives the readings of a form by itself. Words written apart are read as
+// one with spaces too many.
+func (f *finder) rank(form []byte, k int) []proposal {
+	pieces := bytes.Fields(form)
+	found := f.search(bytes.Join(pieces, nil), k, rankReach)
+	for i := range found {
+		found[i].cost += float32(max(0, len(pieces)-1)) * f.e.channel.Prices().Split
+	}
+	return found
 }
 
 // search finds words, possessives and run-ons alike, at most k of each, with

@@ -47,12 +47,11 @@ func (e *Engine) Rank(word string, o RankOptions) Ranking {
 		o.K = 10
 	}
 	form := text.Fold(nil, []byte(word))
-	_, inLexicon := e.lexicon.ID(form)
-	r := Ranking{Word: word, Known: inLexicon || j.house.has(form), Candidates: []Candidate{}}
+	r := Ranking{Word: word, Known: e.knows(form) || j.house.has(form), Candidates: []Candidate{}}
 
 	price := j.pricer(o)
 	var scores []float64
-	for _, p := range j.finder.search(form, max(o.K, rankDepth), rankReach) {
+	for _, p := range j.finder.rank(form, max(o.K, rankDepth)) {
 		if !j.allSpelt(p.words()) {
 			continue
 		}

@@ -1,12 +1,14 @@
 package main
 
 import (
+	"bytes"
 	"context"
 	"io"
 	"strings"
 
 	"example.org/foulcase"
 	"example.org/foulcase/eval"
+	"example.org/foulcase/internal/text"
 	"github.com/spf13/pflag"
 )
 
@@ -44,6 +46,7 @@ type evalTextFlags struct {
 	engine  engineFlags
 	columns string
 	clean   bool
+	heldOut bool
 	budget  rate
 	jobs    *count
 	emit    *choice
@@ -54,6 +57,7 @@ func declareEvalText(fs *pflag.FlagSet) action {
 	f.engine.declare(fs)
 	fs.StringVar(&f.columns, "columns", "source,reference", "`NAMES` of the columns")
 	fs.BoolVar(&f.clean, "clean", false, "the files hold good text")
+	fs.BoolVar(&f.heldOut, "held-out-only", false, "of good text read only the documents that lm train --hold-out leaves out")
 	fs.Var(&f.budget, "budget", "false alarms to bear in 1,000 words of good text (default: the model's own)")
 	f.jobs = jobsFlag(fs)
 	f.emit = emitFlag(fs)
@@ -65,8 +69,11 @@ func (f *evalTextFlags) run(c *console, files []string) (status, error) {
 	if err != nil {
 		return trouble, misusef("--columns: %v", err)
 	}
-	if len(files) == 0 {
+	switch {
+	case len(files) == 0:
 		return trouble, misusef("no file to measure on")
+	case f.heldOut && !f.clean:
+		return trouble, misusef("--held-out-only goes with --clean")
 	}
 	e, o, err := f.engine.open()
 	if err != nil {
@@ -101,7 +108,7 @@ func (f *evalTextFlags) run(c *console, files []string) (status, error) {
 // read reads the items of one file, with the errors in them.
 func (f *evalTextFlags) read(c *console, file string, columns []eval.Column, known func(string) bool) ([]eval.Item, error) {
 	if f.clean {
-		return readData(c, file, eval.ReadClean)
+		return readData(c, file, f.readClean)
 	}
 	sentences, err := readData(c, file, func(name string, r io.Reader) ([]eval.Sentence, error) {
 		return eval.ReadSentences(name, r, columns)
@@ -114,6 +121,25 @@ func (f *evalTextFlags) read(c *console, file string, columns []eval.Column, kno
 		items[i] = eval.Gold(s, known)
 	}
 	return items, nil
+}
+
+// readClean reads good text, or those of its documents that no model learned
+// from.
+func (f *evalTextFlags) readClean(file string, r io.Reader) ([]eval.Item, error) {
+	if !f.heldOut {
+		return eval.ReadClean(file, r)
+	}
+	var kept bytes.Buffer
+	for doc, err := range text.Documents(r) {
+		if err != nil {
+			return nil, err
+		}
+		if text.HeldOut(doc) {
+			kept.Write(doc)
+			kept.WriteString(paragraphBreak)
+		}
+	}
+	return eval.ReadClean(file, &kept)
 }
 
 // flagAll proofreads all items, those of one document that follow one another
