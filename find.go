@@ -47,7 +47,6 @@ type finder struct {
 	cache    map[string]searched
 	found    []candidates.Candidate
 	runons   []candidates.RunOn
-	form     []byte
 }
 
 // searched is a remembered search and how far it reached.
@@ -57,8 +56,7 @@ type searched struct {
 }
 
 func newFinder(e *Engine) finder {
-	f := finder{e: e, searcher: e.newSearcher(), cache: make(map[string]searched)}
-	return f
+	return finder{e: e, searcher: e.newSearcher(), cache: make(map[string]searched)}
 }
 
 // newSearcher returns a searcher that orders by the weights of isolated words.
@@ -86,22 +84,31 @@ func (f *finder) hold(v Variety, h *House) {
 	}
 }
 
-// find gives the readings of a form that is no word, best first by themselves.
-// The slice is the finder's and must not be changed.
+// find gives the readings of a form that is no word with weighted costs of at
+// most reach, best first by themselves. What was looked for before does not
+// change the answer. The slice is the finder's and must not be changed.
 func (f *finder) find(form []byte, reach float32) []proposal {
-	if p, ok := f.cache[string(form)]; ok && p.reach >= reach {
-		return p.found
+	p, ok := f.cache[string(form)]
+	if !ok || p.reach < reach {
+		if len(f.cache) >= maxCached {
+			clear(f.cache)
+		}
+		found := f.search(form, depth, reach)
+		slices.SortStableFunc(found, func(a, b proposal) int { return cmp.Compare(f.score(&a), f.score(&b)) })
+		p = searched{slices.Clip(found[:min(depth, len(found))]), reach}
+		f.cache[string(form)] = p
 	}
-	if len(f.cache) >= maxCached {
-		clear(f.cache)
+	within := len(p.found)
+	for within > 0 && f.score(&p.found[within-1]) > float64(reach) {
+		within--
 	}
-	p := f.search(form, depth, reach)
+	return p.found[:within]
+}
+
+// score is the weighted cost of a proposal by itself, nats.
+func (f *finder) score(p *proposal) float64 {
 	w := f.e.judgement
-	score := func(p *proposal) float64 { return w.RankChannel*float64(p.cost) - w.RankPrior*p.prior }
-	slices.SortStableFunc(p, func(a, b proposal) int { return cmp.Compare(score(&a), score(&b)) })
-	p = slices.Clip(p[:min(depth, len(p))])
-	f.cache[string(form)] = searched{p, reach}
-	return p
+	return w.RankChannel*float64(p.cost) - w.RankPrior*p.prior
 }
 
 // rank gives the readings of a form by itself. Words written apart are read as
