@@ -93,7 +93,7 @@ func TestBigSearchEqualsScan(t *testing.T) {
 // best 20, and the median and 99th percentile of the time of a query.
 func BenchmarkSearch(b *testing.B) {
 	m, lex := fitShared(b), bigLexicon(b)
-	s := candidates.NewSearcher(lex, m, candidates.DefaultWeights())
+	s := candidates.NewSearcher(lex, m, candidates.DefaultWeights)
 	s.SetMirror(buildMirror(b, lex))
 	for _, list := range []string{"toefl-spell", "wikipedia-common", "birkbeck"} {
 		pairs := sharedPairs(b, "dev/"+list+".tsv")

@@ -21,7 +21,7 @@ func buildConfusables(t testing.TB, jobs int) []byte {
 		t.Fatal(err)
 	}
 	section, err := candidates.BuildConfusables(context.Background(), lex, func() *candidates.Searcher {
-		s := candidates.NewSearcher(lex, m, candidates.DefaultWeights())
+		s := candidates.NewSearcher(lex, m, candidates.DefaultWeights)
 		s.SetSpread(30) // a model of twenty slips finds everything else unlikely
 		return s
 	}, candidates.ConfusableOptions{Homophones: homophones, MostCost: 18, Jobs: jobs})
@@ -78,7 +78,7 @@ func TestConfusablesStopWhenAsked(t *testing.T) {
 	ctx, cancel := context.WithCancel(context.Background())
 	cancel()
 	_, err := candidates.BuildConfusables(ctx, lex, func() *candidates.Searcher {
-		return candidates.NewSearcher(lex, m, candidates.DefaultWeights())
+		return candidates.NewSearcher(lex, m, candidates.DefaultWeights)
 	}, candidates.ConfusableOptions{})
 	if !errors.Is(err, context.Canceled) {
 		t.Errorf("error %v", err)

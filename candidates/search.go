@@ -15,7 +15,7 @@ type Weights struct {
 
 // DefaultWeights are the weights that ranked isolated words best on the
 // development lists (tuned in steps of 0.2).
-func DefaultWeights() Weights { return Weights{Channel: 1, Prior: 0.8} }
+var DefaultWeights = Weights{Channel: 1, Prior: 0.8}
 
 // Candidate is a word that may have been meant.
 type Candidate struct {

@@ -187,7 +187,7 @@ func TestMirrorKeepsIDs(t *testing.T) {
 func TestSearchHouse(t *testing.T) {
 	lex, m := buildLexicon(t, words), fitSlips(t)
 	house := buildLexicon(t, []string{"skarrow", "skarrowman", "tidewaiter"})
-	s := candidates.NewSearcher(lex, m, candidates.DefaultWeights())
+	s := candidates.NewSearcher(lex, m, candidates.DefaultWeights)
 	s.SetMirror(buildMirror(t, lex))
 	s.SetHouse(house)
 	s.SetSpread(math.MaxFloat32)
@@ -218,7 +218,7 @@ func TestSearchVariety(t *testing.T) {
 	if err != nil {
 		t.Fatal(err)
 	}
-	s := candidates.NewSearcher(lex, fitSlips(t), candidates.DefaultWeights())
+	s := candidates.NewSearcher(lex, fitSlips(t), candidates.DefaultWeights)
 	s.SetMirror(buildMirror(t, lex))
 	s.SetSpread(math.MaxFloat32)
 	for variety, want := range map[lexicon.Variety][]string{
@@ -238,7 +238,7 @@ func TestSearchVariety(t *testing.T) {
 
 func TestSearchKeepsWithinItsBounds(t *testing.T) {
 	lex, m := buildLexicon(t, words), fitSlips(t)
-	w := candidates.DefaultWeights()
+	w := candidates.DefaultWeights
 	s := candidates.NewSearcher(lex, m, w)
 	all := s.Search(nil, []byte("mooring"), 20, math.MaxFloat32)
 	if len(all) < 2 {
@@ -266,7 +266,7 @@ func TestSearchKeepsWithinItsBounds(t *testing.T) {
 
 func TestSearchDoesNotAllocate(t *testing.T) {
 	lex, m := buildLexicon(t, words), fitSlips(t)
-	s := candidates.NewSearcher(lex, m, candidates.DefaultWeights())
+	s := candidates.NewSearcher(lex, m, candidates.DefaultWeights)
 	s.SetMirror(buildMirror(t, lex))
 	var dst []candidates.Candidate
 	search := func() { dst = s.Search(dst[:0], []byte("moorring"), 20, math.MaxFloat32) }
@@ -306,7 +306,7 @@ func FuzzSearch(f *testing.F) {
 	f.Fuzz(func(t *testing.T, observed []byte, at uint32, flip byte) {
 		damaged := slices.Clone(section)
 		damaged[int(at)%len(damaged)] ^= flip
-		s := candidates.NewSearcher(lex, m, candidates.DefaultWeights())
+		s := candidates.NewSearcher(lex, m, candidates.DefaultWeights)
 		if mirror, err := candidates.OpenMirror(damaged); err == nil {
 			s.SetMirror(mirror)
 		}

@@ -11,7 +11,7 @@ import (
 
 func TestRunOns(t *testing.T) {
 	lex, m := buildLexicon(t, words), fitSlips(t)
-	s := candidates.NewSearcher(lex, m, candidates.DefaultWeights())
+	s := candidates.NewSearcher(lex, m, candidates.DefaultWeights)
 	for _, test := range []struct{ observed, want string }{
 		{"pilotboat", "pilot boat"},
 		{"alot", "a lot"},
@@ -43,10 +43,10 @@ func TestRunOns(t *testing.T) {
 
 func TestRunOnsKeepTheBest(t *testing.T) {
 	lex, m := buildLexicon(t, words), fitSlips(t)
-	s := candidates.NewSearcher(lex, m, candidates.DefaultWeights())
+	s := candidates.NewSearcher(lex, m, candidates.DefaultWeights)
 	all := s.RunOns(nil, []byte("withinthe"), 100, math.MaxFloat32)
 	if !slices.IsSortedFunc(all, func(a, b candidates.RunOn) int {
-		return int(math.Copysign(1, float64(a.Score(candidates.DefaultWeights())-b.Score(candidates.DefaultWeights()))))
+		return int(math.Copysign(1, float64(a.Score(candidates.DefaultWeights)-b.Score(candidates.DefaultWeights))))
 	}) {
 		t.Error("readings out of order")
 	}
@@ -57,7 +57,7 @@ func TestRunOnsKeepTheBest(t *testing.T) {
 
 func TestJoin(t *testing.T) {
 	lex, m := buildLexicon(t, words), fitSlips(t)
-	s := candidates.NewSearcher(lex, m, candidates.DefaultWeights())
+	s := candidates.NewSearcher(lex, m, candidates.DefaultWeights)
 	c, ok := s.Join([]byte("with"), []byte("in"))
 	if !ok || string(lex.AppendForm(nil, c.ID)) != "within" || c.Channel != m.Prices().Split {
 		t.Errorf("with in: %+v %v", c, ok)
@@ -69,7 +69,7 @@ func TestJoin(t *testing.T) {
 
 func TestPossessives(t *testing.T) {
 	lex, m := buildLexicon(t, words), fitSlips(t)
-	s := candidates.NewSearcher(lex, m, candidates.DefaultWeights())
+	s := candidates.NewSearcher(lex, m, candidates.DefaultWeights)
 	for observed, want := range map[string]string{"harbur's": "harbour", "tugs": "tug", "tug's": "tug", "tugz": "", "s": "", "": ""} {
 		got := s.Possessives(nil, []byte(observed), 1, math.MaxFloat32)
 		if want == "" {
