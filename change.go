@@ -29,6 +29,9 @@ func (j *judge) propose() {
 		switch sl.status {
 		case known:
 			j.proposeConfusables(i)
+			if j.e.lexicon.Prior(sl.id) < rareWord && sl.to-sl.from == 1 {
+				j.proposeCandidates(i)
+			}
 		case unknown, foreign:
 			j.proposeCandidates(i)
 		}
@@ -61,17 +64,23 @@ func (j *judge) proposeConfusables(i int) {
 	}
 }
 
-// proposeCandidates weighs what a form that is no word may stand for.
+// proposeCandidates weighs what a form that is no word, or a rare one, may
+// stand for.
 func (j *judge) proposeCandidates(i int) {
 	sl := &j.slots[i]
 	reach := float32(slipReach)
-	if sl.token.Case == text.Title && i > 0 {
-		reach = nameReach
+	if sl.status == known || sl.token.Case == text.Title && i > j.lead {
+		reach = likelyReach
 	}
 	for _, c := range j.finder.find(sl.token.Norm, reach) {
 		ch := change{from: i, to: i + 1, kind: Nonword, cost: float64(c.cost), house: c.house}
-		if c.spaced {
+		switch {
+		case c.spaced:
 			ch.kind = Runon
+		case sl.status == known && c.ids[0] == sl.id:
+			continue
+		case sl.status == known:
+			ch.kind = Realword
 		}
 		lo := len(j.words)
 		j.words = append(j.words, c.words()...)
@@ -147,11 +156,19 @@ func (j *judge) evidence(c *change, words []uint32) float64 {
 	sl, sum := &j.slots[c.from], 0.0
 	if int(words[0]) < lex.Len() {
 		sum += w.Recurrence * j.recurring.word(words[0], lex, 0)
-		if sl.token.Case == text.Title && c.from > 0 && lex.Entry(words[0]).Cases&lexicon.TitleCase == 0 {
+		name := sl.token.Case == text.Title && c.from > j.lead && lex.Entry(words[0]).Usual != lexicon.TitleCase
+		if name || j.compounded(c.from) {
 			sum -= w.Capital
 		}
 	}
 	return sum
+}
+
+// compounded reports whether a slot is a piece of a hyphened compound, which
+// the words beside it say little of.
+func (j *judge) compounded(i int) bool {
+	hyphen := func(k int) bool { return k >= 0 && k < len(j.slots) && j.slots[k].token.Kind == text.Hyphen }
+	return hyphen(i-1) && j.slots[i].token.Glued || hyphen(i+1) && j.slots[i+1].token.Glued
 }
 
 // inflections reports whether two words differ in no more than an inflection's

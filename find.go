@@ -14,15 +14,22 @@ const (
 	// depth is how many candidates of a form that is no word are weighed in a
 	// sentence.
 	depth = 8
+	// rareWord is the log relative frequency, nats, under which a word is looked
+	// at as one that is none: the table of confusable words does not go so far.
+	rareWord = -15
 	// slipReach is the weighted cost, nats, up to which they are looked for:
-	// beyond it a new word is the likelier reading of any form. nameReach is the
-	// same for a form with a capital inside a sentence, likely a name.
-	slipReach, nameReach = 18, 14
+	// beyond it a new word is the likelier reading of any form. likelyReach is the
+	// same for a form that is likely meant: a rare word, or a name, with a capital
+	// inside a sentence.
+	slipReach, likelyReach = 20, 14.5
 	// rankReach is the same for a ranking, where no new word competes.
 	rankReach = 60
+	// findSpread and rankSpread are the weighted costs, nats, above the best at
+	// which a word is left out.
+	findSpread, rankSpread = 8, 13
 	// maxCached bounds the remembered searches; all are forgotten when it is
 	// reached.
-	maxCached = 1 << 14
+	maxCached = 1 << 15
 )
 
 // proposal is one reading of a form by itself, before any context.
@@ -66,6 +73,7 @@ func (e *Engine) newSearcher() *candidates.Searcher {
 		Prior:   float32(e.judgement.RankPrior),
 	})
 	s.SetMirror(e.mirror)
+	s.SetSpread(findSpread)
 	return s
 }
 
@@ -114,6 +122,8 @@ func (f *finder) score(p *proposal) float64 {
 // rank gives the readings of a form by itself. Words written apart are read as
 // one with spaces too many.
 func (f *finder) rank(form []byte, k int) []proposal {
+	f.searcher.SetSpread(rankSpread)
+	defer f.searcher.SetSpread(findSpread)
 	pieces := bytes.Fields(form)
 	found := f.search(bytes.Join(pieces, nil), k, rankReach)
 	for i := range found {

@@ -42,6 +42,7 @@ type judge struct {
 	ahead   [2]lm.State
 	// shouting: the sentence is in capitals, so capitals say nothing of a word.
 	shouting bool
+	lead     int     // the slot of the first word, whose capital says nothing
 	hopeless float64 // see the constant; the ledger lifts it
 }
 
@@ -93,6 +94,7 @@ func (j *judge) read(s text.Sentence, block []byte) {
 	lex := j.e.lexicon
 	j.slots, j.ids = j.slots[:0], j.ids[:0]
 	j.shouting = inCapitals(s.Tokens)
+	j.lead = -1
 	for place, t := range s.Tokens {
 		from := len(j.ids)
 		j.ids = lex.Read(j.ids, t)
@@ -102,6 +104,9 @@ func (j *judge) read(s text.Sentence, block []byte) {
 		sl := slot{token: t, place: place, from: from, to: len(j.ids)}
 		if t.Kind == text.Word && !misdecoded(s.Tokens, place, block) {
 			j.classify(&sl)
+			if j.lead < 0 {
+				j.lead = len(j.slots)
+			}
 			if sl.status == unknown && j.pluralPossessive(t, block) {
 				sl.status, sl.score = closed, 0
 			}

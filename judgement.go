@@ -29,7 +29,7 @@ type Judgement struct {
 
 	Recurrence    float64 `json:"recurrence"`     // times the log of how much oftener than expected the document has a word
 	RecurrenceNew float64 `json:"recurrence_new"` // times the log of the document's count of a form the lexicon lacks
-	Capital       float64 `json:"capital"`        // against changing a word capitalised inside a sentence into one that is not
+	Capital       float64 `json:"capital"`        // against changing a likely name (a capital inside a sentence) into a common word, or a piece of a compound
 	Inflection    float64 `json:"inflection"`     // against changing a word into another inflection of it
 	House         float64 `json:"house"`          // price of a house word as a candidate, the language model's class price aside
 	Variety       float64 `json:"variety"`        // against a form that the asked-for variety does not spell so
@@ -38,6 +38,10 @@ type Judgement struct {
 	// there is no context.
 	RankChannel float64 `json:"rank_channel"`
 	RankPrior   float64 `json:"rank_prior"`
+	// RankRunon and RankPossessive are what a reading as two words, or as a
+	// possessive, has to be better by there.
+	RankRunon      float64 `json:"rank_runon"`
+	RankPossessive float64 `json:"rank_possessive"`
 
 	// Budgets gives, by false alarms a 1,000 words of good text (ascending), the
 	// least probability at which a finding of each kind is reported.

@@ -60,7 +60,7 @@ func (e *Engine) Rank(word string, o RankOptions) Ranking {
 		if string(text.Fold(nil, []byte(c.Text))) == string(form) || slices.ContainsFunc(r.Candidates, same) {
 			continue
 		}
-		c.P = price.channel*c.Channel + price.lm*c.LM
+		c.P = price.channel*c.Channel + price.lm*c.LM - price.handicap(&p)
 		scores = append(scores, c.P)
 		r.Candidates = append(r.Candidates, c)
 	}
@@ -133,6 +133,22 @@ func (j *judge) sentenceIDs(context string, last bool) []uint32 {
 	return ids
 }
 
+// handicap is what a proposal has to be better by: in context the language
+// model knows of words and clitics as of any other.
+func (p *pricer) handicap(c *proposal) float64 {
+	w := p.e.judgement
+	switch {
+	case p.inContext:
+		return 0
+	case c.spaced:
+		return w.RankRunon
+	case c.n > 1:
+		return w.RankPossessive
+	}
+	return 0
+}
+
+// of is log P of a proposal's words, nats.
 func (p *pricer) of(c *proposal) float64 {
 	if !p.inContext {
 		return c.prior
