@@ -99,13 +99,24 @@ func (j *judge) proposeJoin(i int) {
 	}
 }
 
+// oftenDoubled are words that good prose has twice in a row (common practice):
+// "he had had enough", "I know that that man". doubledCost is what that counts
+// for, nats.
+var oftenDoubled = []string{"that", "had", "is", "very", "no", "so", "bye"}
+
+const doubledCost = 9
+
 // proposeRepeat weighs the reading of a word typed twice as typed once.
 func (j *judge) proposeRepeat(i int) {
 	a, b := &j.slots[i], &j.slots[i+1]
 	if string(a.token.Norm) == string(b.token.Norm) {
 		lo := len(j.words)
 		j.words = append(j.words, j.ids[a.from:a.to]...)
-		j.consider(change{from: i, to: i + 2, kind: Repeat}, lo, a)
+		c := change{from: i, to: i + 2, kind: Repeat}
+		if slices.Contains(oftenDoubled, string(a.token.Norm)) {
+			c.cost = doubledCost
+		}
+		j.consider(c, lo, a)
 	}
 }
 

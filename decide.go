@@ -146,7 +146,7 @@ func spell(lex *lexicon.Lexicon, words []uint32) string {
 			glue = true
 			continue
 		}
-		form := lex.Canonical(id)
+		form := usual(lex, id)
 		if !glue && !strings.HasPrefix(form, "'") {
 			b.WriteByte(' ')
 		}
@@ -154,4 +154,13 @@ func spell(lex *lexicon.Lexicon, words []uint32) string {
 		glue = false
 	}
 	return b.String()
+}
+
+// usual writes a word as it stands inside a sentence: in small letters if it is
+// met so at all ("captain", though "Captain Orme"), else with its own capitals.
+func usual(lex *lexicon.Lexicon, id uint32) string {
+	if lex.Entry(id).Cases&lexicon.LowerCase != 0 {
+		return string(lex.AppendForm(nil, id))
+	}
+	return lex.Canonical(id)
 }

@@ -3,13 +3,16 @@ module example.org/foulcase
 go 1.26.0
 
 require (
-	github.com/agnivade/levenshtein v1.2.2 // indirect
-	github.com/clipperhouse/uax29/v2 v2.7.0 // indirect
-	github.com/rogpeppe/go-internal v1.16.0 // indirect
-	github.com/spf13/pflag v1.1.0 // indirect
-	github.com/yuin/goldmark v1.8.7 // indirect
+	github.com/agnivade/levenshtein v1.2.2
+	github.com/clipperhouse/uax29/v2 v2.7.0
+	github.com/rogpeppe/go-internal v1.16.0
+	github.com/spf13/pflag v1.1.0
+	github.com/yuin/goldmark v1.8.7
+	golang.org/x/term v0.48.0
+	golang.org/x/text v0.44.0
+)
+
+require (
 	golang.org/x/sys v0.50.0 // indirect
-	golang.org/x/term v0.48.0 // indirect
-	golang.org/x/text v0.44.0 // indirect
 	golang.org/x/tools v0.52.0 // indirect
 )

@@ -60,7 +60,7 @@ func ReadHouse(name string, r io.Reader) (*House, error) {
 // plain text, either variety, no house words, the model's own budget.
 type Options struct {
 	Format  string  // a name of Formats; "" is plain
-	Variety Variety //
+	Variety Variety // the spelling asked for
 	House   *House  // nil: none
 	// Budget is how many false alarms a 1,000 words of good text the reader
 	// will bear, marks and queries together; 0 takes the model's default.

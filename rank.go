@@ -150,7 +150,7 @@ func (p *pricer) handicap(c *proposal) float64 {
 
 // of is log P of a proposal's words, nats.
 func (p *pricer) of(c *proposal) float64 {
-	if !p.inContext {
+	if !p.inContext && !c.spaced {
 		return c.prior
 	}
 	sum, state := 0.0, p.state

@@ -25,6 +25,7 @@ type plainReader struct {
 	window []byte
 	offset int64 // of window[0] in the source
 	eof    bool
+	err    error // of the source
 	yield  func(*Block, error) bool
 
 	lines LineMap // stands at window[fed]
@@ -39,9 +40,7 @@ func readPlain(r io.Reader, o Options, yield func(*Block, error) bool) {
 		chunk = defaultChunk
 	}
 	p := plainReader{r: r, yield: yield, window: make([]byte, 0, max(chunk, leastChunk))}
-	if !p.fill() {
-		return
-	}
+	p.fill()
 	if bytes.HasPrefix(p.window, byteOrderMark) {
 		p.offset = int64(len(byteOrderMark)) // it takes no column
 		p.window = p.window[len(byteOrderMark):]
@@ -52,28 +51,25 @@ func readPlain(r io.Reader, o Options, yield func(*Block, error) bool) {
 			return
 		}
 		p.advance(used)
-		if !p.fill() {
-			return
-		}
+		p.fill()
+	}
+	if p.err != nil {
+		yield(nil, p.err)
 	}
 }
 
-// fill reads until the window is full or the source ends; it yields an error
-// and returns false when reading fails.
-func (p *plainReader) fill() bool {
+// fill reads until the window is full or the source ends. A source that fails
+// ends there: what was read of it is read out first, then comes the error.
+func (p *plainReader) fill() {
 	if p.eof {
-		return true
+		return
 	}
 	n, err := io.ReadFull(p.r, p.window[len(p.window):cap(p.window)])
 	p.window = p.window[:len(p.window)+n]
-	if errors.Is(err, io.EOF) || errors.Is(err, io.ErrUnexpectedEOF) {
-		p.eof = true
-		return true
+	p.eof = err != nil
+	if !errors.Is(err, io.EOF) && !errors.Is(err, io.ErrUnexpectedEOF) {
+		p.err = err
 	}
-	if err != nil {
-		p.yield(nil, err)
-	}
-	return err == nil
 }
 
 // advance drops n bytes from the front; the rest moves to a new window.
