@@ -68,6 +68,9 @@ func fitShared(t testing.TB) *channel.Model {
 // TestBigSearchEqualsScan compares the search with a scan of a whole lexicon
 // for real misspellings, as far as the default spread reaches.
 func TestBigSearchEqualsScan(t *testing.T) {
+	if testing.Short() {
+		t.Skip("scans a whole lexicon")
+	}
 	m, lex := fitShared(t), bigLexicon(t)
 	w := candidates.Weights{Channel: 1, Prior: 1}
 	s := candidates.NewSearcher(lex, m, w)
