@@ -77,7 +77,7 @@ func (j *judge) proposeCandidates(i int) {
 		switch {
 		case c.spaced:
 			ch.kind = Runon
-		case sl.status == known && c.ids[0] == sl.id:
+		case sl.status == known && (c.ids[0] == sl.id || j.proposed(i, c.words())):
 			continue
 		case sl.status == known:
 			ch.kind = Realword
@@ -86,6 +86,14 @@ func (j *judge) proposeCandidates(i int) {
 		j.words = append(j.words, c.words()...)
 		j.consider(ch, lo, nil)
 	}
+}
+
+// proposed reports whether words are among the changes of slot i already, as a
+// rare word's homophones are.
+func (j *judge) proposed(i int, words []uint32) bool {
+	return slices.ContainsFunc(j.changes, func(c change) bool {
+		return c.from == i && c.to == i+1 && slices.Equal(j.words[c.lo:c.hi], words)
+	})
 }
 
 // proposeJoin weighs the reading of two words as one.
