@@ -35,6 +35,9 @@ type Flag struct {
 	Grade       string   `json:"grade,omitempty"`       // how sure the system is, in its own words
 	P           float64  `json:"p"`                     // the system's probability that it is an error
 	Corrections []string `json:"corrections,omitempty"` // what should stand at Start:End instead, best first
+	// Held tells that the system keeps the finding to itself, being not sure
+	// enough: curves count it, reports do not.
+	Held bool `json:"held,omitempty"`
 }
 
 // A Ranking is a system's list of intended forms for one word, best first.

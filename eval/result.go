@@ -33,22 +33,6 @@ type DataFile struct {
 	Overlap Overlap `json:"overlap"`
 }
 
-// Overlap says how much of the data the model was fitted on.
-type Overlap struct {
-	Recorded bool `json:"recorded"` // the model says what it was fitted on
-	Of       int  `json:"of"`       // pairs or errors looked up
-	Fitted   int  `json:"fitted"`   // of these, fitted on
-}
-
-// Share is the part of the pairs that the model was fitted on, 0 where nothing
-// is recorded.
-func (o Overlap) Share() float64 {
-	if o.Of == 0 || !o.Recorded {
-		return 0
-	}
-	return float64(o.Fitted) / float64(o.Of)
-}
-
 // A PairOutcome is one isolated misspelling and where its intended form stood.
 type PairOutcome struct {
 	Data       int      `json:"data"` // index into Result.Data
@@ -82,23 +66,21 @@ const (
 type Place struct {
 	Unit     int    `json:"unit"` // index into Result.Units
 	Line     int    `json:"line"`
-	Observed string `json:"observed"` // what stands there
-	Context  string `json:"context"`  // the text around it, on one line
-	Outcome  string `json:"outcome"`  // PlaceRight, PlaceWrong, PlaceNeither or PlaceMissed
-	// Flag is nil for an error that nothing was said of. A flag without a grade
-	// is a finding that the system holds back: curves count it, reports do not.
-	Flag  *Flag `json:"flag,omitempty"`
-	Error *Span `json:"error,omitempty"` // nil for a false alarm
+	Observed string `json:"observed"`        // what stands in error, or under the flag
+	Context  string `json:"context"`         // the text around it, on one line
+	Outcome  string `json:"outcome"`         // PlaceRight, PlaceWrong, PlaceNeither or PlaceMissed
+	Flag     *Flag  `json:"flag,omitempty"`  // nil for an error that nothing was said of
+	Error    *Span  `json:"error,omitempty"` // nil unless the outcome is right or missed; never neutral
 	// Rank is the place of a right correction among the flag's, from 1; 0 where
 	// there is none.
-	Rank   int    `json:"rank,omitempty"`
+	Rank int `json:"rank,omitempty"`
+	// Again tells that the flag finds several errors, and is counted with another.
+	Again  bool   `json:"again,omitempty"`
 	Ledger string `json:"ledger,omitempty"` // the parts of the scores, for reading
 }
 
-// Reported says whether the system said something here.
-func (p *Place) Reported() bool { return p.Flag != nil && p.Flag.Grade != "" }
+// Reported says whether the system objects to the place, not holding back.
+func (p *Place) Reported() bool { return p.Flag != nil && !p.Flag.Held }
 
-// Missed says whether there is an error here that the system did not report.
-func (p *Place) Missed() bool {
-	return p.Error != nil && !p.Error.Neutral && !(p.Reported() && p.Outcome == PlaceRight)
-}
+// Missed says whether there is an error here that the system does not report.
+func (p *Place) Missed() bool { return p.Error != nil && !p.Reported() }
