@@ -5,12 +5,20 @@ package eval
 //	1  first
 const ResultFormat = 1
 
+// The tasks that are measured.
+const (
+	TaskList  = "list"  // isolated pairs
+	TaskText  = "text"  // text whose errors are known
+	TaskNoise = "noise" // text with slips put in
+	TaskClean = "clean" // text that holds no errors
+)
+
 // A Result is one run of the harness: enough to repeat it, to compare it item
 // by item with another, and to draw it. It holds no time of day, so that the
 // same run gives the same bytes.
 type Result struct {
 	Format  int               `json:"format"`
-	Task    string            `json:"task"`              // "list", "text", "noise" or "clean"
+	Task    string            `json:"task"`              // TaskList, TaskText, TaskNoise or TaskClean
 	Command []string          `json:"command"`           // as it was typed
 	Version string            `json:"version"`           // of the program
 	Go      string            `json:"go"`                // version of the compiler
@@ -26,11 +34,12 @@ type Result struct {
 
 // A DataFile is one file of test data and what was measured on it.
 type DataFile struct {
-	Name    string  `json:"name"`   // as given
-	SHA256  string  `json:"sha256"` // of its bytes, hexadecimal
-	Items   int     `json:"items"`
-	Report  *Report `json:"report"`
-	Overlap Overlap `json:"overlap"`
+	Name     string  `json:"name"`     // as given
+	SHA256   string  `json:"sha256"`   // of its bytes, hexadecimal
+	Measured string  `json:"measured"` // HashItems or HashPairs of what was measured
+	Items    int     `json:"items"`
+	Report   *Report `json:"report"`
+	Overlap  Overlap `json:"overlap"`
 }
 
 // A PairOutcome is one isolated misspelling and where its intended form stood.
