@@ -61,8 +61,11 @@ func (r *Result) Judged() *Judged {
 
 // Score reports on texts as a task asks for it.
 func (j *Judged) Score(task string, r Resampling) *Report {
-	if task == TaskClean {
+	switch task {
+	case TaskClean:
 		return j.ScoreClean(r)
+	case TaskNoise:
+		return j.ScoreNoise(r)
 	}
 	return j.ScoreText(r)
 }

@@ -49,7 +49,8 @@ func (m Metric) cell(present bool) string {
 		return "-"
 	}
 	scale, digits := Number(100), 1
-	if m.Name == "flags" || m.Name == "false.alarms" {
+	switch m.Name {
+	case "flags", "false.alarms", "good.flagged", "harmed":
 		scale, digits = 1, 2
 	}
 	return fmt.Sprintf("%.*f [%.*f, %.*f]", digits, scale*m.Value, digits, scale*m.Low, digits, scale*m.High)
