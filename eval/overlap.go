@@ -28,11 +28,13 @@ func (f Fitted) OverlapOf(pairs []Pair) Overlap {
 }
 
 // OverlapOfErrors looks up the errors of texts with their first corrections.
-func (f Fitted) OverlapOfErrors(places []Place) Overlap {
+func (f Fitted) OverlapOfErrors(items []Item) Overlap {
 	var o Overlap
-	for _, p := range places {
-		if p.Error != nil && len(p.Error.Corrections) > 0 {
-			o.look(f, p.Observed, p.Error.Corrections[0])
+	for _, item := range items {
+		for _, span := range item.Spans {
+			if !span.Neutral && len(span.Corrections) > 0 {
+				o.look(f, item.Source[span.Start:span.End], span.Corrections[0])
+			}
 		}
 	}
 	return o
