@@ -43,6 +43,7 @@ const (
 	SectionSpelling    = "spelling"    // lm, over characters: the price of a new word
 	SectionConfusables = "confusables" // candidates: words taken for one another
 	SectionJudgement   = "judgement"   // Judgement, JSON
+	SectionFitted      = "fitted"      // channel: the pairs it was fitted on; may be missing
 )
 
 // Engine is an opened model. It is safe for concurrent use.
@@ -55,7 +56,8 @@ type Engine struct {
 	mirror      *candidates.Mirror
 	confusables *candidates.Confusables
 	judgement   *Judgement
-	judges      sync.Pool // *judge
+	fitted      *channel.Fitted // nil: not recorded
+	judges      sync.Pool       // *judge
 }
 
 // Open opens a model in place. The caller must not change the bytes while the
@@ -117,6 +119,12 @@ func newEngine(file *modelfile.File) (*Engine, error) {
 	} {
 		if part.got != part.want {
 			return nil, fmt.Errorf("section %q counts %d words where the lexicon has %d: they were not built together; rebuild the model", part.name, part.got, part.want)
+		}
+	}
+	if body, ok := file.Section(SectionFitted); ok {
+		var err error
+		if e.fitted, err = channel.OpenFitted(body); err != nil {
+			return nil, err
 		}
 	}
 	e.judges.New = func() any { return newJudge(e) }

@@ -81,35 +81,58 @@ type Paired struct {
 	Difference Number  `json:"difference"` // B's value less A's
 	Low        Number  `json:"low"`        // its 95 % interval
 	High       Number  `json:"high"`
-	Better     float64 `json:"better"` // share of the samples in which B is better; ties are no better
+	Better     float64 `json:"better"` // share of the samples in which B's value is greater; ties are not
+	P          float64 `json:"p"`      // two-sided; 1 where the two never differ
 	Resamples  int     `json:"resamples"`
 }
 
-// PairedBootstrap compares two systems on the same items (Koehn 2004, ACL
-// W04-3250). metric returns both systems' values on a sample, given as indices
-// into the items with repetition; it must not keep the slice. Samples in which
-// a value is NaN count for neither.
-func PairedBootstrap(items int, metric func(sample []int) (a, b float64), r Resampling) Paired {
+// PairedBootstrap compares two systems on the same items by several metrics
+// (Koehn 2004, ACL W04-3250). metrics returns both systems' values on a sample,
+// given as indices into the items with repetition, metric by metric; it must
+// not keep the slice. Samples in which a value is NaN count for neither. P is
+// twice the share of samples on the rarer side of no difference, the data
+// itself counted as one more (Davison & Hinkley 1997, chapter 4).
+func PairedBootstrap(items int, metrics func(sample []int) (a, b []float64), r Resampling) []Paired {
 	sample := make([]int, items)
 	for i := range sample {
 		sample[i] = i
 	}
-	a, b := metric(sample)
+	a, b := metrics(sample)
+	paired, draws := make([]Paired, len(a)), make([][]float64, len(a))
+	for m := range paired {
+		paired[m] = Paired{Difference: Number(b[m] - a[m]), Resamples: r.resamples()}
+	}
 	random := r.random()
-	var differences []float64
-	better := 0
 	for range r.resamples() {
 		for i := range sample {
 			sample[i] = random.IntN(items)
 		}
-		x, y := metric(sample)
-		if d := y - x; !math.IsNaN(d) {
-			differences = append(differences, d)
-			if d > 0 {
-				better++
+		a, b := metrics(sample)
+		for m := range draws {
+			if d := b[m] - a[m]; !math.IsNaN(d) {
+				draws[m] = append(draws[m], d)
 			}
 		}
 	}
-	low, high := interval(differences)
-	return Paired{Number(b - a), low, high, float64(better) / float64(r.resamples()), r.resamples()}
+	for m := range paired {
+		paired[m].weigh(draws[m])
+	}
+	return paired
+}
+
+// weigh fills in what the differences of the samples tell.
+func (p *Paired) weigh(differences []float64) {
+	better, worse := 0, 0
+	for _, d := range differences {
+		switch {
+		case d > 0:
+			better++
+		case d < 0:
+			worse++
+		}
+	}
+	n := len(differences)
+	p.Low, p.High = interval(differences)
+	p.Better = float64(better) / float64(p.Resamples)
+	p.P = min(1, 2*float64(1+n-max(better, worse))/float64(1+n))
 }

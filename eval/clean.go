@@ -1,7 +1,6 @@
 package eval
 
 import (
-	"fmt"
 	"math"
 	"slices"
 )
@@ -11,52 +10,32 @@ import (
 // "flags", per 1,000 words, over all flags, by kind (the class is the kind) and
 // by grade (the class is the system's grade). Intervals draw documents.
 func ScoreClean(items []Item, flags [][]Flag, r Resampling) (*Report, error) {
-	if len(items) != len(flags) {
-		return nil, fmt.Errorf("%d items but flags for %d", len(items), len(flags))
+	j, err := JudgeAll(items, flags)
+	if err != nil {
+		return nil, err
 	}
-	classes := cleanClasses(flags)
-	report := &Report{Task: "clean", Items: len(items), Resamples: r.resamples(), Seed: r.Seed}
-	each := make([]cleanCounts, len(items))
-	for i, item := range items {
-		c := cleanCounts{words: float64(Words(item.Source)), flags: make([]float64, len(classes))}
-		for _, f := range flags[i] {
-			for k, class := range classes {
-				if class == "" || class == string(f.Kind) || class == f.Grade {
-					c.flags[k]++
-				}
-			}
-		}
-		each[i] = c
-		report.Words += int(c.words)
-	}
-	groups := byDocument(items, each)
-	report.Documents = len(groups)
-	measures := make([]measure[cleanCounts], len(classes))
-	for k, class := range classes {
-		measures[k] = measure[cleanCounts]{"flags", class, func(c cleanCounts) (float64, float64) {
-			if c.words == 0 {
-				return math.NaN(), 0
-			}
-			return 1000 * c.flags[k] / c.words, c.words
-		}}
-	}
-	report.Metrics = bootstrap(groups, measures, r)
-	return report, nil
+	return j.ScoreClean(r), nil
+}
+
+// ScoreClean is [ScoreClean] of flags that were judged before.
+func (j *Judged) ScoreClean(r Resampling) *Report {
+	classes := j.cleanClasses()
+	report := j.report("clean", r)
+	report.Metrics = bootstrap(j.cleanCounts(classes), cleanMeasures(classes), r)
+	return report
 }
 
 // cleanClasses lists what the flags are to be counted by: all, each kind, and
 // each grade that occurs.
-func cleanClasses(flags [][]Flag) []string {
+func (j *Judged) cleanClasses() []string {
 	classes := []string{""}
 	for _, k := range Kinds {
 		classes = append(classes, string(k))
 	}
 	var grades []string
-	for _, list := range flags {
-		for _, f := range list {
-			if f.Grade != "" && !slices.Contains(classes, f.Grade) && !slices.Contains(grades, f.Grade) {
-				grades = append(grades, f.Grade)
-			}
+	for _, p := range j.Places {
+		if p.Reported() && p.Flag.Grade != "" && !slices.Contains(classes, p.Flag.Grade) && !slices.Contains(grades, p.Flag.Grade) {
+			grades = append(grades, p.Flag.Grade)
 		}
 	}
 	slices.Sort(grades)
@@ -75,4 +54,36 @@ func (c cleanCounts) plus(d cleanCounts) cleanCounts {
 		sum.flags[k] += c.flags[k]
 	}
 	return sum
+}
+
+// cleanCounts counts what was reported in each unit.
+func (j *Judged) cleanCounts(classes []string) []cleanCounts {
+	units := make([]cleanCounts, len(j.Units))
+	for i, u := range j.Units {
+		units[i] = cleanCounts{float64(u.Words), make([]float64, len(classes))}
+	}
+	for _, p := range j.Places {
+		if !p.Reported() {
+			continue
+		}
+		for k, class := range classes {
+			if class == "" || class == string(p.Flag.Kind) || class == p.Flag.Grade {
+				units[p.Unit].flags[k]++
+			}
+		}
+	}
+	return units
+}
+
+func cleanMeasures(classes []string) []measure[cleanCounts] {
+	measures := make([]measure[cleanCounts], len(classes))
+	for k, class := range classes {
+		measures[k] = measure[cleanCounts]{"flags", class, func(c cleanCounts) (float64, float64) {
+			if c.words == 0 {
+				return math.NaN(), 0
+			}
+			return 1000 * c.flags[k] / c.words, c.words
+		}}
+	}
+	return measures
 }

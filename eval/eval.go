@@ -28,12 +28,16 @@ var Kinds = [...]Kind{Nonword, Realword, Runon, Split, Repeat}
 
 // A Flag is one place that a system objects to.
 type Flag struct {
-	Start, End  int // bytes in the item's source
-	Observed    string
-	Kind        Kind
-	Grade       string   // how sure the system is, in its own words
-	P           float64  // the system's probability that it is an error
-	Corrections []string // what should stand at Start:End instead, best first
+	Start       int      `json:"start"` // bytes in the item's source
+	End         int      `json:"end"`
+	Observed    string   `json:"observed"`
+	Kind        Kind     `json:"kind"`
+	Grade       string   `json:"grade,omitempty"`       // how sure the system is, in its own words
+	P           float64  `json:"p"`                     // the system's probability that it is an error
+	Corrections []string `json:"corrections,omitempty"` // what should stand at Start:End instead, best first
+	// Held tells that the system keeps the finding to itself, being not sure
+	// enough: curves count it, reports do not.
+	Held bool `json:"held,omitempty"`
 }
 
 // A Ranking is a system's list of intended forms for one word, best first.
@@ -44,6 +48,7 @@ type Ranking struct {
 
 // A Pair is one isolated misspelling.
 type Pair struct {
+	Line               int // in its file, from 1
 	Observed, Intended string
 	Count              int  // how often it was seen, at least 1
 	Spaces             bool // one of the two has a space that the other lacks
@@ -73,8 +78,9 @@ type Item struct {
 // A Span is a stretch of the source that is an error, or, when Neutral, one
 // that is no matter of spelling: a flag there is neither right nor wrong.
 type Span struct {
-	Start, End  int // bytes in the source
-	Kind        Kind
-	Neutral     bool
-	Corrections []string // what may stand there instead, the most favoured first
+	Start       int      `json:"start"` // bytes in the source
+	End         int      `json:"end"`
+	Kind        Kind     `json:"kind,omitempty"`
+	Neutral     bool     `json:"neutral,omitempty"`
+	Corrections []string `json:"corrections,omitempty"` // what may stand there instead, the most favoured first
 }

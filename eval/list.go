@@ -47,26 +47,54 @@ func reading(text string) string {
 // where it is missing). known may be nil; then no class tells whether the
 // observed form is a word.
 func ScoreList(pairs []Pair, rankings []Ranking, known func(string) bool, r Resampling) (*Report, error) {
+	outcomes, err := PairOutcomes(pairs, rankings, known, nil)
+	if err != nil {
+		return nil, err
+	}
+	return ScorePairs(outcomes, r), nil
+}
+
+// PairOutcomes returns the outcome of each pair; known and fitted may be nil.
+// The rankings must be of the same words in the same order.
+func PairOutcomes(pairs []Pair, rankings []Ranking, known func(string) bool, fitted Fitted) ([]PairOutcome, error) {
 	ranks, err := Ranks(pairs, rankings)
 	if err != nil {
 		return nil, err
 	}
-	all := make([]listCounts, len(pairs))
-	byClass := map[string][]listCounts{}
+	outcomes := make([]PairOutcome, len(pairs))
 	for i, p := range pairs {
-		all[i] = countRank(ranks[i])
-		for _, class := range pairClasses(p, known) {
+		first := rankings[i].Candidates
+		outcomes[i] = PairOutcome{
+			Line: p.Line, Observed: p.Observed, Intended: p.Intended, Rank: ranks[i],
+			Candidates: first[:min(len(first), 3)], Classes: pairClasses(p, known),
+		}
+		if seen, recorded := fitted.ask(p.Observed, p.Intended); seen {
+			outcomes[i].Classes = append(outcomes[i].Classes, fittedClass)
+		} else if recorded {
+			outcomes[i].Classes = append(outcomes[i].Classes, notFittedClass)
+		}
+	}
+	return outcomes, nil
+}
+
+// ScorePairs is [ScoreList] of outcomes that are known already.
+func ScorePairs(outcomes []PairOutcome, r Resampling) *Report {
+	all := make([]listCounts, len(outcomes))
+	byClass := map[string][]listCounts{}
+	for i, o := range outcomes {
+		all[i] = countRank(o.Rank)
+		for _, class := range o.Classes {
 			byClass[class] = append(byClass[class], all[i])
 		}
 	}
-	report := &Report{Task: "list", Items: len(pairs), Resamples: r.resamples(), Seed: r.Seed}
+	report := &Report{Task: "list", Items: len(outcomes), Resamples: r.resamples(), Seed: r.Seed}
 	report.Metrics = bootstrap(all, listMeasures(""), r)
 	for _, class := range ListClasses {
 		if groups := byClass[class]; len(groups) > 0 {
 			report.Metrics = append(report.Metrics, bootstrap(groups, listMeasures(class), r)...)
 		}
 	}
-	return report, nil
+	return report
 }
 
 // ListClasses lists the classes of pairs, in the order in which they are
@@ -74,7 +102,14 @@ func ScoreList(pairs []Pair, rankings []Ranking, known func(string) bool, r Resa
 var ListClasses = [...]string{
 	"deletion", "insertion", "substitution", "transposition", "two edits", "three or more", "case only",
 	"nonword", "realword", "space", "first letter wrong", "1-4 letters", "5-8 letters", "9+ letters",
+	fittedClass, notFittedClass,
 }
+
+// Classes of pairs by whether the model was fitted on them.
+const (
+	fittedClass    = "fitted on"
+	notFittedClass = "not fitted on"
+)
 
 func pairClasses(p Pair, known func(string) bool) []string {
 	observed, intended := fold(p.Observed), fold(p.Intended)

@@ -76,6 +76,7 @@ func ReadPairs(file string, r io.Reader) ([]Pair, error) {
 		if err != nil {
 			return nil, &LineError{file, n, err}
 		}
+		pair.Line = n
 		pairs = append(pairs, pair)
 	}
 	return pairs, nil

@@ -13,10 +13,10 @@ func TestReadPairs(t *testing.T) {
 	got, err := eval.ReadPairs("slips.tsv", strings.NewReader(
 		"\ufefflaunh\tlaunch\r\n\nalot\ta lot\t3\tmw\nwithin\twith in\nbirth\tberth\t1\t-\n"))
 	want := []eval.Pair{
-		{Observed: "launh", Intended: "launch", Count: 1},
-		{Observed: "alot", Intended: "a lot", Count: 3, Spaces: true},
-		{Observed: "within", Intended: "with in", Count: 1, Spaces: true},
-		{Observed: "birth", Intended: "berth", Count: 1},
+		{Line: 1, Observed: "launh", Intended: "launch", Count: 1},
+		{Line: 3, Observed: "alot", Intended: "a lot", Count: 3, Spaces: true},
+		{Line: 4, Observed: "within", Intended: "with in", Count: 1, Spaces: true},
+		{Line: 5, Observed: "birth", Intended: "berth", Count: 1},
 	}
 	if err != nil || !reflect.DeepEqual(got, want) {
 		t.Errorf("%+v, %v", got, err)

@@ -41,13 +41,14 @@ func TestCompareOutcomes(t *testing.T) {
 }
 
 // means is the metric of two systems' scores an item.
-func means(a, b []float64) func([]int) (float64, float64) {
-	return func(sample []int) (x, y float64) {
+func means(a, b []float64) func([]int) (x, y []float64) {
+	return func(sample []int) ([]float64, []float64) {
+		x, y := 0., 0.
 		for _, i := range sample {
 			x += a[i]
 			y += b[i]
 		}
-		return x / float64(len(sample)), y / float64(len(sample))
+		return []float64{x / float64(len(sample))}, []float64{y / float64(len(sample))}
 	}
 }
 
@@ -69,11 +70,11 @@ func TestPairedBootstrap(t *testing.T) {
 		{"better by a fifth of its spread", better, .98, 1},
 		{"noise", noise, .02, .98},
 	} {
-		p := eval.PairedBootstrap(n, means(a, c.b), eval.Resampling{})
+		p := eval.PairedBootstrap(n, means(a, c.b), eval.Resampling{})[0]
 		if p.Resamples != 1000 || p.Better < c.low || p.Better > c.high || p.Low > p.Difference || p.High < p.Difference {
 			t.Errorf("%s: %+v", c.about, p)
 		}
-		if again := eval.PairedBootstrap(n, means(a, c.b), eval.Resampling{}); again != p {
+		if again := eval.PairedBootstrap(n, means(a, c.b), eval.Resampling{})[0]; again != p {
 			t.Errorf("%s: %+v, then %+v", c.about, p, again)
 		}
 	}

@@ -48,11 +48,18 @@ func (m Metric) cell(present bool) string {
 	if !present || !m.Value.Defined() {
 		return "-"
 	}
-	scale, digits := Number(100), 1
-	if m.Name == "flags" || m.Name == "false.alarms" {
-		scale, digits = 1, 2
-	}
+	scale, digits := unit(m.Name)
 	return fmt.Sprintf("%.*f [%.*f, %.*f]", digits, scale*m.Value, digits, scale*m.Low, digits, scale*m.High)
+}
+
+// unit says how a metric is shown: what it is multiplied by, and how many
+// decimals it has.
+func unit(metric string) (scale Number, digits int) {
+	switch metric {
+	case "flags", "false.alarms", "good.flagged", "harmed":
+		return 1, 2 // counts per 1,000 words
+	}
+	return 100, 1 // shares, in per cent
 }
 
 // WriteMarkdown writes the table as a Markdown pipe table.

@@ -1,7 +1,6 @@
 package eval
 
 import (
-	"fmt"
 	"math"
 	"slices"
 	"strconv"
@@ -24,37 +23,43 @@ import (
 // over the errors of that kind. Intervals draw whole documents where the data
 // names them, and items where not.
 func ScoreText(items []Item, flags [][]Flag, r Resampling) (*Report, error) {
-	if len(items) != len(flags) {
-		return nil, fmt.Errorf("%d items but flags for %d", len(items), len(flags))
+	j, err := JudgeAll(items, flags)
+	if err != nil {
+		return nil, err
 	}
-	each := make([]textCounts, len(items))
+	return j.ScoreText(r), nil
+}
+
+// ScoreText is [ScoreText] of flags that were judged before.
+func (j *Judged) ScoreText(r Resampling) *Report {
+	units := j.textCounts()
 	total := textCounts{}
-	for i, item := range items {
-		var err error
-		if each[i], err = countText(item, flags[i]); err != nil {
-			return nil, err
-		}
-		total = total.plus(each[i])
+	for _, u := range units {
+		total = total.plus(u)
 	}
-	groups := byDocument(items, each)
-	report := &Report{
-		Task: "text", Items: len(items), Documents: len(groups), Words: int(total.words),
-		Resamples: r.resamples(), Seed: r.Seed,
-	}
+	report := j.report("text", r)
+	report.Metrics = bootstrap(units, allTextMeasures(total), r)
+	return report
+}
+
+// allTextMeasures are those of all kinds together and of each that occurs.
+func allTextMeasures(total textCounts) []measure[textCounts] {
 	measures := textMeasures("", 0)
 	for i, kind := range Kinds {
 		if k := i + 1; total.errors[k]+total.flags[k] > 0 {
 			measures = append(measures, textMeasures(string(kind), k)...)
 		}
 	}
-	report.Metrics = bootstrap(groups, measures, r)
-	return report, nil
+	return measures
 }
 
 // kindCounts holds a sum for all kinds together, at 0, and for each of Kinds.
 type kindCounts [1 + len(Kinds)]float64
 
-func (c *kindCounts) add(k Kind) {
+func (c *kindCounts) addIf(counts bool, k Kind) {
+	if !counts {
+		return
+	}
 	c[0]++
 	if i := slices.Index(Kinds[:], k); i >= 0 {
 		c[i+1]++
@@ -83,40 +88,31 @@ func (c textCounts) plus(d textCounts) textCounts {
 	return c
 }
 
-func countText(item Item, flags []Flag) (textCounts, error) {
-	c := textCounts{words: float64(Words(item.Source))}
-	outcomes, verdicts, err := Judge(item, flags)
-	if err != nil {
-		return c, err
+// textCounts counts what was reported in each unit.
+func (j *Judged) textCounts() []textCounts {
+	units := make([]textCounts, len(j.Units))
+	for i, u := range j.Units {
+		units[i].words = float64(u.Words)
 	}
-	rank := make([]int, len(flags))
-	for _, v := range verdicts {
-		c.errors.add(v.Span.Kind)
-		if v.Flag < 0 {
-			continue
-		}
-		c.found.add(v.Span.Kind)
-		if v.Rank > 0 {
-			c.corrected.add(v.Span.Kind)
-			rank[v.Flag] = v.Rank
-		}
-		if v.Rank == 1 {
-			c.first.add(v.Span.Kind)
-		}
+	for i := range j.Places {
+		units[j.Places[i].Unit].count(&j.Places[i])
 	}
-	for i, f := range flags {
-		if outcomes[i] == Neither {
-			continue
-		}
-		c.flags.add(f.Kind)
-		if outcomes[i] == Right {
-			c.right.add(f.Kind)
-			if rank[i] == 1 {
-				c.rightFirst.add(f.Kind)
-			}
-		}
+	return units
+}
+
+func (c *textCounts) count(p *Place) {
+	right := p.Outcome == PlaceRight && p.Reported()
+	if p.Error != nil {
+		c.errors.addIf(true, p.Error.Kind)
+		c.found.addIf(right, p.Error.Kind)
+		c.corrected.addIf(right && p.Rank > 0, p.Error.Kind)
+		c.first.addIf(right && p.Rank == 1, p.Error.Kind)
 	}
-	return c, nil
+	if p.Reported() && p.Outcome != PlaceNeither && !p.Again {
+		c.flags.addIf(true, p.Flag.Kind)
+		c.right.addIf(right, p.Flag.Kind)
+		c.rightFirst.addIf(right && p.Rank == 1, p.Flag.Kind)
+	}
 }
 
 func textMeasures(class string, k int) []measure[textCounts] {
@@ -166,20 +162,4 @@ func fScore(precision, recall, beta float64) float64 {
 		return 0
 	}
 	return (1 + beta*beta) * precision * recall / (beta*beta*precision + recall)
-}
-
-// byDocument adds up the counts of each document. An item of no document is one
-// by itself.
-func byDocument[C counts[C]](items []Item, each []C) []C {
-	var groups []C
-	at := map[string]int{}
-	for i, item := range items {
-		if g, ok := at[item.Document]; ok && item.Document != "" {
-			groups[g] = groups[g].plus(each[i])
-			continue
-		}
-		at[item.Document] = len(groups)
-		groups = append(groups, each[i])
-	}
-	return groups
 }

@@ -32,8 +32,9 @@ document are read together.
 With --clean the files hold good text, a paragraph a line and blank lines
 between documents; every finding is a false alarm.
 
---emit jsonl prints an object a metric: task, data, model, metric, class, value,
-low, high and n.`,
+--results keeps what became of every flag and every error. --emit jsonl prints
+an object a metric: task, data, model, metric, class, value, low, high, n and,
+when the model says what it was fitted on, fitted (the share of the errors).`,
 		examples: `
 			foulcase eval text --columns source,reference testdata/tiny/sentences.tsv
 			foulcase eval text --clean testdata/tiny/corpus.txt`,
@@ -43,25 +44,29 @@ low, high and n.`,
 
 // evalTextFlags are what the user asked of eval text.
 type evalTextFlags struct {
-	engine  engineFlags
+	measureFlags
 	columns string
 	clean   bool
 	heldOut bool
 	budget  rate
-	jobs    *count
-	emit    *choice
 }
 
 func declareEvalText(fs *pflag.FlagSet) action {
 	f := new(evalTextFlags)
-	f.engine.declare(fs)
 	fs.StringVar(&f.columns, "columns", "source,reference", "`NAMES` of the columns")
 	fs.BoolVar(&f.clean, "clean", false, "the files hold good text")
-	fs.BoolVar(&f.heldOut, "held-out-only", false, "of good text read only the documents that lm train --hold-out leaves out")
-	fs.Var(&f.budget, "budget", "false alarms to bear in 1,000 words of good text (default: the model's own)")
-	f.jobs = jobsFlag(fs)
-	f.emit = emitFlag(fs)
+	heldOutFlag(fs, &f.heldOut)
+	budgetFlag(fs, &f.budget)
+	f.declare(fs)
 	return f.run
+}
+
+func heldOutFlag(fs *pflag.FlagSet, only *bool) {
+	fs.BoolVar(only, "held-out-only", false, "of good text read only the documents that lm train --hold-out leaves out")
+}
+
+func budgetFlag(fs *pflag.FlagSet, budget *rate) {
+	fs.Var(budget, "budget", "false alarms to bear in 1,000 words of good text (default: the model's own)")
 }
 
 func (f *evalTextFlags) run(c *console, files []string) (status, error) {
@@ -69,77 +74,84 @@ func (f *evalTextFlags) run(c *console, files []string) (status, error) {
 	if err != nil {
 		return trouble, misusef("--columns: %v", err)
 	}
-	switch {
-	case len(files) == 0:
-		return trouble, misusef("no file to measure on")
-	case f.heldOut && !f.clean:
+	if f.heldOut && !f.clean {
 		return trouble, misusef("--held-out-only goes with --clean")
 	}
-	e, o, err := f.engine.open()
+	task := eval.TaskText
+	if f.clean {
+		task = eval.TaskClean
+	}
+	m, o, err := f.start(task, files)
 	if err != nil {
 		return trouble, err
 	}
-	defer e.Close()
+	defer m.engine.Close()
 	o.Budget = float64(f.budget)
-	for _, file := range files {
-		items, err := f.read(c, file, columns, knownBy(e))
+	for _, path := range files {
+		items, file, err := f.read(c, path, columns, knownBy(m.engine))
 		if err != nil {
 			return trouble, err
 		}
-		flags, err := flagAll(e, items, o, int(*f.jobs))
-		if err != nil {
-			return trouble, err
-		}
-		score := eval.ScoreText
-		if f.clean {
-			score = eval.ScoreClean
-		}
-		report, err := score(items, flags, eval.Resampling{Seed: seed})
-		if err != nil {
-			return trouble, err
-		}
-		if err := printReport(c.out, report, file, e.Hash(), f.emit.value); err != nil {
+		if err := m.proofItems(file, items, o); err != nil {
 			return trouble, err
 		}
 	}
-	return clean, nil
+	return m.finish(c)
 }
 
 // read reads the items of one file, with the errors in them.
-func (f *evalTextFlags) read(c *console, file string, columns []eval.Column, known func(string) bool) ([]eval.Item, error) {
+func (f *evalTextFlags) read(c *console, path string, columns []eval.Column, known func(string) bool) ([]eval.Item, eval.DataFile, error) {
 	if f.clean {
-		return readData(c, file, f.readClean)
+		return readData(c, path, cleanReader(f.heldOut))
 	}
-	sentences, err := readData(c, file, func(name string, r io.Reader) ([]eval.Sentence, error) {
+	sentences, file, err := readData(c, path, func(name string, r io.Reader) ([]eval.Sentence, error) {
 		return eval.ReadSentences(name, r, columns)
 	})
 	if err != nil {
-		return nil, err
+		return nil, file, err
 	}
 	items := make([]eval.Item, len(sentences))
 	for i, s := range sentences {
 		items[i] = eval.Gold(s, known)
 	}
-	return items, nil
+	return items, file, nil
 }
 
-// readClean reads good text, or those of its documents that no model learned
-// from.
-func (f *evalTextFlags) readClean(file string, r io.Reader) ([]eval.Item, error) {
-	if !f.heldOut {
-		return eval.ReadClean(file, r)
+// cleanReader reads good text, or only those of its documents that no model
+// learned from.
+func cleanReader(heldOut bool) func(file string, r io.Reader) ([]eval.Item, error) {
+	if !heldOut {
+		return eval.ReadClean
 	}
-	var kept bytes.Buffer
-	for doc, err := range text.Documents(r) {
-		if err != nil {
-			return nil, err
+	return func(file string, r io.Reader) ([]eval.Item, error) {
+		var kept bytes.Buffer
+		for doc, err := range text.Documents(r) {
+			if err != nil {
+				return nil, err
+			}
+			if text.HeldOut(doc) {
+				kept.Write(doc)
+				kept.WriteString(paragraphBreak)
+			}
 		}
-		if text.HeldOut(doc) {
-			kept.Write(doc)
-			kept.WriteString(paragraphBreak)
-		}
+		return eval.ReadClean(file, &kept)
 	}
-	return eval.ReadClean(file, &kept)
+}
+
+// proofItems proofreads the items of a file and adds what came out to the result.
+func (m *measurement) proofItems(file eval.DataFile, items []eval.Item, o foulcase.Options) error {
+	file.Measured = eval.HashItems(items)
+	file.Overlap = eval.Fitted(m.engine.Fitted).OverlapOfErrors(items)
+	flags, err := flagAll(m.engine, items, o, int(*m.flags.jobs))
+	if err != nil {
+		return err
+	}
+	judged, err := eval.JudgeAll(items, flags)
+	if err != nil {
+		return err
+	}
+	m.result.AddTexts(file, judged, resampling)
+	return nil
 }
 
 // flagAll proofreads all items, those of one document that follow one another

@@ -27,7 +27,11 @@ Texts are plain: a paragraph a line, blank lines between documents; every tenth
 document is left out, to measure on. Word lists have a word a line. Pairs are
 lines of observed, intended and count, parted by tabs. Edits are lines of
 observed and intended letters and a count. Homophones are lines of words parted
-by commas.`,
+by commas.
+
+The model notes, as hashes, which pairs its channel was learned from, so that
+eval can refuse to measure on them. For a model made before this was noted, name
+them again: --from OLD.fcm --fitted PAIRS -o NEW.fcm changes nothing else.`,
 		examples: `
 			foulcase model build --text testdata/tiny/corpus.txt --words en-GB=testdata/tiny/words-en-GB.txt --words en-US=testdata/tiny/words-en-US.txt --pairs testdata/tiny/pairs.tsv -o base.fcm`,
 		declare: declareModelBuild,
@@ -39,6 +43,7 @@ type modelParts struct {
 	texts      []string // plain text, files or folders
 	words      []wordList
 	pairs      []string // tab-separated
+	fitted     []string // likewise; what a channel taken over was fitted to
 	edits      string   // counts of single-letter edits
 	homophones string
 	from       []string // model files whose sections are taken over, later ones first
@@ -58,6 +63,7 @@ func declareModelBuild(fs *pflag.FlagSet) action {
 	fs.StringArrayVar(&p.texts, "text", nil, "`FILE` or folder of text to count words in; may be repeated")
 	fs.Var((*wordLists)(&p.words), "words", "word list of a variety: en-US=FILE, en-GB=FILE or any=FILE; may be repeated")
 	fs.StringArrayVar(&p.pairs, "pairs", nil, "`FILE` of corrections to learn the channel from; may be repeated")
+	fs.StringArrayVar(&p.fitted, "fitted", nil, "`FILE` of corrections that a channel taken over was learned from; only noted")
 	fs.StringVar(&p.edits, "edits", "", "`FILE` of counts of single-letter edits to smooth the channel with")
 	fs.StringVar(&p.homophones, "homophones", "", "`FILE` of words that sound alike")
 	fs.StringArrayVar(&p.from, "from", nil, "model `FILE` to take sections from; of several, the last that has one gives it")
@@ -68,6 +74,8 @@ func declareModelBuild(fs *pflag.FlagSet) action {
 		switch {
 		case p.output == "":
 			return trouble, misusef("say with -o which file to write")
+		case len(p.pairs) > 0 && len(p.fitted) > 0:
+			return trouble, misusef("--fitted is for a channel taken over; --pairs learns one, and notes its pairs itself")
 		case len(operands) > 0:
 			return trouble, misusef("%q is no flag; every part has its own", operands[0])
 		}

@@ -54,6 +54,11 @@ func buildModel(ctx context.Context, c *console, p *modelParts) error {
 			return err
 		}
 	}
+	if len(p.fitted) > 0 {
+		if err := b.recordFitted(); err != nil {
+			return err
+		}
+	}
 	if len(p.words)+len(p.texts)+len(p.pairs) > 0 || p.homophones != "" {
 		if err := b.findConfusables(ctx); err != nil {
 			return err
@@ -75,7 +80,7 @@ func buildModel(ctx context.Context, c *console, p *modelParts) error {
 // sectionOrder is the order of the parts in a file.
 var sectionOrder = []string{
 	foulcase.SectionCard, foulcase.SectionJudgement, foulcase.SectionLexicon, foulcase.SectionMirror,
-	foulcase.SectionChannel, foulcase.SectionSpelling, foulcase.SectionConfusables, foulcase.SectionLM,
+	foulcase.SectionChannel, foulcase.SectionFitted, foulcase.SectionSpelling, foulcase.SectionConfusables, foulcase.SectionLM,
 }
 
 func (b *builder) write() error {
@@ -95,6 +100,9 @@ func (b *builder) takeOver() error {
 		file, err := openModelFile(path)
 		if err != nil {
 			return err
+		}
+		if _, ok := file.Section(foulcase.SectionChannel); ok {
+			delete(b.held, foulcase.SectionFitted) // it is of another channel
 		}
 		for _, name := range file.Names() {
 			body, _ := file.Section(name)
@@ -191,26 +199,13 @@ func rareForms(lex *lexicon.Lexicon) iter.Seq2[string, int] {
 	}
 }
 
-// learnSlips fits the channel to pairs of observed and intended forms, those
-// aside whose observed form is a word.
+// learnSlips fits the channel to pairs of observed and intended forms.
 func (b *builder) learnSlips() error {
 	b.progress.Set("channel", 0)
-	lex, err := b.lexicon()
+	pairs, err := b.slips(b.parts.pairs)
 	if err != nil {
 		return err
 	}
-	var pairs []channel.Pair
-	for _, path := range b.parts.pairs {
-		more, err := readFile(path, func(r io.Reader, name string) ([]channel.Pair, error) {
-			p, err := channel.ReadPairs(r)
-			return p, nameFile(name, err)
-		})
-		if err != nil {
-			return err
-		}
-		pairs = append(pairs, more...)
-	}
-	known := func(word string) bool { _, ok := lex.ID([]byte(word)); return ok }
 	var o channel.FitOptions
 	if b.parts.edits != "" {
 		o.Edits, err = readFile(b.parts.edits, func(r io.Reader, name string) ([]channel.Edit, error) {
@@ -221,12 +216,48 @@ func (b *builder) learnSlips() error {
 			return err
 		}
 	}
-	m, _, err := channel.Fit(channel.Clean(pairs, known), o)
+	m, _, err := channel.Fit(pairs, o)
 	if err != nil {
 		return err
 	}
 	b.held[foulcase.SectionChannel] = m.Section()
+	b.held[foulcase.SectionFitted] = channel.FittedSection(pairs)
 	return nil
+}
+
+// recordFitted notes which pairs the channel taken over was fitted to.
+func (b *builder) recordFitted() error {
+	if _, ok := b.held[foulcase.SectionChannel]; !ok {
+		return fmt.Errorf("--fitted tells of a channel, and there is none: add --from a model that has one")
+	}
+	pairs, err := b.slips(b.parts.fitted)
+	if err != nil {
+		return err
+	}
+	b.held[foulcase.SectionFitted] = channel.FittedSection(pairs)
+	return nil
+}
+
+// slips reads pairs that a channel is fitted to, those aside whose observed
+// form is a word.
+func (b *builder) slips(paths []string) ([]channel.Pair, error) {
+	lex, err := b.lexicon()
+	if err != nil {
+		return nil, err
+	}
+	var pairs []channel.Pair
+	for _, path := range paths {
+		more, err := readFile(path, func(r io.Reader, name string) ([]channel.Pair, error) {
+			p, err := channel.ReadPairs(r)
+			return p, nameFile(name, err)
+		})
+		if err != nil {
+			return nil, err
+		}
+		pairs = append(pairs, more...)
+	}
+	known := func(word string) bool { _, ok := lex.ID([]byte(word)); return ok }
+	return channel.Clean(pairs, known), nil
 }
 
 func nameFile(name string, err error) error {
