@@ -14,6 +14,7 @@ import (
 	"sync/atomic"
 
 	"example.org/foulcase/candidates/lexicon"
+	"example.org/foulcase/channel"
 )
 
 // ConfusableOptions steers BuildConfusables. The zero value works.
@@ -27,8 +28,15 @@ type ConfusableOptions struct {
 	LeastPrior float32
 	// MostCost is the greatest channel cost of an entry (9.5 nats when zero).
 	MostCost float32
-	// Most is the greatest number of entries a word (12 when zero).
+	// Most is the greatest number of entries a word that the channel's search
+	// gives (12 when zero).
 	Most int
+	// NearCost is the greatest cost of a word a single edit away (8.5 nats when
+	// zero): among words any letter is taken for any other oftener than the
+	// channel, which has seen misspellings, would have it.
+	NearCost float32
+	// NearPrior is the least log prior of such words (-14.5 nats when zero).
+	NearPrior float32
 	// Jobs is the number of goroutines (1 when zero).
 	Jobs int
 	// Progress, if set, is told now and then how many of the words are done;
@@ -41,6 +49,8 @@ func (o *ConfusableOptions) complete() {
 	o.LeastPrior = cmp.Or(o.LeastPrior, -16)
 	o.MostCost = cmp.Or(o.MostCost, 9.5)
 	o.Most = min(cmp.Or(o.Most, 12), math.MaxUint8)
+	o.NearCost = cmp.Or(o.NearCost, 8.5)
+	o.NearPrior = cmp.Or(o.NearPrior, -14.5)
 	o.Jobs = max(o.Jobs, 1)
 }
 
@@ -62,8 +72,9 @@ func ReadHomophones(r io.Reader) ([][]string, error) {
 }
 
 // BuildConfusables writes the section for a lexicon: for every word typed, the
-// other words that may have been meant, best first by a search of newSearcher's
-// searchers, one for each goroutine. Spelling variants of one word are not
+// other words that may have been meant: the best by a search of newSearcher's
+// searchers, one for each goroutine, those that sound alike, and those that are a
+// single edit away. Spelling variants of one word are not
 // confusable. The result does not depend on the number of jobs.
 func BuildConfusables(ctx context.Context, lex *lexicon.Lexicon, newSearcher func() *Searcher, o ConfusableOptions) ([]byte, error) {
 	o.complete()
@@ -71,6 +82,7 @@ func BuildConfusables(ctx context.Context, lex *lexicon.Lexicon, newSearcher fun
 		lex:     lex,
 		options: o,
 		alike:   alike(lex, o.Homophones),
+		near:    newNearWords(lex, o.NearPrior),
 		blocks:  make([][]byte, (lex.Len()+blockWords-1)/blockWords),
 	}
 	var workers sync.WaitGroup
@@ -104,6 +116,7 @@ type confusableBuilder struct {
 	lex     *lexicon.Lexicon
 	options ConfusableOptions
 	alike   map[uint32][]uint32
+	near    *nearWords
 	blocks  [][]byte
 	next    atomic.Int64
 }
@@ -125,7 +138,7 @@ func (b *confusableBuilder) work(ctx context.Context, s *Searcher) {
 				// Twice as many as are kept: variants and rare words fall away.
 				found = s.Search(found, form, 2*b.options.Most+1, bound)
 			}
-			b.blocks[block] = appendEntries(b.blocks[block], b.entries(uint32(id), found, s.weights))
+			b.blocks[block] = appendEntries(b.blocks[block], b.entries(uint32(id), found, s))
 		}
 		if b.options.Progress != nil {
 			b.options.Progress(min((block+1)*blockWords, b.lex.Len()), b.lex.Len())
@@ -134,22 +147,44 @@ func (b *confusableBuilder) work(ctx context.Context, s *Searcher) {
 }
 
 // entries chooses the neighbours of a word from what was found, in order of id.
-func (b *confusableBuilder) entries(id uint32, found []Candidate, w Weights) []Candidate {
+func (b *confusableBuilder) entries(id uint32, found []Candidate, s *Searcher) []Candidate {
 	for _, other := range b.alike[id] {
-		prior := b.lex.Prior(other)
-		at := slices.IndexFunc(found, func(c Candidate) bool { return c.ID == other })
-		if at < 0 {
-			found = append(found, Candidate{ID: other, Channel: b.options.HomophoneCost, Prior: prior})
-		} else {
-			found[at].Channel = min(found[at].Channel, b.options.HomophoneCost)
-		}
+		found = b.cheapen(found, other, b.options.HomophoneCost)
 	}
 	found = slices.DeleteFunc(found, func(c Candidate) bool {
 		return c.House || c.ID == id || c.Channel > b.options.MostCost || c.Prior < b.options.LeastPrior || b.lex.Variants(c.ID, id)
 	})
-	slices.SortStableFunc(found, func(x, y Candidate) int { return cmp.Compare(x.Score(w), y.Score(w)) })
+	slices.SortStableFunc(found, func(x, y Candidate) int { return cmp.Compare(x.Score(s.weights), y.Score(s.weights)) })
 	found = found[:min(len(found), b.options.Most)]
+	if b.lex.Prior(id) >= b.options.NearPrior {
+		found = b.addNear(found, id, s.channel)
+	}
 	slices.SortFunc(found, func(x, y Candidate) int { return cmp.Compare(x.ID, y.ID) })
+	return found
+}
+
+// cheapen sees to it that a word is among those found, at a cost of at most so
+// much.
+func (b *confusableBuilder) cheapen(found []Candidate, id uint32, cost float32) []Candidate {
+	at := slices.IndexFunc(found, func(c Candidate) bool { return c.ID == id })
+	if at < 0 {
+		return append(found, Candidate{ID: id, Channel: cost, Prior: b.lex.Prior(id)})
+	}
+	found[at].Channel = min(found[at].Channel, cost)
+	return found
+}
+
+// addNear adds the words a single edit away, the likeliest while there is room.
+func (b *confusableBuilder) addNear(found []Candidate, id uint32, m *channel.Model) []Candidate {
+	near := b.near.of(id)
+	slices.SortStableFunc(near, func(x, y uint32) int { return cmp.Compare(b.lex.Prior(y), b.lex.Prior(x)) })
+	typed := string(b.lex.AppendForm(nil, id))
+	for _, other := range near {
+		if len(found) < math.MaxUint8 && !b.lex.Variants(other, id) {
+			cost := float32(m.Cost(typed, string(b.lex.AppendForm(nil, other))))
+			found = b.cheapen(found, other, min(cost, b.options.NearCost))
+		}
+	}
 	return found
 }
 
