@@ -174,7 +174,7 @@ func (j *judge) evidence(c *change, words []uint32) float64 {
 	}
 	sl, sum := &j.slots[c.from], 0.0
 	if int(words[0]) < lex.Len() {
-		sum += w.Recurrence * j.recurring.word(words[0], lex, 0)
+		sum += w.Recurrence * j.oftener(words[0], 0)
 		name := sl.token.Case == text.Title && c.from > j.lead && lex.Entry(words[0]).Usual != lexicon.TitleCase
 		if name || j.compounded(c.from) {
 			sum -= w.Capital

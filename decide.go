@@ -3,6 +3,7 @@ package foulcase
 import (
 	"bytes"
 	"cmp"
+	"math"
 	"slices"
 	"strings"
 
@@ -14,7 +15,8 @@ import (
 const (
 	// maxCorrections is how many corrections a mark offers.
 	maxCorrections = 10
-	// leastShare is the least posterior of a correction beyond the first.
+	// leastShare is the least share of a finding that a correction beyond the
+	// first has.
 	leastShare = 1e-4
 )
 
@@ -22,7 +24,8 @@ const (
 type finding struct {
 	from, to int // slots
 	kind     Kind
-	p        float64  // that the typed reading is wrong
+	p        float64  // the lattice's posterior that the typed reading is wrong
+	odds     float64  // log-odds that it is, all evidence weighed, nats, before the document's rate of slips
 	changes  []change // best first
 }
 
@@ -37,7 +40,25 @@ func (j *judge) findings(s text.Sentence, block []byte) ([]finding, error) {
 	if err := j.weighTogether(); err != nil {
 		return nil, err
 	}
-	return j.group(), nil
+	found := j.group()
+	for i := range found {
+		found[i].odds = j.oddsOf(&found[i])
+	}
+	return found, nil
+}
+
+// leastWeighed is the posterior under which a finding is not looked at further.
+const leastWeighed = 3e-5
+
+// oddsOf weighs all that is known of a finding.
+func (j *judge) oddsOf(f *finding) float64 {
+	switch {
+	case f.p < leastWeighed:
+		return math.Inf(-1)
+	case j.e.calibration == nil:
+		return logit(f.p)
+	}
+	return j.e.calibration.logOdds(f.kind, j.collect(f))
 }
 
 // weighTogether builds the lattice around the changes and gives each its
@@ -92,7 +113,7 @@ func (j *judge) group() []finding {
 		for ; k < len(j.changes) && j.changes[k].from == j.changes[i].from && j.changes[k].to == j.changes[i].to; k++ {
 			p += j.changes[k].p
 		}
-		f := finding{j.changes[i].from, j.changes[i].to, j.changes[i].kind, min(p, 1), j.changes[i:k]}
+		f := finding{from: j.changes[i].from, to: j.changes[i].to, kind: j.changes[i].kind, p: min(p, 1), changes: j.changes[i:k]}
 		i = k
 		if n := len(found); n > 0 && found[n-1].to > f.from {
 			if found[n-1].p < f.p {
@@ -105,18 +126,19 @@ func (j *judge) group() []finding {
 	return found
 }
 
-// corrections writes out the changes of a finding as the text would have them.
+// corrections writes out the changes of a finding as the text would have them,
+// with each one's share of the finding.
 func (j *judge) corrections(f finding, block []byte) []Correction {
 	out := make([]Correction, 0, min(len(f.changes), maxCorrections))
 	observed := string(block[j.slots[f.from].token.Start:j.slots[f.to-1].token.End])
 	for i, c := range f.changes {
-		if len(out) == maxCorrections || i > 0 && c.p < leastShare {
+		if len(out) == maxCorrections || i > 0 && c.p < leastShare*f.p {
 			break
 		}
 		written := j.write(&c, block)
 		same := func(o Correction) bool { return o.Text == written }
 		if written != observed && !slices.ContainsFunc(out, same) {
-			out = append(out, Correction{written, c.p})
+			out = append(out, Correction{written, c.p / f.p})
 		}
 	}
 	return out

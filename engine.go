@@ -43,6 +43,7 @@ const (
 	SectionSpelling    = "spelling"    // lm, over characters: the price of a new word
 	SectionConfusables = "confusables" // candidates: words taken for one another
 	SectionJudgement   = "judgement"   // Judgement, JSON
+	SectionCalibration = "calibration" // Calibration, JSON; may be missing
 	SectionFitted      = "fitted"      // channel: the pairs it was fitted on; may be missing
 )
 
@@ -56,6 +57,7 @@ type Engine struct {
 	mirror      *candidates.Mirror
 	confusables *candidates.Confusables
 	judgement   *Judgement
+	calibration *calibrator     // nil: the lattice's posteriors are taken for probabilities
 	fitted      *channel.Fitted // nil: not recorded
 	judges      sync.Pool       // *judge
 }
@@ -88,20 +90,25 @@ func OpenFile(path string) (*Engine, error) {
 
 func newEngine(file *modelfile.File) (*Engine, error) {
 	e := &Engine{file: file}
-	parts := []struct {
-		name string
-		open func([]byte) error
+	for _, p := range []struct {
+		name     string
+		optional bool
+		open     func([]byte) error
 	}{
-		{SectionLexicon, opener(&e.lexicon, lexicon.Open)},
-		{SectionChannel, opener(&e.channel, channel.Open)},
-		{SectionLM, opener(&e.lm, lm.Open)},
-		{SectionSpelling, opener(&e.spelling, lm.OpenSpelling)},
-		{SectionMirror, opener(&e.mirror, candidates.OpenMirror)},
-		{SectionConfusables, opener(&e.confusables, candidates.OpenConfusables)},
-		{SectionJudgement, opener(&e.judgement, parseJudgement)},
-	}
-	for _, p := range parts {
+		{SectionLexicon, false, opener(&e.lexicon, lexicon.Open)},
+		{SectionChannel, false, opener(&e.channel, channel.Open)},
+		{SectionFitted, true, opener(&e.fitted, channel.OpenFitted)},
+		{SectionLM, false, opener(&e.lm, lm.Open)},
+		{SectionSpelling, false, opener(&e.spelling, lm.OpenSpelling)},
+		{SectionMirror, false, opener(&e.mirror, candidates.OpenMirror)},
+		{SectionConfusables, false, opener(&e.confusables, candidates.OpenConfusables)},
+		{SectionJudgement, false, opener(&e.judgement, parseJudgement)},
+		{SectionCalibration, true, opener(&e.calibration, parseCalibration)},
+	} {
 		body, ok := file.Section(p.name)
+		if !ok && p.optional {
+			continue
+		}
 		if !ok {
 			return nil, fmt.Errorf("model has no section %q; complete it with `foulcase model build`", p.name)
 		}
@@ -119,12 +126,6 @@ func newEngine(file *modelfile.File) (*Engine, error) {
 	} {
 		if part.got != part.want {
 			return nil, fmt.Errorf("section %q counts %d words where the lexicon has %d: they were not built together; rebuild the model", part.name, part.got, part.want)
-		}
-	}
-	if body, ok := file.Section(SectionFitted); ok {
-		var err error
-		if e.fitted, err = channel.OpenFitted(body); err != nil {
-			return nil, err
 		}
 	}
 	e.judges.New = func() any { return newJudge(e) }

@@ -13,9 +13,9 @@ import (
 // Bounds of the lattice. They trade exactness for time; development text shows
 // no difference beyond them.
 const (
-	latticeStates = 64  // language-model states kept at a node
-	latticeMargin = 14  // nats below a node's best at which a state is dropped
-	hopeless      = 7.0 // nats below the typed reading at which a change is not weighed
+	latticeStates = 64   // language-model states kept at a node
+	latticeMargin = 14   // nats below a node's best at which a state is dropped
+	hopeless      = 10.0 // nats below the typed reading at which a change is not weighed
 )
 
 // judge weighs one sentence at a time. It owns every buffer that takes, so
@@ -25,12 +25,14 @@ type judge struct {
 	e       *Engine
 	house   *House
 	variety Variety
+	without Evidence
 
 	segmenter text.Segmenter
 	finder    finder
 	lattice   *lattice.Lattice[lm.State]
 	recurring recurrence
 
+	tokens []text.Token
 	slots  []slot
 	ids    []uint32   // the typed words of all slots, then </s>
 	states []lm.State // before each of ids
@@ -40,6 +42,8 @@ type judge struct {
 	words   []uint32 // what the changes put in, end to end
 	form    []byte   // scratch
 	ahead   [2]lm.State
+
+	seen evidence // of the finding at hand
 	// shouting: the sentence is in capitals, so capitals say nothing of a word.
 	shouting bool
 	lead     int     // the slot of the first word, whose capital says nothing
@@ -82,6 +86,7 @@ func (e *Engine) take(o Options) *judge {
 	j := e.judges.Get().(*judge)
 	j.variety = o.Variety
 	j.house = o.House
+	j.without = o.Without
 	j.finder.hold(o.Variety, o.House)
 	j.recurring.reset()
 	return j
@@ -93,6 +98,7 @@ func (e *Engine) give(j *judge) { e.judges.Put(j) }
 func (j *judge) read(s text.Sentence, block []byte) {
 	lex := j.e.lexicon
 	j.slots, j.ids = j.slots[:0], j.ids[:0]
+	j.tokens = s.Tokens
 	j.shouting = inCapitals(s.Tokens)
 	j.lead = -1
 	for place, t := range s.Tokens {
@@ -127,14 +133,26 @@ func (j *judge) classify(sl *slot) {
 		sl.status = closed
 	case int(first) >= e.lexicon.Len():
 		sl.status = unknown
-		sl.score = -e.judgement.NewWord*float64(e.spelling.Price(form)) + e.judgement.RecurrenceNew*j.recurring.form(form)
+		sl.score = -e.judgement.NewWord * float64(e.spelling.Price(form))
+		if !j.without.has(RecurringEvidence) {
+			sl.score += e.judgement.RecurrenceNew * j.recurring.form(form)
+		}
 	case !j.spelt(first):
 		sl.status, sl.id = foreign, first
 		sl.score = -e.judgement.Variety
 	default:
 		sl.status, sl.id = known, first
-		sl.score = e.judgement.Recurrence * j.recurring.word(first, e.lexicon, 1)
+		sl.score = e.judgement.Recurrence * j.oftener(first, 1)
 	}
+}
+
+// oftener is how much oftener than expected the document has a word, its own
+// occurrences aside, nats.
+func (j *judge) oftener(id uint32, own int) float64 {
+	if j.without.has(CacheEvidence) {
+		return 0
+	}
+	return j.recurring.word(id, j.e.lexicon, own)
 }
 
 // misdecoded reports whether the word at a place stands against a symbol beyond

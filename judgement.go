@@ -3,6 +3,7 @@ package foulcase
 import (
 	"bytes"
 	"encoding/json"
+	"errors"
 	"fmt"
 	"math"
 	"slices"
@@ -18,7 +19,7 @@ import (
 //	+ Σ over unknown words kept (−NewWord × character price + evidence)
 //
 // and the posterior of a change is the share of all readings' weight that
-// passes through it.
+// passes through it. The calibration makes a probability of it.
 type Judgement struct {
 	LanguageModel float64 `json:"language_model"` // weight of the n-gram model's log-probability
 	Channel       float64 `json:"channel"`        // weight of the channel's cost
@@ -43,9 +44,13 @@ type Judgement struct {
 	RankRunon      float64 `json:"rank_runon"`
 	RankPossessive float64 `json:"rank_possessive"`
 
-	// Budgets gives, by false alarms a 1,000 words of good text (ascending), the
-	// least probability at which a finding of each kind is reported.
-	Budgets []BudgetRow `json:"budgets"`
+	// SlipRate says how a document's own rate of slips is estimated.
+	SlipRate SlipRate `json:"slip_rate"`
+	// LeastP is the least probability of a finding that is reported, whatever
+	// the budget.
+	LeastP float64 `json:"least_p"`
+	// Budgets are thresholds for a model without a calibration, as there.
+	Budgets []BudgetRow `json:"budgets,omitempty"`
 	// DefaultBudget is the budget of queries and marks together when none is asked for.
 	DefaultBudget float64 `json:"default_budget"`
 	// MarkShare is the part of the budget that marks alone may use.
@@ -66,7 +71,8 @@ func (t *KindTable) Of(k Kind) float64 {
 	return [...]float64{t.Nonword, t.Realword, t.Runon, t.Split, t.Repeat}[k]
 }
 
-// BudgetRow is one row of Judgement.Budgets.
+// BudgetRow tells the least probability of each kind of finding that goes with
+// a budget of false alarms a 1,000 words.
 type BudgetRow struct {
 	Budget float64   `json:"budget"`
 	P      KindTable `json:"p"`
@@ -80,19 +86,41 @@ func parseJudgement(section []byte) (*Judgement, error) {
 	if err := dec.Decode(j); err != nil {
 		return nil, fmt.Errorf("judgement: %w", err)
 	}
-	if len(j.Budgets) == 0 {
-		return nil, fmt.Errorf("judgement: no budgets")
+	if !(j.LanguageModel > 0 && j.Channel > 0) {
+		return nil, errors.New("judgement: language_model and channel want weights above 0")
 	}
-	ascending := slices.IsSortedFunc(j.Budgets, func(a, b BudgetRow) int {
-		if a.Budget < b.Budget {
-			return -1
-		}
-		return 1
-	})
-	if !ascending || j.Budgets[0].Budget <= 0 {
-		return nil, fmt.Errorf("judgement: budgets are not positive and ascending")
+	if r := j.SlipRate; r != (SlipRate{}) && !(0 < r.Least && r.Least <= r.Prior && r.Prior <= r.Most && r.Most < 1 && r.Strength > 0) {
+		return nil, fmt.Errorf("judgement: slip_rate wants strength > 0 and 0 < least <= prior <= most < 1, has %+v", r)
+	}
+	if j.LeastP < 0 || j.LeastP >= 1 {
+		return nil, fmt.Errorf("judgement: least_p %v is no probability", j.LeastP)
+	}
+	if j.Budgets == nil {
+		return j, nil
+	}
+	if err := checkBudgets(j.Budgets); err != nil {
+		return nil, fmt.Errorf("judgement: %w", err)
 	}
 	return j, nil
+}
+
+func checkBudgets(rows []BudgetRow) error {
+	if len(rows) == 0 {
+		return errors.New("no budgets")
+	}
+	before := 0.0
+	for _, r := range rows {
+		if !(r.Budget > before) {
+			return errors.New("budgets are not positive and ascending")
+		}
+		before = r.Budget
+		for _, k := range Kinds() {
+			if p := r.P.Of(k); !(p > 0 && p < 1) {
+				return fmt.Errorf("budget %v: p %v of %s is not between 0 and 1", r.Budget, p, k)
+			}
+		}
+	}
+	return nil
 }
 
 // thresholds are the least probabilities at which each kind is reported.
@@ -100,23 +128,44 @@ type thresholds struct {
 	query, mark [len(kindNames)]float64
 }
 
+// grade tells what a finding of a kind and probability is reported as.
+func (t *thresholds) grade(k Kind, p float64) Grade {
+	switch {
+	case p >= t.mark[k]:
+		return GradeMark
+	case p >= t.query[k]:
+		return GradeQuery
+	}
+	return GradeDoubt
+}
+
+// likelier is the threshold of a model that was never measured: it reports what
+// is likelier wrong than right.
+var likelier = []BudgetRow{{Budget: 1, P: KindTable{.5, .5, .5, .5, .5}}}
+
 // thresholdsFor returns what a budget of false alarms a 1,000 words allows.
-func (j *Judgement) thresholdsFor(budget float64) thresholds {
+func (e *Engine) thresholdsFor(budget float64) thresholds {
+	j, rows := e.judgement, e.judgement.Budgets
+	if e.calibration != nil {
+		rows = e.calibration.Budgets
+	}
+	if rows == nil {
+		rows = likelier
+	}
 	if budget <= 0 {
 		budget = j.DefaultBudget
 	}
 	var t thresholds
 	for _, k := range Kinds() {
-		t.query[k] = j.leastP(k, budget)
-		t.mark[k] = max(t.query[k], j.leastP(k, budget*j.MarkShare))
+		t.query[k] = max(leastP(rows, k, budget), j.LeastP)
+		t.mark[k] = max(leastP(rows, k, budget*j.MarkShare), t.query[k])
 	}
 	return t
 }
 
 // leastP interpolates the table in the logs of budget and odds, and holds the
 // end rows beyond them.
-func (j *Judgement) leastP(k Kind, budget float64) float64 {
-	rows := j.Budgets
+func leastP(rows []BudgetRow, k Kind, budget float64) float64 {
 	i, found := slices.BinarySearchFunc(rows, budget, func(r BudgetRow, b float64) int {
 		if r.Budget < b {
 			return -1

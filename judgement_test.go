@@ -6,15 +6,15 @@ import (
 )
 
 func TestThresholdsFollowTheBudget(t *testing.T) {
-	j := &Judgement{
+	e := &Engine{judgement: &Judgement{
 		Budgets: []BudgetRow{
-			{0.5, KindTable{Nonword: 0.9, Realword: 0.99}},
-			{2, KindTable{Nonword: 0.5, Realword: 0.8}},
+			{0.5, KindTable{.9, .99, .9, .9, .9}},
+			{2, KindTable{.5, .8, .5, .5, .5}},
 		},
 		DefaultBudget: 2,
 		MarkShare:     0.25,
-	}
-	at := func(b float64) thresholds { return j.thresholdsFor(b) }
+	}}
+	at := e.thresholdsFor
 	if got := at(0); got.query[Nonword] != 0.5 || got.mark[Nonword] != 0.9 {
 		t.Errorf("default budget: query %v, mark %v; want .5, .9", got.query[Nonword], got.mark[Nonword])
 	}
@@ -48,8 +48,8 @@ func TestRecurrenceComparesWithExpectation(t *testing.T) {
 		r.addWord(0)
 	}
 	r.addWord(1)
-	r.addForm([]byte("zilverbank"))
-	r.addForm([]byte("zilverbank"))
+	r.addForm([]byte("zilverbank"), false)
+	r.addForm([]byte("zilverbank"), false)
 	often, seldom := share(0.9), share(1e-7)
 	if got := r.word(0, often, 1); got > math.Log(3) {
 		t.Errorf("a word as frequent as everywhere has evidence %v", got)

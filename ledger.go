@@ -1,8 +1,10 @@
 package foulcase
 
 import (
+	"cmp"
 	"fmt"
 	"math"
+	"slices"
 	"strings"
 
 	"example.org/foulcase/candidates/lexicon"
@@ -12,21 +14,37 @@ import (
 
 // Ledger takes the judgement of a text apart, word by word.
 type Ledger struct {
-	Sentence string         `json:"sentence"`
-	Weights  Judgement      `json:"weights"`
-	Words    []LedgerColumn `json:"words"`
+	Sentence string    `json:"sentence"`
+	Weights  Judgement `json:"weights"`
+	// Rate is how many slips a word the writer is taken to make, and Shift what
+	// that adds to every finding's log-odds, nats.
+	Rate  float64        `json:"rate"`
+	Shift float64        `json:"shift"`
+	Words []LedgerColumn `json:"words"`
 }
 
 // LedgerColumn is one word and every reading of it that was weighed.
 type LedgerColumn struct {
 	Observed string          `json:"observed"`
-	Offset   int             `json:"offset"` // bytes into the sentence
-	Status   string          `json:"status"` // known, unknown, other-variety or closed
-	P        float64         `json:"p"`      // probability that it is an error
-	Query    float64         `json:"query"`  // least p for a query of the kind
-	Mark     float64         `json:"mark"`   // least p for a mark of the kind
+	Offset   int             `json:"offset"`          // bytes into the sentence
+	Status   string          `json:"status"`          // known, unknown, other-variety or closed
+	P        float64         `json:"p"`               // probability that it is an error: of Base, Terms and the ledger's Shift added up
+	Base     float64         `json:"base"`            // log-odds before any evidence, nats
+	Terms    []LedgerTerm    `json:"terms,omitempty"` // what was known of it, weightiest first
+	Query    float64         `json:"query"`           // least p for a query of the kind
+	Mark     float64         `json:"mark"`            // least p for a mark of the kind
 	Verdict  string          `json:"verdict"`
 	Readings []LedgerReading `json:"readings"` // the typed one first, then best first
+
+	kind Kind
+	odds float64
+}
+
+// LedgerTerm is one feature of a finding and what it says.
+type LedgerTerm struct {
+	Feature string  `json:"feature"`
+	Value   float64 `json:"value"`
+	Nats    float64 `json:"nats"` // added to the log-odds of an error
 }
 
 // LedgerReading is the account of one reading. All amounts are nats, and
@@ -41,7 +59,7 @@ type LedgerReading struct {
 	Slip     float64       `json:"slip"`     // log prior odds of the kind
 	Evidence float64       `json:"evidence"` // of document, capitals, inflection, new-word price
 	Score    float64       `json:"score"`
-	P        float64       `json:"p"` // posterior
+	P        float64       `json:"p"` // posterior in the lattice
 }
 
 // LedgerNGram is one language-model score.
@@ -57,37 +75,59 @@ var statusNames = [...]string{closed: "closed", known: "known", unknown: "unknow
 // Ledger accounts for every word of a plain text, readings too poor to be
 // weighed in Proof included.
 func (e *Engine) Ledger(sentence string, o Options) Ledger {
-	j := e.take(o)
-	defer e.give(j)
-	j.hopeless = math.Inf(1)
-	defer func() { j.hopeless = hopeless }()
+	d := e.newDocument(o)
+	defer e.give(d.judge)
+	d.hopeless = math.Inf(1)
+	defer func() { d.hopeless = hopeless }()
 
 	l := Ledger{Sentence: sentence, Weights: *e.judgement, Words: []LedgerColumn{}}
-	limits := e.judgement.thresholdsFor(o.Budget)
 	block := &text.Block{Text: []byte(sentence)}
-	j.count([]*text.Block{block})
-	for s := range j.segmenter.Sentences(block.Text) {
-		found, err := j.findings(s, block.Text)
+	d.count([]*text.Block{block})
+	for s := range d.segmenter.Sentences(block.Text) {
+		found, err := d.findings(s, block.Text)
 		if err != nil {
 			continue // no reading has a probability: nothing to account for
 		}
-		for i := range j.slots {
-			if j.slots[i].token.Kind == text.Word {
-				l.Words = append(l.Words, j.column(i, found, block.Text, limits))
+		for _, f := range found {
+			d.odds = append(d.odds, f.odds)
+		}
+		d.words += wordsIn(s.Tokens)
+		for i := range d.slots {
+			if d.slots[i].token.Kind == text.Word {
+				l.Words = append(l.Words, d.column(i, found, block.Text))
 			}
 		}
+	}
+	d.rate.settle(d.words, d.odds)
+	l.Shift = d.rate.shift
+	l.Rate = logistic(d.rate.base + d.rate.shift)
+	for i := range l.Words {
+		l.Words[i].decide(&d.rate, &d.limits)
 	}
 	return l
 }
 
+// decide settles what becomes of a column now that the text is known.
+func (c *LedgerColumn) decide(rate *slipRate, limits *thresholds) {
+	if math.IsInf(c.odds, -1) {
+		return
+	}
+	c.P = logistic(c.odds + rate.shift)
+	c.Query, c.Mark = limits.query[c.kind], limits.mark[c.kind]
+	if g := limits.grade(c.kind, c.P); g != GradeDoubt {
+		c.Verdict = g.String() + " " + c.kind.String()
+	}
+}
+
 // column accounts for slot i.
-func (j *judge) column(i int, found []finding, block []byte, limits thresholds) LedgerColumn {
+func (j *judge) column(i int, found []finding, block []byte) LedgerColumn {
 	sl := &j.slots[i]
 	c := LedgerColumn{
 		Observed: string(block[sl.token.Start:sl.token.End]),
 		Offset:   sl.token.Start,
 		Status:   statusNames[sl.status],
 		Verdict:  "let stand",
+		odds:     math.Inf(-1),
 		Readings: []LedgerReading{j.typedReading(sl, block)},
 	}
 	rest := 1.0
@@ -100,19 +140,26 @@ func (j *judge) column(i int, found []finding, block []byte, limits thresholds) 
 		}
 	}
 	c.Readings[0].P = max(rest, 0)
-	for _, f := range found {
-		if f.from != i {
-			continue
-		}
-		c.P, c.Query, c.Mark = f.p, limits.query[f.kind], limits.mark[f.kind]
-		switch {
-		case f.p >= c.Mark:
-			c.Verdict = "mark " + f.kind.String()
-		case f.p >= c.Query:
-			c.Verdict = "query " + f.kind.String()
+	for n := range found {
+		if f := &found[n]; f.from == i && !math.IsInf(f.odds, -1) {
+			c.kind, c.odds = f.kind, f.odds
+			c.Base, c.Terms = j.terms(f)
 		}
 	}
 	return c
+}
+
+// terms accounts for the log-odds of a finding.
+func (j *judge) terms(f *finding) (base float64, terms []LedgerTerm) {
+	if j.e.calibration == nil {
+		return f.odds, nil
+	}
+	model := j.e.calibration.models[groupOf(f.kind)]
+	model.Account(j.collect(f)[:], func(feature string, value float32, nats float64) {
+		terms = append(terms, LedgerTerm{feature, float64(value), nats})
+	})
+	slices.SortStableFunc(terms, func(a, b LedgerTerm) int { return cmp.Compare(math.Abs(b.Nats), math.Abs(a.Nats)) })
+	return model.Base(), terms
 }
 
 func (j *judge) typedReading(sl *slot, block []byte) LedgerReading {
@@ -197,6 +244,7 @@ func (l Ledger) String() string {
 	w := l.Weights
 	fmt.Fprintf(&b, "%s\n", strings.TrimSpace(l.Sentence))
 	fmt.Fprintf(&b, "score = %.3g × lm + slip - %.3g × channel + evidence   (nats)\n", w.LanguageModel, w.Channel)
+	fmt.Fprintf(&b, "the writer is taken to slip %.3g times in 1,000 words: %+.2f nats to every finding\n", 1000*l.Rate, l.Shift)
 	for _, c := range l.Words {
 		fmt.Fprintf(&b, "\n%q  %s  p %.4f", c.Observed, c.Status, c.P)
 		if c.Mark > 0 {
@@ -206,8 +254,27 @@ func (l Ledger) String() string {
 		for _, r := range c.Readings[:min(len(c.Readings), 8)] {
 			r.write(&b)
 		}
+		c.writeTerms(&b)
 	}
 	return b.String()
+}
+
+// shownTerms is how many terms of a finding a terminal is shown.
+const shownTerms = 8
+
+func (c *LedgerColumn) writeTerms(b *strings.Builder) {
+	if len(c.Terms) == 0 {
+		return
+	}
+	rest := 0.0
+	for i, t := range c.Terms {
+		if i < shownTerms {
+			fmt.Fprintf(b, "      evidence: %-12s %8.3g %+8.2f\n", t.Feature, t.Value, t.Nats)
+		} else {
+			rest += t.Nats
+		}
+	}
+	fmt.Fprintf(b, "      evidence: all else and base     %+8.2f\n", rest+c.Base)
 }
 
 func (r *LedgerReading) write(b *strings.Builder) {

@@ -30,9 +30,11 @@ const (
 	GradeQuery Grade = iota
 	// GradeMark is a correction sure enough to act on.
 	GradeMark
+	// GradeDoubt is less sure than the budget allows; see Options.Doubts.
+	GradeDoubt
 )
 
-func (g Grade) String() string { return [...]string{"query", "mark"}[g] }
+func (g Grade) String() string { return [...]string{"query", "mark", "doubt"}[g] }
 
 // MarshalText writes the grade's name.
 func (g Grade) MarshalText() ([]byte, error) { return []byte(g.String()), nil }

@@ -3,6 +3,8 @@ package foulcase
 import (
 	"fmt"
 	"io"
+	"slices"
+	"strings"
 
 	"example.org/foulcase/candidates/lexicon"
 )
@@ -65,7 +67,49 @@ type Options struct {
 	// Budget is how many false alarms a 1,000 words of good text the reader
 	// will bear, marks and queries together; 0 takes the model's default.
 	Budget float64
+	// SlipRate fixes how many slips a word the writer makes; 0 estimates it from
+	// the document.
+	SlipRate float64
+	// Without names evidence to do without, for measuring what it is worth.
+	Without Evidence
+	// Doubts yields findings below the thresholds of the budget too, down to
+	// LeastDoubt, so that a measurement can draw its own.
+	Doubts bool
 }
+
+// LeastDoubt is the least probability of a finding that Options.Doubts yields.
+const LeastDoubt = .002
+
+// Evidence is a set of what a document tells about itself.
+type Evidence uint8
+
+// What a document tells about itself.
+const (
+	SlipRateEvidence  Evidence = 1 << iota // how often its writer slips
+	CacheEvidence                          // which known words it uses oftener than others do
+	RecurringEvidence                      // which unknown forms it repeats
+	allEvidence       = iota
+)
+
+var evidenceNames = [allEvidence]string{"slip-rate", "cache", "recurring"}
+
+// EvidenceNames lists what ParseEvidence reads.
+func EvidenceNames() []string { return evidenceNames[:] }
+
+// ParseEvidence reads names of EvidenceNames.
+func ParseEvidence(names ...string) (Evidence, error) {
+	var set Evidence
+	for _, name := range names {
+		i := slices.Index(evidenceNames[:], name)
+		if i < 0 {
+			return 0, fmt.Errorf("evidence %q: want %s", name, strings.Join(evidenceNames[:], ", "))
+		}
+		set |= 1 << i
+	}
+	return set, nil
+}
+
+func (e Evidence) has(one Evidence) bool { return e&one != 0 }
 
 // has reports whether the house has the folded form; a nil House has none.
 func (h *House) has(form []byte) bool {

@@ -4,6 +4,7 @@ import (
 	"context"
 	"io"
 	"iter"
+	"math"
 	"strings"
 
 	"example.org/foulcase/internal/text"
@@ -29,20 +30,17 @@ func (e *Engine) Proof(ctx context.Context, r io.Reader, o Options) iter.Seq2[Ma
 			yield(Mark{}, err)
 			return
 		}
-		j := e.take(o)
-		defer e.give(j)
-		limits := e.judgement.thresholdsFor(o.Budget)
+		d := e.newDocument(o)
+		defer e.give(d.judge)
 		for blocks, err := range windows(text.Blocks(r, format, text.Options{})) {
-			j.count(blocks)
-			for _, b := range blocks {
-				if ctx.Err() != nil {
-					yield(Mark{}, ctx.Err())
+			d.count(blocks)
+			if err := d.weigh(ctx, blocks); err != nil {
+				yield(Mark{}, err)
+				return
+			}
+			for m := range d.decide() {
+				if !yield(m, nil) {
 					return
-				}
-				for m, err := range j.marks(b, limits) {
-					if !yield(m, err) || err != nil {
-						return
-					}
 				}
 			}
 			if err != nil {
@@ -51,6 +49,108 @@ func (e *Engine) Proof(ctx context.Context, r io.Reader, o Options) iter.Seq2[Ma
 			}
 		}
 	}
+}
+
+// document is the proofreading of one document, a window at a time.
+type document struct {
+	*judge
+	rate   slipRate
+	limits thresholds
+	doubts bool
+	// Of the window at hand:
+	words   int
+	odds    []float64 // of all findings, nats
+	pending []pending // those that may be reported
+}
+
+// pending is a finding whose document is not yet known.
+type pending struct {
+	mark Mark
+	odds float64
+}
+
+func (e *Engine) newDocument(o Options) *document {
+	return &document{
+		judge:  e.take(o),
+		rate:   e.newSlipRate(o.SlipRate, !o.Without.has(SlipRateEvidence)),
+		limits: e.thresholdsFor(o.Budget),
+		doubts: o.Doubts,
+	}
+}
+
+// weigh judges the blocks of a window.
+func (d *document) weigh(ctx context.Context, blocks []*text.Block) error {
+	d.words, d.odds, d.pending = 0, d.odds[:0], d.pending[:0]
+	for _, b := range blocks {
+		if ctx.Err() != nil {
+			return ctx.Err()
+		}
+		for s := range d.segmenter.Sentences(b.Text) {
+			found, err := d.findings(s, b.Text)
+			if err != nil {
+				return err
+			}
+			d.keep(b, found)
+			d.words += wordsIn(s.Tokens)
+		}
+	}
+	d.rate.settle(d.words, d.odds)
+	return nil
+}
+
+// keep notes the findings of a sentence, and writes out those that may be
+// reported however often the writer slips.
+func (d *document) keep(b *text.Block, found []finding) {
+	for _, f := range found {
+		if math.IsInf(f.odds, -1) {
+			continue
+		}
+		d.odds = append(d.odds, f.odds)
+		if logistic(f.odds+d.rate.mostShift()) < d.least(f.kind) {
+			continue
+		}
+		if m := d.mark(b, f); len(m.Corrections) > 0 {
+			d.pending = append(d.pending, pending{m, f.odds})
+		}
+	}
+}
+
+// least is the probability from which findings of a kind are yielded.
+func (d *document) least(k Kind) float64 {
+	if d.doubts {
+		return min(LeastDoubt, d.limits.query[k])
+	}
+	return d.limits.query[k]
+}
+
+// decide yields what passes the limits now that the window is known.
+func (d *document) decide() iter.Seq[Mark] {
+	return func(yield func(Mark) bool) {
+		for _, c := range d.pending {
+			m := c.mark
+			m.P = logistic(c.odds + d.rate.shift)
+			if m.P < d.least(m.Kind) {
+				continue
+			}
+			m.Grade = d.limits.grade(m.Kind, m.P)
+			for i := range m.Corrections {
+				m.Corrections[i].P *= m.P
+			}
+			if !yield(m) {
+				return
+			}
+		}
+	}
+}
+
+func wordsIn(tokens []text.Token) int {
+	n := 0
+	for _, t := range tokens {
+		if t.Kind == text.Word {
+			n++
+		}
+	}
+	return n
 }
 
 func (o Options) formatName() string {
@@ -97,39 +197,14 @@ func (j *judge) count(blocks []*text.Block) {
 				if len(j.ids) > 0 && int(j.ids[0]) < j.e.lexicon.Len() {
 					j.recurring.addWord(j.ids[0])
 				} else {
-					j.recurring.addForm(t.Norm)
+					j.recurring.addForm(t.Norm, t.Case != text.Lower)
 				}
 			}
 		}
 	}
 }
 
-// marks judges a block and yields what passes the limits.
-func (j *judge) marks(b *text.Block, limits thresholds) iter.Seq2[Mark, error] {
-	return func(yield func(Mark, error) bool) {
-		for s := range j.segmenter.Sentences(b.Text) {
-			found, err := j.findings(s, b.Text)
-			if err != nil {
-				yield(Mark{}, err)
-				return
-			}
-			for _, f := range found {
-				if f.p < limits.query[f.kind] {
-					continue
-				}
-				m := j.mark(b, f)
-				if f.p >= limits.mark[f.kind] {
-					m.Grade = GradeMark
-				}
-				if len(m.Corrections) > 0 && !yield(m, nil) {
-					return
-				}
-			}
-		}
-	}
-}
-
-// mark places a finding in the document.
+// mark places a finding in the document. Its probability is settled later.
 func (j *judge) mark(b *text.Block, f finding) Mark {
 	start, end := j.slots[f.from].token.Start, j.slots[f.to-1].token.End
 	from, to := b.Source(start, end)
@@ -141,7 +216,6 @@ func (j *judge) mark(b *text.Block, f finding) Mark {
 		Length:      to - from,
 		Observed:    string(b.Raw(start, end)),
 		Kind:        f.kind,
-		P:           f.p,
 		Corrections: j.corrections(f, b.Text),
 		Context:     contextOf(b.Text, start, end),
 	}

@@ -10,6 +10,7 @@ type recurrence struct {
 	touched []uint32
 	forms   map[string]uint16 // of forms the lexicon lacks
 	total   float64           // words counted
+	capital float64           // of them forms the lexicon lacks with a capital
 }
 
 const (
@@ -32,7 +33,7 @@ func (r *recurrence) reset() {
 	}
 	r.touched = r.touched[:0]
 	clear(r.forms)
-	r.total = 0
+	r.total, r.capital = 0, 0
 }
 
 // addWord counts one occurrence of a lexicon word.
@@ -51,8 +52,11 @@ func (r *recurrence) addWord(id uint32) {
 }
 
 // addForm counts one occurrence of a form the lexicon lacks.
-func (r *recurrence) addForm(form []byte) {
+func (r *recurrence) addForm(form []byte, capital bool) {
 	r.total++
+	if capital {
+		r.capital++
+	}
 	if n, ok := r.forms[string(form)]; ok {
 		if n < math.MaxUint16 {
 			r.forms[string(form)] = n + 1
@@ -64,6 +68,7 @@ func (r *recurrence) addForm(form []byte) {
 
 func (r *recurrence) decay() {
 	r.total /= 2
+	r.capital /= 2
 	for _, id := range r.touched {
 		r.words[id] = max(1, r.words[id]/2)
 	}
@@ -89,4 +94,14 @@ func (r *recurrence) word(id uint32, lex prior, own int) float64 {
 // form is the evidence for a form the lexicon lacks, as word.
 func (r *recurrence) form(form []byte) float64 {
 	return math.Log(float64(max(1, r.forms[string(form)])))
+}
+
+// jargonWords is how many words of usual prose a document's share of jargon is
+// mixed with, and jargonShare the share there (guessed).
+const jargonWords, jargonShare = 200, .01
+
+// jargon is the log share of words that the lexicon lacks and that have a
+// capital: names and terms, seldom slips.
+func (r *recurrence) jargon() float64 {
+	return math.Log((r.capital + jargonWords*jargonShare) / (r.total + jargonWords))
 }
