@@ -26,8 +26,15 @@ kinds of error and for each. Marks and queries count alike.
 A file has a sentence a line in columns parted by tabs; --columns names them:
 source (as written), reference (spelling corrected), rewrite (a free
 correction), full (grammar corrected too), observed and intended (the one error
-of interest), document, and "-" for a column to pass over. Sentences of one
-document are read together.
+of interest), document, and "-" for a column to pass over. Further columns are
+more references, if the last is one. Sentences of one document are read
+together.
+
+Or a file has edit annotations (m2): S lines, A lines for each annotator. Edits
+whose type holds SPELL or ORTH are errors of spelling, all others neutral.
+
+What half of the references change counts as an error, and a correction that one
+of them makes as right.
 
 With --clean the files hold good text, a paragraph a line and blank lines
 between documents; every finding is a false alarm.
@@ -45,6 +52,7 @@ when the model says what it was fitted on, fitted (the share of the errors).`,
 // evalTextFlags are what the user asked of eval text.
 type evalTextFlags struct {
 	measureFlags
+	shape   *choice
 	columns string
 	clean   bool
 	heldOut bool
@@ -53,6 +61,7 @@ type evalTextFlags struct {
 
 func declareEvalText(fs *pflag.FlagSet) action {
 	f := new(evalTextFlags)
+	f.shape = shapeFlag(fs, textShapes)
 	fs.StringVar(&f.columns, "columns", "source,reference", "`NAMES` of the columns")
 	fs.BoolVar(&f.clean, "clean", false, "the files hold good text")
 	heldOutFlag(fs, &f.heldOut)
@@ -104,9 +113,7 @@ func (f *evalTextFlags) read(c *console, path string, columns []eval.Column, kno
 	if f.clean {
 		return readData(c, path, cleanReader(f.heldOut))
 	}
-	sentences, file, err := readData(c, path, func(name string, r io.Reader) ([]eval.Sentence, error) {
-		return eval.ReadSentences(name, r, columns)
-	})
+	sentences, file, err := readSentences(c, path, shapeOf(path, f.shape.value, textShapes), columns)
 	if err != nil {
 		return nil, file, err
 	}
