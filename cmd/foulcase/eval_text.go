@@ -39,7 +39,8 @@ of them makes as right.
 With --clean the files hold good text, a paragraph a line and blank lines
 between documents; every finding is a false alarm.
 
---results keeps what became of every flag and every error. --emit jsonl prints
+--results keeps what became of every flag and every error, with ledgers of the
+surest false alarms and of what was missed. --emit jsonl prints
 an object a metric: task, data, model, metric, class, value, low, high, n and,
 when the model says what it was fitted on, fitted (the share of the errors).`,
 		examples: `
@@ -156,6 +157,9 @@ func (m *measurement) proofItems(file eval.DataFile, items []eval.Item, o foulca
 	judged, err := eval.JudgeAll(items, flags)
 	if err != nil {
 		return err
+	}
+	if m.flags.results != "" {
+		m.addLedgers(items, judged.Places, o)
 	}
 	m.result.AddTexts(file, judged, resampling)
 	return nil
