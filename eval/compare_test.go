@@ -187,7 +187,7 @@ func TestCompareRefuses(t *testing.T) {
 		"1 files, the other of 2":      func(r *eval.Result) { r.Data = append(r.Data, r.Data[0]) },
 		"not the same file":            func(r *eval.Result) { r.Data[0].SHA256 = "dd" },
 		"measured other texts":         func(r *eval.Result) { r.Data[0].Measured = "dd" },
-		"--columns was":                func(r *eval.Result) { r.Options = map[string]string{"columns": "source,rewrite"} },
+		`read as "" for one and "m2"`:  func(r *eval.Result) { r.Data[0].Read = "m2" },
 		"holds 4 items, the other 3":   func(r *eval.Result) { r.Pairs = r.Pairs[1:] },
 		`pair 1 is "x" in one and "xx`: func(r *eval.Result) { r.Pairs[0].Observed = "xx" },
 	} {

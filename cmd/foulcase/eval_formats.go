@@ -41,25 +41,22 @@ func shapeOf(path, asked string, shapes []dataShape) string {
 	return shapes[0].name
 }
 
-// readPairs reads isolated pairs in one of listShapes.
-func readPairs(c *console, path, shape string, columns eval.CSVColumns) ([]eval.Pair, eval.DataFile, error) {
+// pairReader returns the reader of pairs in one of listShapes.
+func pairReader(shape string, columns eval.CSVColumns) reader[eval.Pair] {
 	switch shape {
 	case "intended":
-		return readData(c, path, eval.ReadIntended)
+		return eval.ReadIntended
 	case "csv":
-		return readData(c, path, func(name string, r io.Reader) ([]eval.Pair, error) {
-			return eval.ReadCSV(name, r, columns)
-		})
+		return func(name string, r io.Reader) ([]eval.Pair, error) { return eval.ReadCSV(name, r, columns) }
 	}
-	return readData(c, path, eval.ReadPairs)
+	return eval.ReadPairs
 }
 
-// readSentences reads sentences and their corrections in one of textShapes.
-func readSentences(c *console, path, shape string, columns []eval.Column) ([]eval.Sentence, eval.DataFile, error) {
+// sentenceReader returns the reader of sentences and their corrections in one of
+// textShapes.
+func sentenceReader(shape string, columns []eval.Column) reader[eval.Sentence] {
 	if shape == "m2" {
-		return readData(c, path, eval.ReadM2)
+		return eval.ReadM2
 	}
-	return readData(c, path, func(name string, r io.Reader) ([]eval.Sentence, error) {
-		return eval.ReadSentences(name, r, columns)
-	})
+	return func(name string, r io.Reader) ([]eval.Sentence, error) { return eval.ReadSentences(name, r, columns) }
 }

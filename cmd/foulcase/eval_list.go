@@ -2,6 +2,7 @@ package main
 
 import (
 	"fmt"
+	"strings"
 
 	"example.org/foulcase"
 	"example.org/foulcase/eval"
@@ -70,10 +71,15 @@ func (f *evalListFlags) run(c *console, files []string) (status, error) {
 	defer m.engine.Close()
 	options := foulcase.RankOptions{K: int(f.k), Variety: o.Variety, House: o.House}
 	for _, path := range files {
-		pairs, file, err := readPairs(c, path, shapeOf(path, f.shape.value, listShapes), columns)
+		shape := shapeOf(path, f.shape.value, listShapes)
+		if f.columns != "" && shape != "csv" {
+			return trouble, misusef("--columns is for CSV, and %s is read as %s", path, shape)
+		}
+		pairs, file, err := readData(c, path, pairReader(shape, columns))
 		if err != nil {
 			return trouble, err
 		}
+		file.Read = strings.TrimSpace(shape + " " + f.columns)
 		fitted := eval.Fitted(m.engine.Fitted)
 		file.Measured, file.Overlap = eval.HashPairs(pairs), fitted.OverlapOf(pairs)
 		if err := f.refuseFitted(file); err != nil {

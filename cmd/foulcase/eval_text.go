@@ -84,8 +84,11 @@ func (f *evalTextFlags) run(c *console, files []string) (status, error) {
 	if err != nil {
 		return trouble, misusef("--columns: %v", err)
 	}
-	if f.heldOut && !f.clean {
+	switch {
+	case f.heldOut && !f.clean:
 		return trouble, misusef("--held-out-only goes with --clean")
+	case f.clean && (f.set.Changed("columns") || f.set.Changed("as")):
+		return trouble, misusef("--clean text has one shape and no columns")
 	}
 	task := eval.TaskText
 	if f.clean {
@@ -112,11 +115,20 @@ func (f *evalTextFlags) run(c *console, files []string) (status, error) {
 // read reads the items of one file, with the errors in them.
 func (f *evalTextFlags) read(c *console, path string, columns []eval.Column, known func(string) bool) ([]eval.Item, eval.DataFile, error) {
 	if f.clean {
-		return readData(c, path, cleanReader(f.heldOut))
+		items, file, err := readData(c, path, cleanReader(f.heldOut))
+		file.Read = "clean"
+		return items, file, err
 	}
-	sentences, file, err := readSentences(c, path, shapeOf(path, f.shape.value, textShapes), columns)
+	shape := shapeOf(path, f.shape.value, textShapes)
+	if f.set.Changed("columns") && shape != "sentences" {
+		return nil, eval.DataFile{}, misusef("--columns is for sentences, and %s is read as %s", path, shape)
+	}
+	sentences, file, err := readData(c, path, sentenceReader(shape, columns))
 	if err != nil {
 		return nil, file, err
+	}
+	if file.Read = shape; shape == "sentences" {
+		file.Read += " " + f.columns
 	}
 	items := make([]eval.Item, len(sentences))
 	for i, s := range sentences {
