@@ -79,16 +79,13 @@ func checkComparable(a, b *Result) error {
 	case len(a.Data) != len(b.Data):
 		return refuse("one is of %d files, the other of %d", len(a.Data), len(b.Data))
 	}
-	for _, option := range []string{"columns", "as"} {
-		if x, y := a.Options[option], b.Options[option]; x != y {
-			return refuse("--%s was %q for one and %q for the other", option, x, y)
-		}
-	}
 	for i, d := range a.Data {
 		e := b.Data[i]
 		switch {
 		case d.SHA256 != e.SHA256:
 			return refuse("%s and %s are not the same file (SHA-256 %.12s, %.12s)", d.Name, e.Name, d.SHA256, e.SHA256)
+		case d.Read != e.Read:
+			return refuse("%s was read as %q for one and %q for the other", d.Name, d.Read, e.Read)
 		case d.Measured != e.Measured:
 			return refuse("of %s one measured other texts than the other", d.Name)
 		}

@@ -1,12 +1,16 @@
 // Package eval measures spelling correction: it reads test data, finds in it
 // what a corrector should have found, and compares that with what one did find.
 //
-// The path of a measurement: a reader ([ReadPairs], [ReadSentences],
-// [ReadClean]) turns a file into pairs, sentences or clean text; [Gold] aligns a
-// sentence with its corrections and gives an [Item] whose spans are the errors;
-// a system's answers arrive as [Flag] and [Ranking], types of this package, so
-// that any system can be measured; [ScoreList], [ScoreText] and [ScoreClean]
-// count, and give a [Report] of metrics with 95 % bootstrap intervals.
+// The path of a measurement: a reader ([ReadPairs], [ReadIntended], [ReadCSV];
+// [ReadSentences], [ReadM2]; [ReadClean]) turns a file into pairs, sentences or
+// clean text; [Gold] aligns a sentence with its corrections and gives an [Item]
+// whose spans are the errors; a system's answers arrive as [Flag] and [Ranking],
+// types of this package, so that any system can be measured; [PairOutcomes] and
+// [JudgeAll] say what became of each; from these [ScoreList], [ScoreText] and
+// [ScoreClean] give a [Report] of metrics with 95 % bootstrap intervals.
+//
+// A [Result] is a whole run, items included, as a file; [Compare] holds two
+// against each other, and a [Gate] says what must be reached.
 //
 // Nothing here reads the clock or a global: the same data, answers and seed
 // give the same report. Functions may be called from several goroutines.

@@ -92,15 +92,25 @@ func parsePair(line string) (Pair, error) {
 		return Pair{}, errors.New("empty word")
 	}
 	if len(columns) > 2 {
-		count, err := strconv.Atoi(columns[2])
-		if err != nil || count < 1 {
-			return Pair{}, fmt.Errorf("count %q: want a whole number from 1", columns[2])
+		var err error
+		if p.Count, err = parseCount(columns[2]); err != nil {
+			return Pair{}, err
 		}
-		p.Count = count
 	}
-	p.Spaces = len(columns) > 3 && columns[3] == "mw" ||
-		len(strings.Fields(p.Observed)) != len(strings.Fields(p.Intended))
+	p.Spaces = len(columns) > 3 && columns[3] == "mw" || differInSpaces(p.Observed, p.Intended)
 	return p, nil
+}
+
+func parseCount(text string) (int, error) {
+	n, err := strconv.Atoi(text)
+	if err != nil || n < 1 {
+		return 0, fmt.Errorf("count %q: want a whole number from 1", text)
+	}
+	return n, nil
+}
+
+func differInSpaces(observed, intended string) bool {
+	return len(strings.Fields(observed)) != len(strings.Fields(intended))
 }
 
 // ReadClean reads text that holds no errors, a paragraph a line, with an empty

@@ -36,6 +36,7 @@ type Result struct {
 type DataFile struct {
 	Name     string  `json:"name"`     // as given
 	SHA256   string  `json:"sha256"`   // of its bytes, hexadecimal
+	Read     string  `json:"read"`     // the shape it was read as, and its columns
 	Measured string  `json:"measured"` // HashItems or HashPairs of what was measured
 	Items    int     `json:"items"`
 	Report   *Report `json:"report"`

@@ -31,26 +31,34 @@ func storeBits(data []byte, bit, value uint64) {
 func bytesFor(bits uint64) uint64 { return (bits + 7) / 8 }
 
 // selectBit returns the position of the set bit of x that has n set bits below
-// it; x must have more than n.
+// it; x must have more than n. It counts the bits of all bytes at once, finds
+// the byte, and looks the rest up (Vigna 2008, "Broadword Implementation of
+// Rank/Select Queries").
 func selectBit(x uint64, n int) uint64 {
-	at := uint64(0)
-	if c := bits.OnesCount32(uint32(x)); n >= c {
-		n -= c
-		x >>= 32
-		at = 32
-	}
-	if c := bits.OnesCount16(uint16(x)); n >= c {
-		n -= c
-		x >>= 16
-		at += 16
-	}
-	if c := bits.OnesCount8(uint8(x)); n >= c {
-		n -= c
-		x >>= 8
-		at += 8
-	}
-	for ; n > 0; n-- {
-		x &= x - 1
-	}
-	return at + uint64(bits.TrailingZeros64(x))
+	const ones, tops = 0x0101010101010101, 0x8080808080808080
+	c := x - x>>1&0x5555555555555555
+	c = c&0x3333333333333333 + c>>2&0x3333333333333333
+	c = (c + c>>4) & 0x0f0f0f0f0f0f0f0f * ones // byte k: set bits of bytes 0..k
+	full := (uint64(n)*ones | tops) - c&^tops  // the top bit of byte k: are these at most n?
+	at := uint64(bits.OnesCount64(full&tops)) * 8
+	below := c << 8 >> (at & 63) & 0xff
+	return at + uint64(selectInByte[(uint64(n)-below)&7][byte(x>>(at&63))])
 }
+
+// selectInByte[n][x] is the position of the set bit of x that has n set bits
+// below it; 8 where there is none.
+var selectInByte = func() (table [8][256]uint8) {
+	for x := range 256 {
+		n := 0
+		for at := range 8 {
+			if x>>at&1 != 0 {
+				table[n][x] = uint8(at)
+				n++
+			}
+		}
+		for ; n < 8; n++ {
+			table[n][x] = 8
+		}
+	}
+	return table
+}()

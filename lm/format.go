@@ -139,8 +139,8 @@ type block struct {
 	probs, backs uint64 // bit offsets
 }
 
-// block lays block b out, which must be below blocks().
-func (l *level) block(b uint64) (v block) {
+// layOut makes v a view of block b, which must be below blocks().
+func (l *level) layOut(v *block, b uint64) {
 	n := min(blockLen, uint64(l.count)-b*blockLen)
 	at := l.offset(b)
 	if !l.last {
@@ -160,7 +160,6 @@ func (l *level) block(b uint64) (v block) {
 	}
 	v.probs = at * 8
 	v.backs = (at + bytesFor(n*l.prob.width)) * 8
-	return v
 }
 
 // headerBytes returns how long the headers of a block are.

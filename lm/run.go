@@ -80,72 +80,63 @@ func (r *run) join(data []byte, i, one uint64) uint64 {
 
 // value returns element i; zero if the run is damaged.
 func (r *run) value(data []byte, i uint64) uint64 {
+	one := r.position(data, i)
+	return r.join(data, i, one)
+}
+
+// position returns where the one of element i stands in the high bits; i, where
+// the element would be zero, if the run is damaged.
+func (r *run) position(data []byte, i uint64) uint64 {
 	n := int(i)
 	for w := uint64(0); 64*w < r.highBits; w++ {
 		x := r.word(data, w)
 		c := bits.OnesCount64(x)
 		if n < c {
-			return r.join(data, i, 64*w+selectBit(x, n))
+			return 64*w + selectBit(x, n)
 		}
 		n -= c
 	}
-	return 0
+	return i
 }
 
-// find looks among the elements [lo, hi) for a value. Elements must be strictly
-// increasing.
-func (r *run) find(data []byte, lo, hi, value uint64) (uint64, bool) {
+// find looks among the elements [lo, hi) for a value that is above all elements
+// before lo. Elements must be strictly increasing. The search starts at position
+// at of the high bits, behind the one of element lo-1.
+func (r *run) find(data []byte, at, lo, hi, value uint64) (uint64, bool) {
 	high := value >> r.width
-	at := r.behindZeros(data, high)
-	// Elements that share the high bits are a run of ones.
-	first := at - high
-	hi = min(hi, first+r.ones(data, at))
-	lo = max(lo, first)
+	at = r.behindZeros(data, at, high-(at-lo))
 	low := value & (1<<r.width - 1)
-	for lo < hi {
-		mid := (lo + hi) / 2
-		switch v := loadBits(data, r.low+mid*r.width, r.width); {
-		case v == low:
-			return mid, true
-		case v < low:
-			lo = mid + 1
-		default:
-			hi = mid
+	// Elements that share the high bits are a run of ones.
+	for i := at - high; i < hi && at < r.highBits && load(data, r.high+at>>3)>>(at&7)&1 != 0; i++ {
+		if v := loadBits(data, r.low+i*r.width, r.width); v >= low {
+			return i, v == low
 		}
+		at++
 	}
 	return 0, false
 }
 
-// behindZeros returns the position behind n zeros, or highBits.
-func (r *run) behindZeros(data []byte, n uint64) uint64 {
+// behindZeros returns the position behind the first n zeros from a position on,
+// or highBits.
+func (r *run) behindZeros(data []byte, at, n uint64) uint64 {
 	if n == 0 {
-		return 0
+		return at
 	}
-	left := int(min(n, r.highBits+1)) - 1
-	for w := uint64(0); 64*w < r.highBits; w++ {
-		x := ^r.word(data, w)
+	if n > r.highBits {
+		return r.highBits
+	}
+	left := int(n) - 1
+	ahead := ^uint64(0) << (at & 63)
+	for w := at / 64; 64*w < r.highBits; w++ {
+		x := ^r.word(data, w) & ahead
 		c := bits.OnesCount64(x)
 		if left < c {
 			return min(64*w+selectBit(x, left)+1, r.highBits)
 		}
 		left -= c
+		ahead = ^uint64(0)
 	}
 	return r.highBits
-}
-
-// ones returns the length of the run of ones that begins at a position.
-func (r *run) ones(data []byte, at uint64) uint64 {
-	n := uint64(0)
-	for at < r.highBits {
-		w, shift := at/64, at&63
-		c := uint64(bits.TrailingZeros64(^(r.word(data, w) >> shift)))
-		n += c
-		if c < 64-shift {
-			break
-		}
-		at += c
-	}
-	return n
 }
 
 // pair returns elements i and i+1; zeros if the run is damaged.

@@ -22,7 +22,8 @@ func (m *Model) verifyLevel(k int) error {
 	at, key, child := uint64(0), uint64(0), uint64(0)
 	for b := range l.blocks() {
 		n := min(blockLen, uint64(l.count)-b*blockLen)
-		v := l.block(b)
+		var v block
+		l.layOut(&v, b)
 		problem := ""
 		if l.offset(b) != at || k > 0 && l.keyBase(b) != key || !l.last && l.firstBase(b) != child {
 			problem = "directory"

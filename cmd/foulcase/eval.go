@@ -186,9 +186,12 @@ func overlapLine(task string, o eval.Overlap) string {
 	return fmt.Sprintf("the model was fitted on %d of the %d %s (%.1f %%)\n", o.Fitted, o.Of, what, 100*o.Share())
 }
 
-// readData reads a file of test data with one of the readers of package eval,
-// and returns what is known of it without measuring.
-func readData[T any](c *console, path string, read func(name string, r io.Reader) ([]T, error)) ([]T, eval.DataFile, error) {
+// reader is a reader of package eval; name is the file's in errors.
+type reader[T any] func(name string, r io.Reader) ([]T, error)
+
+// readData reads a file of test data, and returns what is known of it without
+// measuring.
+func readData[T any](c *console, path string, read reader[T]) ([]T, eval.DataFile, error) {
 	in := findInputs([]string{path}, c.in, standardInput)[0]
 	file := eval.DataFile{Name: in.path}
 	r, err := in.open()

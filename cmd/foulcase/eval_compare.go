@@ -102,13 +102,21 @@ func (f *compareFlags) print(w io.Writer, c *eval.Comparison, paths []string, re
 	}
 	for _, t := range c.Tests {
 		p, name := t.Shown()
-		fmt.Fprintf(&b, "\n%s: of %d in A alone %d, in B alone %d; McNemar p = %.4f (%s)", t.Question, t.Items, t.OnlyA, t.OnlyB, p, name)
+		fmt.Fprintf(&b, "\n%s: of %d in A alone %d, in B alone %d; McNemar p %s (%s)", t.Question, t.Items, t.OnlyA, t.OnlyB, pText(p), name)
 	}
 	fmt.Fprintf(&b, "\n%d items better, %d worse\n", len(c.Better), len(c.Worse))
 	f.list(&b, "better", c.Better)
 	f.list(&b, "worse", c.Worse)
 	_, err := io.WriteString(w, b.String())
 	return err
+}
+
+// pText writes a p with its sign of comparison.
+func pText(p float64) string {
+	if p < .0001 {
+		return "< 0.0001"
+	}
+	return fmt.Sprintf("= %.4f", p)
 }
 
 // list prints the first of the items that changed.

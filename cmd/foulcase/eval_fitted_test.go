@@ -8,6 +8,7 @@ import (
 	"testing"
 
 	"example.org/foulcase"
+	"example.org/foulcase/eval"
 	"example.org/foulcase/internal/modelfile"
 )
 
@@ -62,4 +63,44 @@ func readAll(t *testing.T, path string) []byte {
 		t.Fatal(err)
 	}
 	return data
+}
+
+// The lists that the English model's channel was fitted on are refused, and
+// those kept for measuring are not, though they share common slips with them.
+func TestDataIsHeldOut(t *testing.T) {
+	data := filepath.Join(projectRoot(t), "..", "shared", "data")
+	train := func(name string) string { return filepath.Join(data, "train", name) }
+	if _, err := os.Stat(train("toefl-spell.tsv")); err != nil {
+		t.Skipf("needs the fitting and development data: %v", err)
+	}
+	model := filepath.Join(t.TempDir(), "english.fcm")
+	mustRun(t, "model", "build", "--from", filepath.Join(projectRoot(t), "lm", "english", "english.fcm"), "--fitted", train("wikipedia-common.tsv"),
+		"--fitted", train("toefl-spell.tsv"), "--fitted", train("typos-mixed.tsv"), "-o", model)
+	e, err := foulcase.OpenFile(model)
+	if err != nil {
+		t.Fatal(err)
+	}
+	defer e.Close()
+	for _, c := range []struct {
+		path    string
+		refused bool
+	}{
+		{train("wikipedia-common.tsv"), true},
+		{train("toefl-spell.tsv"), true},
+		{train("typos-mixed.tsv"), true},
+		{filepath.Join(data, "dev", "wikipedia-common.tsv"), false},
+		{filepath.Join(data, "dev", "toefl-spell.tsv"), false},
+		{filepath.Join(data, "dev", "birkbeck.tsv"), false},
+	} {
+		pairs, err := eval.ReadPairs(c.path, bytes.NewReader(readAll(t, c.path)))
+		if err != nil {
+			t.Fatal(err)
+		}
+		o := eval.Fitted(e.Fitted).OverlapOf(pairs)
+		err = new(evalListFlags).refuseFitted(eval.DataFile{Name: c.path, Overlap: o})
+		if (err != nil) != c.refused {
+			t.Errorf("%s: fitted on %d of %d: %v", c.path, o.Fitted, o.Of, err)
+		}
+		t.Logf("%s: fitted on %d of %d, %.1f %%", filepath.Base(c.path), o.Fitted, o.Of, 100*o.Share())
+	}
 }

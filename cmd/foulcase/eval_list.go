@@ -2,6 +2,7 @@ package main
 
 import (
 	"fmt"
+	"strings"
 
 	"example.org/foulcase"
 	"example.org/foulcase/eval"
@@ -17,8 +18,12 @@ func evalListVerb() verb {
 Ranks each misspelling of the lists, without context, and reports how often the
 word that was meant is the first candidate, among the first 3, 5, 10 and 20, or
 on the list at all, with 95 % bootstrap intervals, for each list, for all
-together, and for classes of slips. A list has lines of misspelling, intended
-word and, if you like, a count, parted by tabs.
+together, and for classes of slips.
+
+A list has lines of misspelling, intended word and, if you like, a count, parted
+by tabs (pairs); or lines "$word", each with its misspellings on the lines below
+and "_" for a space (intended, *.dat); or the columns observed, intended and
+count below a header (csv).
 
 A list of which the model was fitted on more than half is refused, for it would
 measure what the model remembers; --fitted-too measures it all the same. The
@@ -38,12 +43,16 @@ model says what it was fitted on, fitted (the share of the data).`,
 // evalListFlags are what the user asked of eval list.
 type evalListFlags struct {
 	measureFlags
+	shape     *choice
+	columns   string
 	k         count
 	fittedToo bool
 }
 
 func declareEvalList(fs *pflag.FlagSet) action {
 	f := &evalListFlags{k: 20}
+	f.shape = shapeFlag(fs, listShapes)
+	fs.StringVar(&f.columns, "columns", "", "what a CSV header calls the columns: `NAMES` such as observed=typed,intended=meant")
 	fs.VarP(&f.k, "count", "k", "how many candidates at most")
 	fs.BoolVar(&f.fittedToo, "fitted-too", false, "measure even on lists that the model was fitted on")
 	f.declare(fs)
@@ -51,6 +60,10 @@ func declareEvalList(fs *pflag.FlagSet) action {
 }
 
 func (f *evalListFlags) run(c *console, files []string) (status, error) {
+	columns, err := eval.ParseCSVColumns(f.columns)
+	if err != nil {
+		return trouble, misusef("--columns: %v", err)
+	}
 	m, o, err := f.start(eval.TaskList, files)
 	if err != nil {
 		return trouble, err
@@ -58,10 +71,15 @@ func (f *evalListFlags) run(c *console, files []string) (status, error) {
 	defer m.engine.Close()
 	options := foulcase.RankOptions{K: int(f.k), Variety: o.Variety, House: o.House}
 	for _, path := range files {
-		pairs, file, err := readData(c, path, eval.ReadPairs)
+		shape := shapeOf(path, f.shape.value, listShapes)
+		if f.columns != "" && shape != "csv" {
+			return trouble, misusef("--columns is for CSV, and %s is read as %s", path, shape)
+		}
+		pairs, file, err := readData(c, path, pairReader(shape, columns))
 		if err != nil {
 			return trouble, err
 		}
+		file.Read = strings.TrimSpace(shape + " " + f.columns)
 		fitted := eval.Fitted(m.engine.Fitted)
 		file.Measured, file.Overlap = eval.HashPairs(pairs), fitted.OverlapOf(pairs)
 		if err := f.refuseFitted(file); err != nil {

@@ -26,13 +26,21 @@ kinds of error and for each. Marks and queries count alike.
 A file has a sentence a line in columns parted by tabs; --columns names them:
 source (as written), reference (spelling corrected), rewrite (a free
 correction), full (grammar corrected too), observed and intended (the one error
-of interest), document, and "-" for a column to pass over. Sentences of one
-document are read together.
+of interest), document, and "-" for a column to pass over. Further columns are
+more references, if the last is one. Sentences of one document are read
+together.
+
+Or a file has edit annotations (m2): S lines, A lines for each annotator. Edits
+whose type holds SPELL or ORTH are errors of spelling, all others neutral.
+
+What half of the references change counts as an error, and a correction that one
+of them makes as right.
 
 With --clean the files hold good text, a paragraph a line and blank lines
 between documents; every finding is a false alarm.
 
---results keeps what became of every flag and every error. --emit jsonl prints
+--results keeps what became of every flag and every error, with ledgers of the
+surest false alarms and of what was missed. --emit jsonl prints
 an object a metric: task, data, model, metric, class, value, low, high, n and,
 when the model says what it was fitted on, fitted (the share of the errors).`,
 		examples: `
@@ -45,6 +53,7 @@ when the model says what it was fitted on, fitted (the share of the errors).`,
 // evalTextFlags are what the user asked of eval text.
 type evalTextFlags struct {
 	measureFlags
+	shape   *choice
 	columns string
 	clean   bool
 	heldOut bool
@@ -53,6 +62,7 @@ type evalTextFlags struct {
 
 func declareEvalText(fs *pflag.FlagSet) action {
 	f := new(evalTextFlags)
+	f.shape = shapeFlag(fs, textShapes)
 	fs.StringVar(&f.columns, "columns", "source,reference", "`NAMES` of the columns")
 	fs.BoolVar(&f.clean, "clean", false, "the files hold good text")
 	heldOutFlag(fs, &f.heldOut)
@@ -74,8 +84,11 @@ func (f *evalTextFlags) run(c *console, files []string) (status, error) {
 	if err != nil {
 		return trouble, misusef("--columns: %v", err)
 	}
-	if f.heldOut && !f.clean {
+	switch {
+	case f.heldOut && !f.clean:
 		return trouble, misusef("--held-out-only goes with --clean")
+	case f.clean && (f.set.Changed("columns") || f.set.Changed("as")):
+		return trouble, misusef("--clean text has one shape and no columns")
 	}
 	task := eval.TaskText
 	if f.clean {
@@ -102,13 +115,20 @@ func (f *evalTextFlags) run(c *console, files []string) (status, error) {
 // read reads the items of one file, with the errors in them.
 func (f *evalTextFlags) read(c *console, path string, columns []eval.Column, known func(string) bool) ([]eval.Item, eval.DataFile, error) {
 	if f.clean {
-		return readData(c, path, cleanReader(f.heldOut))
+		items, file, err := readData(c, path, cleanReader(f.heldOut))
+		file.Read = "clean"
+		return items, file, err
 	}
-	sentences, file, err := readData(c, path, func(name string, r io.Reader) ([]eval.Sentence, error) {
-		return eval.ReadSentences(name, r, columns)
-	})
+	shape := shapeOf(path, f.shape.value, textShapes)
+	if f.set.Changed("columns") && shape != "sentences" {
+		return nil, eval.DataFile{}, misusef("--columns is for sentences, and %s is read as %s", path, shape)
+	}
+	sentences, file, err := readData(c, path, sentenceReader(shape, columns))
 	if err != nil {
 		return nil, file, err
+	}
+	if file.Read = shape; shape == "sentences" {
+		file.Read += " " + f.columns
 	}
 	items := make([]eval.Item, len(sentences))
 	for i, s := range sentences {
@@ -149,6 +169,9 @@ func (m *measurement) proofItems(file eval.DataFile, items []eval.Item, o foulca
 	judged, err := eval.JudgeAll(items, flags)
 	if err != nil {
 		return err
+	}
+	if m.flags.results != "" {
+		m.addLedgers(items, judged.Places, o)
 	}
 	m.result.AddTexts(file, judged, resampling)
 	return nil

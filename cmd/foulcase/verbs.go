@@ -43,6 +43,7 @@ func verbs() []verb {
 		modelCheckVerb(),
 		evalListVerb(),
 		evalTextVerb(),
+		evalNoiseVerb(),
 		evalCompareVerb(),
 	}
 }
