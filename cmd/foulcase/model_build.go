@@ -48,6 +48,7 @@ type modelParts struct {
 	homophones string
 	from       []string // model files whose sections are taken over, later ones first
 	judgement  string   // JSON
+	calibrated string   // JSON
 	card       string
 	output     string
 }
@@ -68,6 +69,7 @@ func declareModelBuild(fs *pflag.FlagSet) action {
 	fs.StringVar(&p.homophones, "homophones", "", "`FILE` of words that sound alike")
 	fs.StringArrayVar(&p.from, "from", nil, "model `FILE` to take sections from; of several, the last that has one gives it")
 	fs.StringVar(&p.judgement, "judgement", "", "`FILE` of weights and thresholds, JSON")
+	fs.StringVar(&p.calibrated, "calibration", "", "`FILE` that model calibrate wrote for these parts, JSON")
 	fs.StringVar(&p.card, "card", "", "`FILE` with the model card")
 	fs.StringVarP(&p.output, "output", "o", "", "model `FILE` to write (must be given)")
 	return func(c *console, operands []string) (status, error) {

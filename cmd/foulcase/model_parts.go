@@ -64,7 +64,7 @@ func buildModel(ctx context.Context, c *console, p *modelParts) error {
 			return err
 		}
 	}
-	for section, path := range map[string]string{foulcase.SectionJudgement: p.judgement, foulcase.SectionCard: p.card} {
+	for section, path := range map[string]string{foulcase.SectionJudgement: p.judgement, foulcase.SectionCalibration: p.calibrated, foulcase.SectionCard: p.card} {
 		if path == "" {
 			continue
 		}
@@ -79,7 +79,7 @@ func buildModel(ctx context.Context, c *console, p *modelParts) error {
 
 // sectionOrder is the order of the parts in a file.
 var sectionOrder = []string{
-	foulcase.SectionCard, foulcase.SectionJudgement, foulcase.SectionLexicon, foulcase.SectionMirror,
+	foulcase.SectionCard, foulcase.SectionJudgement, foulcase.SectionCalibration, foulcase.SectionLexicon, foulcase.SectionMirror,
 	foulcase.SectionChannel, foulcase.SectionFitted, foulcase.SectionSpelling, foulcase.SectionConfusables, foulcase.SectionLM,
 }
 

@@ -39,6 +39,7 @@ func verbs() []verb {
 		lmTrainVerb(),
 		lmMeasureVerb(),
 		modelBuildVerb(),
+		modelCalibrateVerb(),
 		modelShowVerb(),
 		modelCheckVerb(),
 		evalListVerb(),
