@@ -44,6 +44,7 @@ func verbs() []verb {
 		evalListVerb(),
 		evalTextVerb(),
 		evalNoiseVerb(),
+		evalPageVerb(),
 		evalCompareVerb(),
 	}
 }
