@@ -45,6 +45,7 @@ func verbs() []verb {
 		evalListVerb(),
 		evalTextVerb(),
 		evalNoiseVerb(),
+		evalPageVerb(),
 		evalCompareVerb(),
 	}
 }
