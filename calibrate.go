@@ -46,7 +46,7 @@ func (e *Engine) Calibrate(learn, good []Trial, o Options) (*Calibration, error)
 	if err := c.learn(e.observe(learn, o)); err != nil {
 		return nil, err
 	}
-	if err := c.setBudgets(e, e.observe(good, o), o); err != nil {
+	if err := c.setBudgets(e.observe(good, o), newSlipRate(e.judgement.SlipRate, c.Rate, o)); err != nil {
 		return nil, err
 	}
 	return c.Calibration, nil
@@ -142,9 +142,7 @@ func (c *calibrator) learn(trials []observed) error {
 }
 
 // setBudgets finds the thresholds that hold for good text.
-func (c *calibrator) setBudgets(e *Engine, trials []observed, o Options) error {
-	rate := e.newSlipRate(o.SlipRate, !o.Without.has(SlipRateEvidence))
-	rate.base = logit(c.Rate)
+func (c *calibrator) setBudgets(trials []observed, rate slipRate) error {
 	bySource := map[string]*source{}
 	var sources []*source
 	for i := range trials {
@@ -172,13 +170,12 @@ type source struct {
 	p     []float64
 }
 
-// add takes a document of the source in, whose rate of slips begins as given.
+// add takes a document of the source in, which begins with the rate given.
 func (s *source) add(c *calibrator, t *observed, rate slipRate) {
 	odds := make([]float64, len(t.findings))
 	for i := range t.findings {
 		odds[i] = c.logOdds(t.findings[i].kind, &t.findings[i].evidence)
 	}
-	rate.shift = logit(rate.Prior) - rate.base
 	rate.settle(t.words, odds)
 	s.words += t.words
 	for _, o := range odds {

@@ -4,7 +4,6 @@ import (
 	"bytes"
 	"encoding/json"
 	"fmt"
-	"math"
 
 	"example.org/foulcase/internal/additive"
 )
@@ -99,35 +98,39 @@ const slipRounds = 30
 // slipRate follows the slips of one document.
 type slipRate struct {
 	SlipRate
+	fixed bool
 	base  float64 // log-odds of the rate that findings' log-odds hold for
 	words float64 // read so far
 	found float64 // sum of probabilities in earlier windows
 	shift float64 // what is added to findings' log-odds, nats
 }
 
-// newSlipRate begins a document. A fixed rate above 0 is taken as it is; without
-// a calibration there is nothing to shift.
-func (e *Engine) newSlipRate(fixed float64, estimate bool) slipRate {
-	r := slipRate{SlipRate: e.judgement.SlipRate}
-	if e.calibration == nil {
-		r.Strength = math.Inf(1)
-		return r
+// newSlipRate begins a document whose findings' log-odds hold for text of the
+// rate base. A rate that is asked for above 0 is taken as it is.
+func newSlipRate(how SlipRate, base float64, o Options) slipRate {
+	r := slipRate{SlipRate: how, base: logit(base)}
+	if o.SlipRate > 0 {
+		r.Prior = o.SlipRate
 	}
-	r.base = logit(e.calibration.Rate)
-	if fixed > 0 {
-		r.Prior = fixed
+	r.fixed = o.SlipRate > 0 || o.Without.has(SlipRateEvidence) || how == (SlipRate{})
+	if r.Prior > 0 {
+		r.shift = logit(r.Prior) - r.base
 	}
-	if fixed > 0 || !estimate {
-		r.Strength = math.Inf(1)
-	}
-	r.shift = logit(r.Prior) - r.base
 	return r
+}
+
+// slipRate begins a document. Without a calibration there is nothing to shift.
+func (e *Engine) slipRate(o Options) slipRate {
+	if e.calibration == nil {
+		return slipRate{fixed: true}
+	}
+	return newSlipRate(e.judgement.SlipRate, e.calibration.Rate, o)
 }
 
 // settle estimates the rate anew with a window of so many words, whose findings
 // have these log-odds. Earlier windows count with what was found in them then.
 func (r *slipRate) settle(words int, odds []float64) {
-	if math.IsInf(r.Strength, 1) {
+	if r.fixed {
 		return
 	}
 	r.words += float64(words)
@@ -145,7 +148,7 @@ func (r *slipRate) settle(words int, odds []float64) {
 
 // mostShift is the most that settling may add to log-odds, nats.
 func (r *slipRate) mostShift() float64 {
-	if math.IsInf(r.Strength, 1) {
+	if r.fixed {
 		return r.shift
 	}
 	return logit(r.Most) - r.base

@@ -2,6 +2,7 @@ package foulcase
 
 import (
 	"bytes"
+	"cmp"
 	"encoding/json"
 	"errors"
 	"fmt"
@@ -126,6 +127,7 @@ func checkBudgets(rows []BudgetRow) error {
 // thresholds are the least probabilities at which each kind is reported.
 type thresholds struct {
 	query, mark [len(kindNames)]float64
+	budget      float64 // false alarms a 1,000 words, queries and marks together
 }
 
 // grade tells what a finding of a kind and probability is reported as.
@@ -137,6 +139,27 @@ func (t *thresholds) grade(k Kind, p float64) Grade {
 		return GradeQuery
 	}
 	return GradeDoubt
+}
+
+// spareFalse is how many false alarms a document is granted beside those of its
+// length: in a short one, a doubtful finding is no sign that more are false there
+// than elsewhere. falsePerRight is how many it is granted for each finding that is
+// right: a text full of slips is not good text. Tuned on development text.
+const spareFalse, falsePerRight = 1, .5
+
+// leastOf returns the probability under which the findings of one document of so
+// many words would be more false alarms than the budget grants it, if each is
+// false with one minus its probability. That holds the budget where a text is
+// full of what looks like slips and is none.
+func (t *thresholds) leastOf(words int, p []float64) float64 {
+	slices.SortFunc(p, func(a, b float64) int { return cmp.Compare(b, a) })
+	granted := t.budget*float64(words)/1000 + spareFalse
+	for _, v := range p {
+		if granted += falsePerRight*v - (1 - v); granted < 0 {
+			return math.Nextafter(v, 1)
+		}
+	}
+	return 0
 }
 
 // likelier is the threshold of a model that was never measured: it reports what
@@ -155,7 +178,7 @@ func (e *Engine) thresholdsFor(budget float64) thresholds {
 	if budget <= 0 {
 		budget = j.DefaultBudget
 	}
-	var t thresholds
+	t := thresholds{budget: budget}
 	for _, k := range Kinds() {
 		t.query[k] = max(leastP(rows, k, budget), j.LeastP)
 		t.mark[k] = max(leastP(rows, k, budget*j.MarkShare), t.query[k])

@@ -61,6 +61,7 @@ type document struct {
 	words   int
 	odds    []float64 // of all findings, nats
 	pending []pending // those that may be reported
+	floor   float64   // the least probability that the budget grants them together
 }
 
 // pending is a finding whose document is not yet known.
@@ -72,7 +73,7 @@ type pending struct {
 func (e *Engine) newDocument(o Options) *document {
 	return &document{
 		judge:  e.take(o),
-		rate:   e.newSlipRate(o.SlipRate, !o.Without.has(SlipRateEvidence)),
+		rate:   e.slipRate(o),
 		limits: e.thresholdsFor(o.Budget),
 		doubts: o.Doubts,
 	}
@@ -95,7 +96,20 @@ func (d *document) weigh(ctx context.Context, blocks []*text.Block) error {
 		}
 	}
 	d.rate.settle(d.words, d.odds)
+	d.floor = d.floorOf()
 	return nil
+}
+
+// floorOf is the least probability that the budget grants the window's findings
+// together.
+func (d *document) floorOf() float64 {
+	var p []float64
+	for _, c := range d.pending {
+		if v := logistic(c.odds + d.rate.shift); v >= d.limits.query[c.mark.Kind] {
+			p = append(p, v)
+		}
+	}
+	return d.limits.leastOf(d.words, p)
 }
 
 // keep notes the findings of a sentence, and writes out those that may be
@@ -132,7 +146,12 @@ func (d *document) decide() iter.Seq[Mark] {
 			if m.P < d.least(m.Kind) {
 				continue
 			}
-			m.Grade = d.limits.grade(m.Kind, m.P)
+			if m.Grade = d.limits.grade(m.Kind, m.P); m.P < d.floor {
+				m.Grade = GradeDoubt
+			}
+			if m.Grade == GradeDoubt && !d.doubts {
+				continue
+			}
 			for i := range m.Corrections {
 				m.Corrections[i].P *= m.P
 			}

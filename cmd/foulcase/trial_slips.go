@@ -1,9 +1,11 @@
 package main
 
 import (
+	"cmp"
 	"io"
 	"math"
 	"math/rand/v2"
+	"slices"
 	"strings"
 
 	"example.org/foulcase"
@@ -79,6 +81,7 @@ const (
 	listed         = 3    // in 4: from the lists, where they know the word
 	keptInflection = 1    // in 4: a listed slip between inflections, most of which are grammar
 	fromChannel    = 2    // in 3: by the channel, and else a word an edit away
+	heavy          = 1    // in 3: a form that the channel drew is mis-written once more
 )
 
 // mistype draws what is typed for a word, for eval.Slips.
@@ -101,7 +104,14 @@ func (s *trialSlips) mistype(kind eval.Kind, word string, random *rand.Rand) str
 	if kind == eval.Realword && random.IntN(3) >= fromChannel {
 		return eval.Neighbours(s.neighbours)(kind, word, random)
 	}
-	return s.slipSource.mistype(kind, word, random)
+	typed := s.slipSource.mistype(kind, word, random)
+	if kind == eval.Nonword && typed != "" && random.IntN(3) < heavy {
+		typed = string(s.channel.Draw(nil, []byte(typed), random))
+		if _, isWord := s.lexicon.ID([]byte(typed)); isWord {
+			return ""
+		}
+	}
+	return typed
 }
 
 // draw draws one of the slips by weight.
@@ -135,7 +145,7 @@ func inflected(a, b string) bool {
 // are numbers of words to a slip, dealt out in turn. Guessed: some writers slip
 // in every second line, most seldom.
 var (
-	trialMix  = mix{eval.Nonword: 8, eval.Realword: 8, eval.Runon: 1, eval.Split: 1.4, eval.Repeat: 1.6}
+	trialMix  = mix{eval.Nonword: 6, eval.Realword: 4, eval.Runon: 1, eval.Split: 1, eval.Repeat: 1}
 	densities = []int{40, 100, 100, 300}
 )
 
@@ -144,11 +154,70 @@ func (s *trialSlips) trials(path string, pieces []string, seed uint64) []foulcas
 	var trials []foulcase.Trial
 	for i, p := range pieces {
 		items := eval.Inject([]eval.Item{{Source: p}}, eval.Slips{
-			Every: densities[i%len(densities)], Mix: trialMix, Mistype: s.mistype, Seed: seed + uint64(i)<<16,
+			Every: densities[i%len(densities)], Mix: trialMix, Mistype: s.mistype, Names: i%nameTurn == 0, Seed: seed + uint64(i)<<16,
 		})
-		trials = append(trials, trialOf(path, items[0]))
+		random := rand.New(rand.NewPCG(seed, uint64(i)))
+		trials = append(trials, trialOf(path, withHabits(items[0], random)))
 	}
 	return trials
+}
+
+// nameTurn is which piece in so many has slips in names too, and habit the
+// chance, one in so many, that a form that is no word is the writer's habit: then
+// the word is written so wherever the text has it, unless that is oftener than
+// mostHabitual: nobody mis-writes "the" all the time. Guessed.
+const nameTurn, habit, mostHabitual = 3, 3, 6
+
+// withHabits makes habits of some of an item's slips.
+func withHabits(item eval.Item, random *rand.Rand) eval.Item {
+	habits := map[string]string{} // what is typed, by the word that is meant
+	for _, s := range item.Spans {
+		if s.Kind == eval.Nonword && s.Corrections[0] != item.Source[s.Start:s.End] && random.IntN(habit) == 0 {
+			habits[s.Corrections[0]] = item.Source[s.Start:s.End]
+		}
+	}
+	places := slices.Clone(item.Spans)
+	for word := range habits {
+		if found := occurrences(item, word); len(found) <= mostHabitual {
+			places = append(places, found...)
+		}
+	}
+	slices.SortFunc(places, func(a, b eval.Span) int { return cmp.Compare(a.Start, b.Start) })
+
+	out := eval.Item{Line: item.Line, Document: item.Document}
+	var b strings.Builder
+	at := 0
+	for _, s := range places {
+		typed := item.Source[s.Start:s.End]
+		if typed == s.Corrections[0] {
+			typed = habits[typed]
+		}
+		b.WriteString(item.Source[at:s.Start])
+		at = s.End
+		s.Start = b.Len()
+		b.WriteString(typed)
+		s.End = b.Len()
+		out.Spans = append(out.Spans, s)
+	}
+	b.WriteString(item.Source[at:])
+	out.Source = b.String()
+	return out
+}
+
+// occurrences returns where an item has a word outside its spans, as spans of
+// forms that are no words.
+func occurrences(item eval.Item, word string) []eval.Span {
+	var found []eval.Span
+	var segmenter text.Segmenter
+	for s := range segmenter.Sentences([]byte(item.Source)) {
+		for _, t := range s.Tokens {
+			inside := func(s eval.Span) bool { return t.Start < s.End && t.End > s.Start }
+			if item.Source[t.Start:t.End] == word && !slices.ContainsFunc(item.Spans, inside) {
+				found = append(found, eval.Span{Start: t.Start, End: t.End, Kind: eval.Nonword, Corrections: []string{word}})
+			}
+		}
+	}
+	return found
 }
 
 func isHeldOut(doc []byte) bool { return text.HeldOut(doc) }
