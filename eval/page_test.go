@@ -222,3 +222,28 @@ func TestPageOfLittle(t *testing.T) {
 		}
 	}
 }
+
+// Whatever ReadResult lets through can be drawn.
+func FuzzPage(f *testing.F) {
+	for _, r := range []*eval.Result{listResult(), textResult(eval.TaskNoise)} {
+		r.Pairs, r.Places = r.Pairs[:min(len(r.Pairs), 3)], r.Places[:min(len(r.Places), 20)]
+		var b strings.Builder
+		if err := r.Write(&b); err != nil {
+			f.Fatal(err)
+		}
+		f.Add(b.String())
+	}
+	f.Fuzz(func(t *testing.T, data string) {
+		r, err := eval.ReadResult("fuzzed", strings.NewReader(data))
+		if err != nil {
+			return
+		}
+		page := page(t, r, r)
+		if strings.Contains(page, "<script") {
+			t.Error("a script got through")
+		}
+		for _, p := range eval.Pictures(named(r, r)) {
+			wellFormed(t, p.Name, p.SVG())
+		}
+	})
+}
