@@ -147,7 +147,8 @@ func (c *calibrationCounts) of(class int) (value, n float64) {
 }
 
 // Calibration gives "calibration.error", the expected calibration error over ten
-// bins of equal width, of all flags and of those called nonword and realword.
+// bins of equal width, of all flags and of those called nonword and realword, if
+// there are any.
 // The error of a resample is never less than chance allows, so intervals lie
 // somewhat high where predictions are few.
 func (j *Judged) Calibration(r Resampling) []Metric {
@@ -169,5 +170,5 @@ func (j *Judged) Calibration(r Resampling) []Metric {
 			return c.of(k)
 		}})
 	}
-	return bootstrap(units, measures, r)
+	return slices.DeleteFunc(bootstrap(units, measures, r), func(m Metric) bool { return m.N == 0 && m.Class != "" })
 }

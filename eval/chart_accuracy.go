@@ -25,7 +25,7 @@ func newAccuracySeries(name string, pairs []PairOutcome, report *Report) accurac
 func listSeries(r *Result) []accuracySeries {
 	series := []accuracySeries{newAccuracySeries(fmt.Sprintf("all (%d pairs)", len(r.Pairs)), r.Pairs, r.Report)}
 	for i, d := range r.Data {
-		if len(r.Data) == 1 || i+1 == seriesClasses {
+		if len(r.Data) == 1 {
 			break
 		}
 		var pairs []PairOutcome
@@ -41,6 +41,7 @@ func listSeries(r *Result) []accuracySeries {
 
 // accuracyPicture draws accuracy at k.
 func accuracyPicture(name, title string, series []accuracySeries) Picture {
+	series, note := firstSeries(series)
 	least := 1.0
 	var keys []key
 	for i, s := range series {
@@ -58,7 +59,7 @@ func accuracyPicture(name, title string, series []accuracySeries) Picture {
 	for i, s := range series {
 		p.accuracy(s, i)
 	}
-	return p.picture(name, title, "How often the form that was meant is among the first k candidates; 95 % bootstrap intervals.")
+	return p.picture(name, title, "How often the form that was meant is among the first k candidates; 95 % bootstrap intervals."+note)
 }
 
 func (p *plot) accuracy(s accuracySeries, i int) {

@@ -31,8 +31,15 @@ func shares(label string, low float64) axis {
 
 func percent(v float64) string { return fmt.Sprintf("%.0f %%", 100*v) }
 
-// lowEnd is where an axis of shares begins, a tenth or more below the least value.
-func lowEnd(least float64) float64 { return max(0, math.Floor(10*least-1)/10) }
+// lowEnd is where an axis of shares begins, at a tick a tenth or more below the
+// least value.
+func lowEnd(least float64) float64 {
+	low := math.Floor(10*least-1) / 10
+	if low < .5 {
+		low = math.Floor(5*low+1e-9) / 5
+	}
+	return max(0, low)
+}
 
 // plot is a chart of two axes; the title and the key stand above it.
 type plot struct {

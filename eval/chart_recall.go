@@ -102,6 +102,7 @@ func recallPicture(name, title string, curves []recallCurve) []Picture {
 	if len(curves) == 0 {
 		return nil
 	}
+	curves, note := firstSeries(curves)
 	var keys []key
 	least := 1.0
 	for i, c := range curves {
@@ -123,11 +124,20 @@ func recallPicture(name, title string, curves []recallCurve) []Picture {
 			p.mark(diamond, fillClass(i), p.at(c.marks.x, c.marks.y))
 		}
 	}
-	return []Picture{p.picture(name, title, "Each curve follows the findings from the surest to the least sure; the shapes are what was reported. Above and to the right is better.")}
+	return []Picture{p.picture(name, title, "Each curve follows the findings from the surest to the least sure; the shapes are what was reported. Above and to the right is better."+note)}
 }
 
 // seriesClasses is how many series the style can tell apart.
 const seriesClasses = 6
+
+// firstSeries keeps as many series as can be told apart, and what is to be said
+// of the others.
+func firstSeries[S any](series []S) (kept []S, note string) {
+	if len(series) <= seriesClasses {
+		return series, ""
+	}
+	return series[:seriesClasses], fmt.Sprintf(" Only the first %d of %d are drawn.", seriesClasses, len(series))
+}
 
 func lineClass(i int) string { return fmt.Sprintf("line%d", i%seriesClasses) }
 func fillClass(i int) string { return fmt.Sprintf("fill%d", i%seriesClasses) }

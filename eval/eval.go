@@ -9,8 +9,11 @@
 // [JudgeAll] say what became of each; from these [ScoreList], [ScoreText] and
 // [ScoreClean] give a [Report] of metrics with 95 % bootstrap intervals.
 //
+// [Inject] puts slips into clean text, of which [Judged.ScoreNoise] reports.
+//
 // A [Result] is a whole run, items included, as a file; [Compare] holds two
-// against each other, and a [Gate] says what must be reached.
+// against each other, a [Gate] says what must be reached, and [WritePage] draws
+// them.
 //
 // Nothing here reads the clock or a global: the same data, answers and seed
 // give the same report. Functions may be called from several goroutines.

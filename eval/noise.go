@@ -11,14 +11,12 @@ import (
 // of the flag:
 //
 //   - "good.flagged", of 1,000 words without a slip, how many are flagged;
-//   - "harmed", of as many, how many the first correction of a flag would change;
-//   - "calibration.error", see [Judged.Calibration].
+//   - "harmed", of as many, how many the first correction of a flag would change.
 func (j *Judged) ScoreNoise(r Resampling) *Report {
 	report := j.ScoreText(r)
 	report.Task = TaskNoise
 	classes := j.cleanClasses()
 	report.Metrics = append(report.Metrics, bootstrap(j.noiseCounts(classes), noiseMeasures(classes), r)...)
-	report.Metrics = append(report.Metrics, j.Calibration(r)...)
 	return report
 }
 

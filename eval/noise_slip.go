@@ -9,8 +9,8 @@ import (
 	"example.org/foulcase/internal/text"
 )
 
-// make makes a slip of a kind at word k of a stretch, if it can.
-func (s *Slips) make(kind Kind, source string, stretch []place, k int, random *rand.Rand) (slip, bool) {
+// slipAt makes a slip of a kind at word k of a stretch, if it can.
+func (s *Slips) slipAt(kind Kind, source string, stretch []place, k int, random *rand.Rand) (slip, bool) {
 	p := &stretch[k]
 	if !p.touchable {
 		return slip{}, false
@@ -30,7 +30,7 @@ func (s *Slips) make(kind Kind, source string, stretch []place, k int, random *r
 	default:
 		made.typed = s.mistyped(kind, p, random)
 	}
-	return made, made.typed != ""
+	return made, made.typed != "" && reading(made.typed) != reading(source[made.start:made.end])
 }
 
 // follows says whether one space and nothing else parts two words that may be
@@ -76,7 +76,7 @@ func repeatWord(stretch []place, k int) string {
 // capitals and its kind of apostrophe.
 func (s *Slips) mistyped(kind Kind, p *place, random *rand.Rand) string {
 	form := s.Mistype(kind, p.fold, random)
-	if form == "" || fold(form) == p.fold || !utf8.ValidString(form) || form != strings.Trim(form, "' ") {
+	if !utf8.ValidString(form) || form != strings.Trim(form, "' ") {
 		return ""
 	}
 	typed := text.ApplyCase(text.CaseOf([]byte(p.text)), form)

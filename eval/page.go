@@ -43,7 +43,7 @@ func picturesOf(r *Result) []Picture {
 	return append(pictures, alarmsPicture(r.Report)...)
 }
 
-// overlaid draws several results in one picture: the first six of each task.
+// overlaid draws results of one task in one picture.
 func overlaid(results []NamedResult) []Picture {
 	if len(results) < 2 {
 		return nil
@@ -63,10 +63,10 @@ func overlaid(results []NamedResult) []Picture {
 	}
 	var pictures []Picture
 	if len(curves) > 1 {
-		pictures = recallPicture("together-precision-recall", "Precision against recall, all kinds", curves[:min(len(curves), seriesClasses)])
+		pictures = recallPicture("together-precision-recall", "Precision against recall, all kinds", curves)
 	}
 	if len(series) > 1 {
-		pictures = append(pictures, accuracyPicture("together-accuracy-at-k", "Accuracy at k", series[:min(len(series), seriesClasses)]))
+		pictures = append(pictures, accuracyPicture("together-accuracy-at-k", "Accuracy at k", series))
 	}
 	return pictures
 }

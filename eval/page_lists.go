@@ -140,8 +140,8 @@ func worstAlarms(r *Result) placeList {
 	})
 }
 
-// worstMisses lists missed errors, those that the system was surest of being
-// right first.
+// worstMisses lists missed errors, those first that came nearest to being
+// reported.
 func worstMisses(r *Result) placeList {
 	p := func(p *Place) float64 {
 		if p.Flag == nil {
@@ -149,7 +149,7 @@ func worstMisses(r *Result) placeList {
 		}
 		return p.Flag.P
 	}
-	return worst(r, (*Place).Missed, func(a, b *Place) int { return cmp.Compare(p(a), p(b)) })
+	return worst(r, (*Place).Missed, func(a, b *Place) int { return cmp.Compare(p(b), p(a)) })
 }
 
 func worst(r *Result, of func(*Place) bool, order func(a, b *Place) int) placeList {

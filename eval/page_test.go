@@ -118,16 +118,17 @@ func wellFormed(t *testing.T, name, svg string) {
 }
 
 func TestSameResultSameBytes(t *testing.T) {
-	for _, make := range []func() *eval.Result{listResult, func() *eval.Result { return textResult(eval.TaskNoise) }} {
-		a, b := eval.Pictures(named(make())), eval.Pictures(named(make()))
-		for i := range a {
-			if a[i].SVG() != b[i].SVG() {
-				t.Errorf("%s differs", a[i].Name)
-			}
+	build := func() []*eval.Result {
+		return []*eval.Result{listResult(), textResult(eval.TaskText), listResult(), textResult(eval.TaskNoise)}
+	}
+	a, b := eval.Pictures(named(build()...)), eval.Pictures(named(build()...))
+	for i := range a {
+		if a[i].SVG() != b[i].SVG() {
+			t.Errorf("%s differs", a[i].Name)
 		}
-		if page(t, make(), make()) != page(t, make(), make()) {
-			t.Error("the page differs")
-		}
+	}
+	if before, after := page(t, build()...), page(t, build()...); before != after {
+		t.Error("the page differs")
 	}
 }
 
@@ -220,4 +221,29 @@ func TestPageOfLittle(t *testing.T) {
 			t.Errorf("%s: %s", task, got)
 		}
 	}
+}
+
+// Whatever ReadResult lets through can be drawn.
+func FuzzPage(f *testing.F) {
+	for _, r := range []*eval.Result{listResult(), textResult(eval.TaskNoise)} {
+		r.Pairs, r.Places = r.Pairs[:min(len(r.Pairs), 3)], r.Places[:min(len(r.Places), 20)]
+		var b strings.Builder
+		if err := r.Write(&b); err != nil {
+			f.Fatal(err)
+		}
+		f.Add(b.String())
+	}
+	f.Fuzz(func(t *testing.T, data string) {
+		r, err := eval.ReadResult("fuzzed", strings.NewReader(data))
+		if err != nil {
+			return
+		}
+		page := page(t, r, r)
+		if strings.Contains(page, "<script") {
+			t.Error("a script got through")
+		}
+		for _, p := range eval.Pictures(named(r, r)) {
+			wellFormed(t, p.Name, p.SVG())
+		}
+	})
 }

@@ -97,7 +97,7 @@ func (s *Slips) slip(items []Item, stretch []place, random *rand.Rand, slips map
 	for range triesPerWord * len(stretch) {
 		k := random.IntN(len(stretch))
 		item := stretch[k].item
-		if made, ok := s.make(kind, items[item].Source, stretch, k, random); ok {
+		if made, ok := s.slipAt(kind, items[item].Source, stretch, k, random); ok {
 			slips[item] = append(slips[item], made)
 			return
 		}

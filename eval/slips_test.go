@@ -87,8 +87,7 @@ func mangle(kind eval.Kind, word string, _ *rand.Rand) string {
 	return string(word[len(word)-1]) + word[:len(word)-1]
 }
 
-// Each kind looks as it should, comes as often as it weighs, and is what the
-// reader of corrected sentences takes it for.
+// Each kind looks as it should and comes as often as it weighs.
 func TestInjectKinds(t *testing.T) {
 	clean, words := repeated("The pilot boards at dawn. Pilots rest “between” tides, and the launch lies ready; don’t wait. ")
 	mix := map[eval.Kind]float64{eval.Nonword: 4, eval.Realword: 2, eval.Runon: 1, eval.Split: 1, eval.Repeat: 1}
@@ -128,6 +127,27 @@ func TestInjectKinds(t *testing.T) {
 		if share := float64(counts[kind]) / float64(all); share < .6*weight/9 || share > 1.5*weight/9 {
 			t.Errorf("%s: %d of %d", kind, counts[kind], all)
 		}
+	}
+}
+
+// Aligned with the clean text, a slip is an error of its kind in its place.
+func TestInjectAgreesWithGold(t *testing.T) {
+	clean, _ := repeated("The pilot boards at dawn. Pilots rest “between” tides, and the launch lies ready; don’t wait. ")
+	mix := map[eval.Kind]float64{eval.Nonword: 1, eval.Realword: 1, eval.Runon: 1, eval.Split: 1, eval.Repeat: 1}
+	mistype := func(kind eval.Kind, word string, _ *rand.Rand) string {
+		return word + map[eval.Kind]string{eval.Nonword: "q", eval.Realword: "s"}[kind]
+	}
+	known := func(word string) bool { return !strings.HasSuffix(word, "q") }
+	slips := 0
+	for i, item := range eval.Inject(clean, eval.Slips{Every: 30, Mix: mix, Mistype: mistype, Seed: 5}) {
+		gold := eval.Gold(eval.Sentence{Source: item.Source, References: []string{clean[i].Source}}, known)
+		if !reflect.DeepEqual(gold.Spans, item.Spans) {
+			t.Errorf("%q: slips %+v, errors by alignment %+v", item.Source, item.Spans, gold.Spans)
+		}
+		slips += len(item.Spans)
+	}
+	if slips < 30 {
+		t.Errorf("only %d slips", slips)
 	}
 }
 

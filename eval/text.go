@@ -17,7 +17,8 @@ import (
 //     right counts as right;
 //   - "first.of.detected" and "listed.of.detected", the share of found errors
 //     whose right correction is the flag's first, or among its corrections;
-//   - "false.alarms", wrong flags per 1,000 words.
+//   - "false.alarms", wrong flags per 1,000 words;
+//   - "calibration.error", see [Judged.Calibration].
 //
 // Of one kind, precision is over the flags the system calls that kind, recall
 // over the errors of that kind. Intervals draw whole documents where the data
@@ -38,7 +39,7 @@ func (j *Judged) ScoreText(r Resampling) *Report {
 		total = total.plus(u)
 	}
 	report := j.report("text", r)
-	report.Metrics = bootstrap(units, allTextMeasures(total), r)
+	report.Metrics = append(bootstrap(units, allTextMeasures(total), r), j.Calibration(r)...)
 	return report
 }
 

@@ -93,6 +93,7 @@ func (f *evalNoiseFlags) run(c *console, files []string) (status, error) {
 		if err != nil {
 			return trouble, err
 		}
+		file.Read = "clean"
 		if err := m.proofItems(file, eval.Inject(items, slips), o); err != nil {
 			return trouble, err
 		}
