@@ -56,11 +56,25 @@ func (j *judge) proposeConfusables(i int) {
 	if sl.token.Case == text.Upper && !j.shouting {
 		return
 	}
-	rest := j.ids[sl.from+1 : sl.to]
+	a := &j.alternatives
+	a.reset()
 	for n := j.e.confusables.Lookup(sl.id); n.Next(); {
 		if j.spelt(n.ID) {
-			j.weigh(change{from: i, to: i + 1, kind: Realword, cost: float64(n.Cost)}, n.ID, rest)
+			a.add(n.ID, n.Cost)
 		}
+	}
+	if sl.to-sl.from == 1 {
+		j.weighAlternatives(sl)
+		for k, id := range a.ids {
+			lo := len(j.words)
+			j.words = append(j.words, id)
+			j.keepAlternative(change{from: i, to: i + 1, kind: Realword, cost: float64(a.costs[k]), gain: a.gains[k]}, lo)
+		}
+		return
+	}
+	rest := j.ids[sl.from+1 : sl.to]
+	for k, id := range a.ids {
+		j.weigh(change{from: i, to: i + 1, kind: Realword, cost: float64(a.costs[k])}, id, rest)
 	}
 }
 
@@ -139,27 +153,49 @@ func (j *judge) weigh(c change, id uint32, rest []uint32) {
 // the typed reading, and takes the words back if not. The words of a repeat
 // keep the score of the slot they came from.
 func (j *judge) consider(c change, lo int, kept *slot) {
+	c.score = j.scoreOf(&c, lo)
+	if kept != nil {
+		c.score += kept.score
+	}
+	floor := j.floor(&c)
+	c.gain = j.gain(j.slots[c.from].from, j.slots[c.to-1].to, j.words[lo:], floor)
+	j.keep(c, lo, floor)
+}
+
+// keepAlternative is consider for a change whose gain is known.
+func (j *judge) keepAlternative(c change, lo int) {
+	c.score = j.scoreOf(&c, lo)
+	j.keep(c, lo, j.floor(&c))
+}
+
+// scoreOf is what the change to judge.words[lo:] scores beside the language
+// model, inflections aside.
+func (j *judge) scoreOf(c *change, lo int) float64 {
 	w := j.e.judgement
+	return w.Slip.Of(c.kind) - w.Channel*c.cost + j.evidence(c, j.words[lo:])
+}
+
+// floor is the least gain that brings a change within reach of the typed reading.
+// What is no word needs its candidates, however poor.
+func (j *judge) floor(c *change) float64 {
+	if j.slots[c.from].status != known {
+		return math.Inf(-1)
+	}
 	typed := 0.0
 	for _, sl := range j.slots[c.from:c.to] {
 		typed += sl.score
 	}
-	c.score = w.Slip.Of(c.kind) - w.Channel*c.cost + j.evidence(&c, j.words[lo:])
-	if kept != nil {
-		c.score += kept.score
-	}
-	hopeless := j.hopeless
-	if j.slots[c.from].status != known {
-		hopeless = math.Inf(1) // what is no word needs its candidates, however poor
-	}
-	floor := (typed - c.score - hopeless) / w.LanguageModel
-	c.gain = j.gain(j.slots[c.from].from, j.slots[c.to-1].to, j.words[lo:], floor)
+	return (typed - c.score - j.hopeless) / j.e.judgement.LanguageModel
+}
+
+// keep takes a change up if it gains enough.
+func (j *judge) keep(c change, lo int, floor float64) {
 	if c.gain < floor {
 		j.words = j.words[:lo]
 		return
 	}
 	if c.kind == Realword && j.inflections(j.slots[c.from].id, j.words[lo]) {
-		c.score -= w.Inflection
+		c.score -= j.e.judgement.Inflection
 	}
 	c.lo, c.hi = lo, len(j.words)
 	j.changes = append(j.changes, c)
@@ -174,7 +210,7 @@ func (j *judge) evidence(c *change, words []uint32) float64 {
 	}
 	sl, sum := &j.slots[c.from], 0.0
 	if int(words[0]) < lex.Len() {
-		sum += w.Recurrence * j.oftener(words[0], 0)
+		sum += w.Recurrence * j.oftener(words[0])
 		name := sl.token.Case == text.Title && c.from > j.lead && lex.Entry(words[0]).Usual != lexicon.TitleCase
 		if name || j.compounded(c.from) {
 			sum -= w.Capital

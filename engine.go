@@ -57,9 +57,10 @@ type Engine struct {
 	mirror      *candidates.Mirror
 	confusables *candidates.Confusables
 	judgement   *Judgement
-	calibration *calibrator     // nil: the lattice's posteriors are taken for probabilities
-	fitted      *channel.Fitted // nil: not recorded
-	judges      sync.Pool       // *judge
+	calibration *calibrator         // nil: the lattice's posteriors are taken for probabilities
+	fitted      *channel.Fitted     // nil: not recorded
+	judges      sync.Pool           // *judge
+	shortcut    func() *lm.Shortcut // made at the first call
 }
 
 // Open opens a model in place. The caller must not change the bytes while the
@@ -128,6 +129,7 @@ func newEngine(file *modelfile.File) (*Engine, error) {
 			return nil, fmt.Errorf("section %q counts %d words where the lexicon has %d: they were not built together; rebuild the model", part.name, part.got, part.want)
 		}
 	}
+	e.shortcut = sync.OnceValue(e.lm.NewShortcut)
 	e.judges.New = func() any { return newJudge(e) }
 	return e, nil
 }

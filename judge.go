@@ -42,6 +42,10 @@ type judge struct {
 	words   []uint32 // what the changes put in, end to end
 	form    []byte   // scratch
 	ahead   [2]lm.State
+	tails   []tail // of each of ids
+	// shortcut answers for the language model in long documents; nil in others.
+	shortcut     *lm.Shortcut
+	alternatives alternatives // to the word at hand
 
 	seen evidence // of the finding at hand
 	// shouting: the sentence is in capitals, so capitals say nothing of a word.
@@ -142,17 +146,19 @@ func (j *judge) classify(sl *slot) {
 		sl.score = -e.judgement.Variety
 	default:
 		sl.status, sl.id = known, first
-		sl.score = e.judgement.Recurrence * j.oftener(first, 1)
+		if !j.without.has(CacheEvidence) {
+			sl.score = e.judgement.Recurrence * j.recurring.word(first, e.lexicon, 1)
+		}
 	}
 }
 
-// oftener is how much oftener than expected the document has a word, its own
-// occurrences aside, nats.
-func (j *judge) oftener(id uint32, own int) float64 {
+// oftener is how much oftener than expected the document has a word that may have
+// been meant, nats.
+func (j *judge) oftener(id uint32) float64 {
 	if j.without.has(CacheEvidence) {
 		return 0
 	}
-	return j.recurring.word(id, j.e.lexicon, own)
+	return float64(j.recurring.oftener[id])
 }
 
 // misdecoded reports whether the word at a place stands against a symbol beyond
@@ -201,10 +207,18 @@ func (j *judge) scoreTyped() {
 	n := len(j.ids)
 	j.states = slices.Grow(j.states[:0], n+1)[:n+1]
 	j.logp = slices.Grow(j.logp[:0], n)[:n]
+	j.tails = slices.Grow(j.tails[:0], n)[:n]
+	clear(j.tails)
 	j.states[0] = j.e.lm.Begin(j.e.lexicon.ClassID(lexicon.Begin))
-	for i, id := range j.ids {
-		j.logp[i] = j.e.lm.Advance(&j.states[i], id, &j.states[i+1])
+	j.e.lm.AdvanceText(j.ids, j.states, j.logp)
+}
+
+// advance asks the language model.
+func (j *judge) advance(s *lm.State, w uint32, next *lm.State) float32 {
+	if j.shortcut != nil {
+		return j.shortcut.Advance(s, w, next)
 	}
+	return j.e.lm.Advance(s, w, next)
 }
 
 // gain is how much better, in nats of the language model, the sentence reads
@@ -212,7 +226,6 @@ func (j *judge) scoreTyped() {
 // fall together again. A gain that must stay under floor may be reported as
 // any number under it.
 func (j *judge) gain(from, to int, words []uint32, floor float64) float64 {
-	m := j.e.lm
 	state, next := &j.ahead[0], &j.ahead[1]
 	*state = j.states[from]
 	sum := 0.0
@@ -220,7 +233,7 @@ func (j *judge) gain(from, to int, words []uint32, floor float64) float64 {
 		sum -= float64(p)
 	}
 	// What follows can gain no more than its typed cost, for log p <= 0.
-	reach := min(len(j.ids), to+m.Order()-1)
+	reach := min(len(j.ids), to+j.e.lm.Order()-1)
 	hope := 0.0
 	for _, p := range j.logp[to:reach] {
 		hope -= float64(p)
@@ -229,14 +242,14 @@ func (j *judge) gain(from, to int, words []uint32, floor float64) float64 {
 		if sum+hope < floor {
 			return sum + hope
 		}
-		sum += float64(m.Advance(state, w, next))
+		sum += float64(j.advance(state, w, next))
 		state, next = next, state
 	}
 	for i := to; i < reach && *state != j.states[i]; i++ {
 		if sum+hope < floor {
 			return sum + hope
 		}
-		sum += float64(m.Advance(state, j.ids[i], next) - j.logp[i])
+		sum += float64(j.advance(state, j.ids[i], next) - j.logp[i])
 		hope += float64(j.logp[i])
 		state, next = next, state
 	}

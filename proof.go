@@ -82,6 +82,9 @@ func (e *Engine) newDocument(o Options) *document {
 // weigh judges the blocks of a window.
 func (d *document) weigh(ctx context.Context, blocks []*text.Block) error {
 	d.words, d.odds, d.pending = 0, d.odds[:0], d.pending[:0]
+	if d.shortcut == nil && sizeOf(blocks) >= shortcutSize {
+		d.shortcut = d.e.shortcut()
+	}
 	for _, b := range blocks {
 		if ctx.Err() != nil {
 			return ctx.Err()
@@ -98,6 +101,18 @@ func (d *document) weigh(ctx context.Context, blocks []*text.Block) error {
 	d.rate.settle(d.words, d.odds)
 	d.floor = d.floorOf()
 	return nil
+}
+
+// shortcutSize is how many bytes of prose make the language model's shortcut worth
+// its making.
+const shortcutSize = 256 << 10
+
+func sizeOf(blocks []*text.Block) int {
+	n := 0
+	for _, b := range blocks {
+		n += len(b.Text)
+	}
+	return n
 }
 
 // floorOf is the least probability that the budget grants the window's findings
@@ -221,6 +236,7 @@ func (j *judge) count(blocks []*text.Block) {
 			}
 		}
 	}
+	j.recurring.settle(j.e.lexicon)
 }
 
 // mark places a finding in the document. Its probability is settled later.

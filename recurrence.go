@@ -8,6 +8,7 @@ import "math"
 type recurrence struct {
 	words   []uint16 // by lexicon id, saturating
 	touched []uint32
+	oftener []float32         // by lexicon id: word with no occurrence its own, as of the last settle; 0 for words not met
 	forms   map[string]uint16 // of forms the lexicon lacks
 	total   float64           // words counted
 	capital float64           // of them forms the lexicon lacks with a capital
@@ -24,12 +25,13 @@ const (
 
 func (r *recurrence) init(words int) {
 	r.words = make([]uint16, words)
+	r.oftener = make([]float32, words)
 	r.forms = make(map[string]uint16)
 }
 
 func (r *recurrence) reset() {
 	for _, id := range r.touched {
-		r.words[id] = 0
+		r.words[id], r.oftener[id] = 0, 0
 	}
 	r.touched = r.touched[:0]
 	clear(r.forms)
@@ -89,6 +91,13 @@ func (r *recurrence) word(id uint32, lex prior, own int) float64 {
 		return 0
 	}
 	return math.Log(1 + n/(1+r.total*math.Exp(float64(lex.Prior(id)))))
+}
+
+// settle works out what the counts so far say of every word met.
+func (r *recurrence) settle(lex prior) {
+	for _, id := range r.touched {
+		r.oftener[id] = float32(r.word(id, lex, 0))
+	}
 }
 
 // form is the evidence for a form the lexicon lacks, as word.

@@ -37,6 +37,9 @@ type ConfusableOptions struct {
 	NearCost float32
 	// NearPrior is the least log prior of such words (-14.5 nats when zero).
 	NearPrior float32
+	// NearRarer is how much rarer than the typed word such a word may be, nats
+	// (5 when zero): that "the" was meant as "tee" no context makes likely enough.
+	NearRarer float32
 	// Jobs is the number of goroutines (1 when zero).
 	Jobs int
 	// Progress, if set, is told now and then how many of the words are done;
@@ -51,6 +54,7 @@ func (o *ConfusableOptions) complete() {
 	o.Most = min(cmp.Or(o.Most, 12), math.MaxUint8)
 	o.NearCost = cmp.Or(o.NearCost, 8.5)
 	o.NearPrior = cmp.Or(o.NearPrior, -14.5)
+	o.NearRarer = cmp.Or(o.NearRarer, 5)
 	o.Jobs = max(o.Jobs, 1)
 }
 
@@ -180,6 +184,9 @@ func (b *confusableBuilder) addNear(found []Candidate, id uint32, m *channel.Mod
 	slices.SortStableFunc(near, func(x, y uint32) int { return cmp.Compare(b.lex.Prior(y), b.lex.Prior(x)) })
 	typed := string(b.lex.AppendForm(nil, id))
 	for _, other := range near {
+		if b.lex.Prior(other) < b.lex.Prior(id)-b.options.NearRarer {
+			break
+		}
 		if len(found) < math.MaxUint8 && !b.lex.Variants(other, id) {
 			cost := float32(m.Cost(typed, string(b.lex.AppendForm(nil, other))))
 			found = b.cheapen(found, other, min(cost, b.options.NearCost))
