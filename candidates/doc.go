@@ -8,5 +8,7 @@
 // letters so far have cost, plus a floor under what the rest of the observed
 // word must cost, plus the best prior of any word below the path, never exceeds
 // the final score, so words come out in exact order and no distance limit
-// decides what can be found.
+// decides what can be found. The floor looks one letter ahead: it knows the next
+// letter meant and the one before, and is tabulated for each place of the
+// observed word, so that most branches are refused by their label alone.
 package candidates

@@ -1,6 +1,7 @@
 package candidates
 
 import (
+	"slices"
 	"unicode/utf8"
 
 	"example.org/foulcase/candidates/lexicon"
@@ -11,23 +12,11 @@ import (
 // here. The last of them is not yet explained by observed letters. Below the
 // letters of a whole word there is a path that stands for its end.
 type path struct {
-	node   lexicon.Node
+	node   lexicon.Node   // zero at the end of a word
 	base   uint32         // number of the first word below; of the word itself at an end
 	letter channel.Letter // the last letter; its Sym is Edge at the end of a word
 	before channel.Symbol // the letter read before
 	tree   uint8          // index of the tree
-	n      uint8          // number of children
-	first  int32          // index of the first child, 0 when they are not known yet
-	prior  float32        // the least weighted prior cost of any word below
-	query  uint32         // the query that left is of
-	left   int32          // index of the latest visit
-}
-
-// visit notes with what cost a path was left at a place of the observed word.
-type visit struct {
-	cost  float32
-	i     int32
-	older int32 // index of the visit before; 0 for none
 }
 
 // tree is one lexicon in one reading order.
@@ -38,7 +27,6 @@ type tree struct {
 	house  bool
 	read   *reading
 	halved bool // searched only for words whose half read first is the cheaper
-	root   int32
 }
 
 // id gives the id of a word from its number in the tree; false if the lexicon
@@ -53,45 +41,63 @@ func (t *tree) id(number uint32) (uint32, bool) {
 	return number, number < t.words
 }
 
-const (
-	mostPaths    = 1 << 17 // paths remembered from one query to the next
-	mostChildren = 255
-)
-
-// forget empties the trees and plants their roots.
-func (s *Searcher) forget() {
-	s.paths = s.paths[:0]
-	for i := range s.trees {
-		t := &s.trees[i]
-		t.root = int32(len(s.paths))
-		s.paths = append(s.paths, path{node: t.lex.Root(), tree: uint8(i)})
-	}
+// root is the path of no letters.
+func (s *Searcher) root(tree int) path {
+	return path{node: s.trees[tree].lex.Root(), tree: uint8(tree)}
 }
 
-// children gives the indices of the children of a path, which lie side by side.
-func (s *Searcher) children(at int32) (first, end int32) {
-	if s.paths[at].first == 0 {
-		s.grow(at)
-	}
-	p := &s.paths[at]
-	return p.first, p.first + int32(p.n)
-}
-
-// grow finds the children of a path: its end first, if it spells a word, then
-// its letters in byte order.
-func (s *Searcher) grow(at int32) {
-	p := s.paths[at]
+// end gives the path that stands for the end of the word that p spells, if it
+// is one and allowed.
+func (s *Searcher) end(p *path) (path, bool) {
 	lex := s.trees[p.tree].lex
-	first := int32(len(s.paths))
-	if p.letter.Sym != channel.Edge && lex.Final(p.node) && s.allowed(lex, p.base) {
-		s.paths = append(s.paths, path{
-			base: p.base, before: p.letter.Sym, tree: p.tree,
-			prior: s.priorCost(lex.Prior(p.base)),
-		})
+	if p.letter.Sym == channel.Edge || !lex.Final(p.node) || !s.allowed(lex, p.base) {
+		return path{}, false
 	}
-	s.growLetters(lex, &p, p.node, p.base, letterBytes{})
-	s.paths[at].first = first
-	s.paths[at].n = uint8(min(len(s.paths)-int(first), mostChildren))
+	return path{base: p.base, before: p.letter.Sym, tree: p.tree}, true
+}
+
+// child gives the path that branch i of p's node leads to, whose label is an
+// ASCII letter.
+func child(p *path, b *lexicon.Branches, i int) (path, bool) {
+	node, skip, ok := b.Child(i)
+	return path{
+		node: node, base: p.base + skip, before: p.letter.Sym, tree: p.tree,
+		letter: channel.LetterOf(rune(b.Labels[i])),
+	}, ok
+}
+
+// appendChildren appends the children of a path that are wanted: its end, and a
+// path for each next letter.
+func (s *Searcher) appendChildren(dst []path, p path, wanted func(channel.Symbol) bool) []path {
+	if wanted(channel.Edge) {
+		if end, ok := s.end(&p); ok {
+			dst = append(dst, end)
+		}
+	}
+	b := s.trees[p.tree].lex.Branches(p.node)
+	for i, label := range b.Labels {
+		if label >= utf8.RuneSelf {
+			long := len(dst)
+			dst = s.appendLong(dst, p, &b, i)
+			kept := slices.DeleteFunc(dst[long:], func(q path) bool { return !wanted(q.letter.Sym) })
+			dst = dst[:long+len(kept)]
+		} else if wanted(channel.LetterOf(rune(label)).Sym) {
+			if c, ok := child(&p, &b, i); ok {
+				dst = append(dst, c)
+			}
+		}
+	}
+	return dst
+}
+
+// appendLong appends a path for each letter of several bytes that begins with
+// branch i of p's node.
+func (s *Searcher) appendLong(dst []path, p path, b *lexicon.Branches, i int) []path {
+	var bytes letterBytes
+	if node, skip, ok := b.Child(i); ok {
+		dst = bytes.follow(dst, s.trees[p.tree].lex, p, node, skip, b.Labels[i])
+	}
+	return dst
 }
 
 // letterBytes are the first bytes of a letter in UTF-8.
@@ -100,62 +106,31 @@ type letterBytes struct {
 	n     int
 }
 
-// growLetters adds a child for every letter below a node. A letter of several
-// bytes is followed through as many edges; start holds the bytes so far.
-func (s *Searcher) growLetters(lex *lexicon.Lexicon, p *path, n lexicon.Node, base uint32, start letterBytes) {
-	for e := lex.Edges(n); e.Next(); {
-		letter := start
-		letter.bytes[letter.n] = e.Label
-		letter.n++
-		from := base + e.Skip
-		if r, ok := letter.rune(); ok {
-			s.paths = append(s.paths, path{
-				node: e.Target, base: from, letter: channel.LetterOf(r), before: p.letter.Sym, tree: p.tree,
-				prior: s.priorCost(lex.BestPrior(from, from+lex.Count(e.Target))),
-			})
-		} else {
-			s.growLetters(lex, p, e.Target, from, letter)
-		}
+// follow adds a label on the way from p to a node, and goes on until the letter
+// is whole.
+func (l letterBytes) follow(dst []path, lex *lexicon.Lexicon, p path, node lexicon.Node, skip uint32, label byte) []path {
+	l.bytes[l.n] = label
+	l.n++
+	if utf8.FullRune(l.bytes[:l.n]) {
+		r, _ := utf8.DecodeRune(l.bytes[:l.n])
+		return append(dst, path{node: node, base: p.base + skip, before: p.letter.Sym, tree: p.tree, letter: channel.LetterOf(r)})
 	}
+	for e := lex.Edges(node); e.Next(); {
+		dst = l.follow(dst, lex, p, e.Target, skip+e.Skip, e.Label)
+	}
+	return dst
 }
 
-// rune decodes the letter; false while bytes are missing.
-func (l *letterBytes) rune() (rune, bool) {
-	if l.bytes[0] < utf8.RuneSelf {
-		return rune(l.bytes[0]), true
+// priorCost is the least weighted prior cost of any word below a path.
+func (s *Searcher) priorCost(p *path) float32 {
+	lex := s.trees[p.tree].lex
+	if p.letter.Sym == channel.Edge {
+		return -lex.Prior(p.base) * s.weights.Prior
 	}
-	if !utf8.FullRune(l.bytes[:l.n]) {
-		return 0, false
-	}
-	r, _ := utf8.DecodeRune(l.bytes[:l.n])
-	return r, true
+	return -lex.BestPrior(p.base, p.base+p.node.Words()) * s.weights.Prior
 }
-
-func (s *Searcher) priorCost(prior float32) float32 { return -prior * s.weights.Prior }
 
 // allowed reports whether a word belongs to the variety asked for.
 func (s *Searcher) allowed(lex *lexicon.Lexicon, number uint32) bool {
 	return s.variety == 0 || lex.Entry(number).Variety&s.variety != 0
-}
-
-// leftCheaper reports whether the path was left at i before at no greater cost.
-func (s *Searcher) leftCheaper(p *path, i int32, cost float32) bool {
-	if p.query != s.query {
-		return false
-	}
-	for v := p.left; v != 0; v = s.visits[v].older {
-		if s.visits[v].i == i && s.visits[v].cost <= cost {
-			return true
-		}
-	}
-	return false
-}
-
-// note records that the path is left at i.
-func (s *Searcher) note(p *path, i int32, cost float32) {
-	if p.query != s.query {
-		p.query, p.left = s.query, 0
-	}
-	s.visits = append(s.visits, visit{cost, i, p.left})
-	p.left = int32(len(s.visits) - 1)
 }

@@ -1,8 +1,6 @@
 package candidates
 
 import (
-	"math"
-
 	"example.org/foulcase/candidates/lexicon"
 	"example.org/foulcase/channel"
 )
@@ -39,10 +37,9 @@ type Searcher struct {
 	house   *lexicon.Lexicon
 	trees   []tree
 
-	paths             []path
-	visits            []visit
-	query             uint32
 	queue             queue
+	reached           reached
+	scratch           []path
 	observed          []channel.Letter
 	forwards, reverse reading
 	best              []found // the best k words seen, ascending by score
@@ -59,11 +56,17 @@ type found struct {
 }
 
 const (
-	// budget is the number of states a query may leave before it gives up with
-	// what it has found, some ten milliseconds of work; hardBudget if it has
-	// found nothing yet.
-	budget     = 40_000
-	hardBudget = 160_000
+	// budget is the number of states a search may leave before it gives up with
+	// what it has found, some milliseconds of work; hardBudget if it has found
+	// nothing yet.
+	budget     = 28_000
+	hardBudget = 100_000
+	// A search goes so far at first, in nats, then further by quarters until it has
+	// found a word, and then as far as the spread above the best. Else it would
+	// queue all that lies within the bound before it knows what is worth it: a
+	// reach of four nats less takes a third of the time. From lastReach on it goes
+	// to the bound.
+	firstReach, lastReach = 16, 200
 	// spread is the default of SetSpread.
 	spread = 8
 	// longest is the number of letters of the longest observed word.
@@ -98,7 +101,6 @@ func (s *Searcher) SetSpread(spread float32) { s.spread = spread }
 // SetVariety leaves out words of other varieties than those named; 0 keeps all.
 func (s *Searcher) SetVariety(v lexicon.Variety) {
 	s.variety = v
-	s.plant()
 }
 
 // plant sets up the trees to search.
@@ -111,7 +113,6 @@ func (s *Searcher) plant() {
 	if s.house != nil {
 		s.trees = append(s.trees, tree{lex: s.house, words: uint32(s.house.Len()), house: true, read: &s.forwards})
 	}
-	s.forget()
 }
 
 // Search finds the best words by two searches in one queue, forwards and
@@ -121,28 +122,17 @@ func (s *Searcher) plant() {
 //
 // It appends the best k words for an observed form in normal form, best
 // first, with scores of at most bound, and returns the extended slice. The
-// observed form itself is among them if it is a word. An observed form of more than 62 letters has no candidates.
+// observed form itself is among them if it is a word. An observed form of more
+// than 62 letters has no candidates.
 func (s *Searcher) Search(dst []Candidate, observed []byte, k int, bound float32) []Candidate {
 	s.observed = channel.AppendLetters(s.observed[:0], observed[:min(len(observed), 4*longest+1)])
 	if n := len(s.observed); n == 0 || n > longest || k <= 0 {
 		return dst
 	}
-	s.begin(k, bound)
-	for work := 0; work < budget || work < hardBudget && len(s.best) == 0; work++ {
-		st, ok := s.queue.pop(s.limit)
-		if !ok {
-			break
-		}
-		p := &s.paths[st.path]
-		if st.score > s.limit || s.leftCheaper(p, st.i, st.cost) {
-			continue
-		}
-		s.note(p, st.i, st.cost)
-		if p.letter.Sym != channel.Edge {
-			s.leave(st)
-		} else if int(st.i) < len(s.observed) {
-			s.insert(st, p)
-		}
+	s.begin(k)
+	reach := float32(firstReach)
+	for s.further(reach, bound) {
+		reach *= 1.25
 	}
 	for _, f := range s.best {
 		if f.score <= s.limit {
@@ -152,38 +142,74 @@ func (s *Searcher) Search(dst []Candidate, observed []byte, k int, bound float32
 	return dst
 }
 
-// begin prepares the search and starts it at every first letter.
-func (s *Searcher) begin(k int, bound float32) {
-	if len(s.paths) > mostPaths || s.query == math.MaxUint32 {
-		s.query = 0
-		s.forget()
-	}
-	s.query++
-	s.queue.reset()
-	s.best, s.visits = s.best[:0], append(s.visits[:0], visit{})
-	s.k, s.limit = k, bound
+// begin prepares the readings of the observed word.
+func (s *Searcher) begin(k int) {
+	s.best, s.k = s.best[:0], k
 	half := (len(s.observed) + 1) / 2
 	s.forwards.readForwards(s.channel, s.observed, half)
 	if s.mirror != nil {
 		s.reverse.readBackwards(s.channel, &s.forwards, len(s.observed)-half)
 	}
-	for i := range s.trees {
-		t := &s.trees[i]
-		for c, end := s.children(t.root); c < end; c++ {
-			cost := float32(0)
-			if t.read.back {
-				cost = s.channel.Stop(s.paths[c].letter.Sym)
-			}
-			s.push(state{}, c, 0, cost)
-		}
-	}
 }
 
-// push queues a state that a step from another reached, unless it cannot matter.
-func (s *Searcher) push(from state, at, i int32, cost float32) {
-	p := &s.paths[at]
+// further searches as far as reach, or, if a word is found already, as far as the
+// spread allows. It is false when going further would find no better words, or
+// be too much work.
+func (s *Searcher) further(reach, bound float32) bool {
+	known := len(s.best) > 0
+	switch {
+	case known:
+		reach = s.best[0].score + s.spread
+	case reach > lastReach:
+		reach = bound
+	}
+	reach = min(reach, bound)
+	s.limit = reach
+	done := s.run()
+	return done && !known && reach < bound && s.limit == reach
+}
+
+// run searches as far as the limit, which it lowers by what it finds. It is false
+// if it gave up.
+func (s *Searcher) run() bool {
+	s.queue.reset()
+	s.reached.reset()
+	s.start()
+	var st state
+	for work := 0; work < budget || work < hardBudget && len(s.best) == 0; work++ {
+		if !s.queue.pop(&st, s.limit) {
+			return true
+		}
+		if st.score > s.limit || s.reached.stale(&st) {
+			continue
+		}
+		if st.letter.Sym != channel.Edge {
+			s.leave(&st)
+		} else if int(st.i) < len(s.observed) {
+			s.insert(&st, s.trees[st.tree].read)
+		}
+	}
+	return false
+}
+
+// start queues every first letter.
+func (s *Searcher) start() {
+	for i := range s.trees {
+		s.scratch = s.appendChildren(s.scratch[:0], s.root(i), func(channel.Symbol) bool { return true })
+		for k := range s.scratch {
+			first := &s.scratch[k]
+			s.reach(&state{}, first, 0, s.trees[i].read.order.Begin(first.letter.Sym))
+		}
+	}
+	s.scratch = s.scratch[:0]
+}
+
+// reach queues the state that a step from another reached, unless it cannot
+// matter.
+func (s *Searcher) reach(from *state, p *path, i int32, cost float32) {
 	t := &s.trees[p.tree]
-	floor := cost + t.read.floor[i]
+	before, c := p.before, p.letter.Sym
+	floor := cost + t.read.toEnd.rest(t.read, int(i), before)[c]
 	half := from.half
 	if t.halved {
 		if int(from.i) < t.read.half {
@@ -192,19 +218,28 @@ func (s *Searcher) push(from state, at, i int32, cost float32) {
 				half = from.cost
 			}
 		}
-		floor = max(floor, 2*(half+t.read.toHalf[i]))
+		floor = max(floor, 2*(half+t.read.toHalf.rest(t.read, int(i), before)[c]))
 	}
-	score := s.weights.Channel*floor + p.prior
-	if score > s.limit || s.leftCheaper(p, i, cost) {
+	floor *= s.weights.Channel
+	if floor+from.prior > s.limit {
 		return
 	}
-	if p.letter.Sym == channel.Edge && int(i) == len(s.observed) {
+	prior := from.prior
+	if p.node.Words() != from.node.Words() { // otherwise the same words are below
+		prior = s.priorCost(p)
+	}
+	score := floor + prior
+	if score > s.limit || !s.reached.cheaper(key(p, i), cost, half) {
+		return
+	}
+	if c == channel.Edge && int(i) == len(s.observed) {
 		if id, ok := t.id(p.base); ok {
 			s.tighten(found{Candidate{id, t.house, cost, t.lex.Prior(p.base)}, score})
 		}
 		return
 	}
-	s.queue.push(state{score: score, cost: cost, half: half, path: at, i: i})
+	to := s.queue.push(score)
+	to.path, to.score, to.cost, to.half, to.prior, to.i = *p, score, cost, half, prior, i
 }
 
 // tighten lowers the limit to the k-th best score of the whole words seen.

@@ -20,6 +20,7 @@ type Model struct {
 	rules   ruleTable
 	prices  Prices
 	section []byte
+	orders  orders
 }
 
 // Prices are the costs, in nats, of what is not a matter of single letters.
@@ -66,8 +67,7 @@ func at3(a, b, c Symbol) int { return (int(a)*symbols+int(b))*symbols + int(c) }
 func (m *Model) Emit(x Letter, l Symbol, c Letter, r Symbol) float32 {
 	place := at3(l, c.Sym, r)
 	if x.Sym != c.Sym {
-		steps := int(m.doubt[place]) + int(m.subLeft[at3(x.Sym, l, c.Sym)]) + int(m.subNext[at3(x.Sym, c.Sym, r)])
-		return float32(max(0, steps-2*biasSteps)) * step8
+		return replaceCost(int(m.doubt[place]) + int(m.subLeft[at3(x.Sym, l, c.Sym)]) + int(m.subNext[at3(x.Sym, c.Sym, r)]))
 	}
 	cost := m.keep.at(place)
 	if x.Rune != c.Rune {
