@@ -15,7 +15,7 @@ import (
 const (
 	latticeStates = 64   // language-model states kept at a node
 	latticeMargin = 14   // nats below a node's best at which a state is dropped
-	hopeless      = 10.0 // nats below the typed reading at which a change is not weighed
+	hopeless      = 8.0 // nats below the typed reading at which a change is not weighed
 )
 
 // judge weighs one sentence at a time. It owns every buffer that takes, so
