@@ -43,20 +43,6 @@ func BenchmarkAdvance(b *testing.B) { benchAdvance(b, evenBooks(3)) }
 
 func BenchmarkAdvanceExact(b *testing.B) { benchAdvance(b, lm.Codebooks{}) }
 
-// BenchmarkAdvanceText scores the same text in sentences; a query is a word.
-func BenchmarkAdvanceText(b *testing.B) {
-	o, text := benchModel(b)
-	m := open(b, encode(b, o, evenBooks(3)))
-	const sentence = 32
-	states, logp := make([]lm.State, sentence+1), make([]float32, sentence)
-	b.ResetTimer()
-	for i := 0; i < b.N; i += sentence {
-		at := i & (len(text) - 1)
-		m.AdvanceText(text[at:at+sentence], states, logp)
-		states[0] = states[sentence]
-	}
-}
-
 // gram is an n-gram for the baselines, newest word first, n words of it.
 type gram struct {
 	words [3]uint32

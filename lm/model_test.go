@@ -102,17 +102,14 @@ func TestOutsideVocabulary(t *testing.T) {
 func TestAdvanceDoesNotAllocate(t *testing.T) {
 	r := rand.New(rand.NewPCG(7, 7))
 	m := open(t, encode(t, randomOracle(r, 4, 50, 900), evenBooks(4)))
-	words := randomText(r, 50, 30)
-	logp, states, next := make([]float32, 30), make([]lm.State, 31), make([]lm.State, 30)
-	if n := testing.AllocsPerRun(100, func() {
-		m.AdvanceText(words, states, logp)
-		m.AdvanceEach(states[:30], words, logp, next)
-		m.AdvanceAll(&states[30], words, logp, next)
-		for i, w := range words {
-			m.Advance(&states[i], w, &next[i])
-		}
+	var s, next lm.State
+	w := uint32(0)
+	if n := testing.AllocsPerRun(1000, func() {
+		m.Advance(&s, w%50, &next)
+		s, next = next, s
+		w += 7
 	}); n != 0 {
-		t.Errorf("%v allocations", n)
+		t.Errorf("%v allocations a query", n)
 	}
 }
 
@@ -186,13 +183,6 @@ func exercise(m *lm.Model) {
 		m.Explain(s, i%n)
 		_, s = m.Score(s, i*7%n)
 	}
-	words := make([]uint32, 20)
-	for i := range words {
-		words[i] = uint32(i) * 7 % n
-	}
-	logp, states, next := make([]float32, 20), make([]lm.State, 21), make([]lm.State, 20)
-	m.AdvanceText(words, states, logp)
-	m.AdvanceEach(states[:20], words, logp, next)
 }
 
 func FuzzOpen(f *testing.F) {

@@ -30,19 +30,13 @@ func (m *Model) descend(p *place, key uint32) bool {
 	var q search
 	below := &m.levels[p.level+1]
 	q.begin(below, lo, hi, uint64(key))
-	q.turn(below)
-	i, ok := q.find(below)
+	i, ok := q.find(below, hi)
 	if ok {
-		p.move(below, &q, i)
+		p.in, p.level = below, p.level+1
+		p.block, p.number, p.i = q.block, q.number, i
+		p.key = uint32(q.number*blockLen + i - lo)
 	}
 	return ok
-}
-
-// move makes p the place of n-gram i of the block that a search found.
-func (p *place) move(to *level, q *search, i uint64) {
-	p.in, p.level = to, p.level+1
-	p.block, p.number, p.i = q.block, q.number, i
-	p.key = uint32(q.number*blockLen + i - q.lo)
 }
 
 // children returns the range of the children in the next level.
@@ -83,23 +77,18 @@ func (l *level) backoff(v *block, i uint64) (weight float32, ok bool) {
 	return l.back.value(l.data, v.backs+place*l.back.width), true
 }
 
-// search is the way to one n-gram of a level, in three steps, each of which
-// waits for memory.
+// search is the way to one n-gram of a level.
 type search struct {
-	lo, hi uint64 // the range of n-grams to search
 	block
 	number   uint64 // of the block
-	turned   bool   // number is not yet that of the block
 	from, at uint64 // the first n-gram in question, and where its one may stand
 	target   uint64 // the key less the block's keyBase
 }
 
-// begin reads the first block of the range [lo, hi) and so learns in which one
-// the n-gram that has a key would be. The range must not be empty, hi be at most
-// the level's count.
+// begin finds the block in which the n-gram of the range [lo, hi) that has a key
+// would be. The range must not be empty, hi be at most the level's count.
 func (q *search) begin(l *level, lo, hi, key uint64) {
-	q.lo, q.hi, q.target, q.turned = lo, hi, key, false
-	q.number, q.from, q.at = lo/blockLen, lo%blockLen, 0
+	q.number, q.from, q.target = lo/blockLen, lo%blockLen, key
 	l.layOut(&q.block, q.number)
 	if q.from > 0 {
 		before := q.keys.position(l.data, q.from-1)
@@ -109,22 +98,15 @@ func (q *search) begin(l *level, lo, hi, key uint64) {
 	if last := (hi - 1) / blockLen; last > q.number {
 		target := q.target + l.keyBase(q.number)
 		if home := l.home(q.number, last, target); home != q.number {
-			q.number, q.from, q.at, q.turned = home, 0, 0, true
-			q.target = target - l.keyBase(home)
+			q.number, q.from, q.at, q.target = home, 0, 0, target-l.keyBase(home)
+			l.layOut(&q.block, home)
 		}
 	}
 }
 
-// turn lays out the block that the n-gram would be in.
-func (q *search) turn(l *level) {
-	if q.turned {
-		l.layOut(&q.block, q.number)
-	}
-}
-
-// find looks for the n-gram in its block.
-func (q *search) find(l *level) (i uint64, ok bool) {
-	return q.keys.find(l.data, q.at, q.from, min(q.hi-q.number*blockLen, blockLen), q.target)
+// find looks for the n-gram in its block, before the end hi of the range.
+func (q *search) find(l *level, hi uint64) (i uint64, ok bool) {
+	return q.keys.find(l.data, q.at, q.from, min(hi-q.number*blockLen, blockLen), q.target)
 }
 
 // home returns the block of [b, last] whose keys include the target.
