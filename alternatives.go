@@ -7,8 +7,8 @@ import (
 )
 
 // alternatives are the words that a known word may have been meant as. They are
-// weighed together: the language model answers several queries at once in little
-// more time than one, and most alternatives need none.
+// weighed together, in stages that each drop what has become hopeless; most never
+// come to a query of the language model.
 type alternatives struct {
 	ids    []uint32
 	costs  []float32 // channel costs, nats
@@ -17,13 +17,6 @@ type alternatives struct {
 	right  []bool    // and with the word behind
 	gains  []float64 // so far, nats
 	states []lm.State
-
-	// For batches of queries: which alternatives they are of, and the answers.
-	of     []int
-	words  []uint32
-	before []lm.State
-	after  []lm.State
-	logp   []float32
 }
 
 func (a *alternatives) reset() { a.ids, a.costs = a.ids[:0], a.costs[:0] }
@@ -55,21 +48,6 @@ func (a *alternatives) grow() {
 	a.right = slices.Grow(a.right[:0], n)[:n]
 	a.gains = slices.Grow(a.gains[:0], n)[:n]
 	a.states = slices.Grow(a.states[:0], n)[:n]
-}
-
-// batch begins a batch of queries about the alternatives that want one.
-func (a *alternatives) batch(wanted func(i int) bool) {
-	a.of, a.words, a.before = a.of[:0], a.words[:0], a.before[:0]
-	for i, id := range a.ids {
-		if wanted(i) {
-			a.of = append(a.of, i)
-			a.words = append(a.words, id)
-			a.before = append(a.before, a.states[i])
-		}
-	}
-	n := len(a.of)
-	a.logp = slices.Grow(a.logp[:0], n)[:n]
-	a.after = slices.Grow(a.after[:0], n)[:n]
 }
 
 // weighAlternatives drops the alternatives to the one word of a slot that cannot
@@ -131,15 +109,7 @@ func (j *judge) weighInPlace(sl *slot) {
 	a := &j.alternatives
 	typed, before := float64(j.logp[sl.from]), &j.states[sl.from]
 	for i, id := range a.ids {
-		if !a.left[i] {
-			a.gains[i] = float64(j.shortcut.Advance(before, id, &a.states[i])) - typed
-		}
-	}
-	a.batch(func(i int) bool { return a.left[i] })
-	j.e.lm.AdvanceAll(before, a.words, a.logp, a.after)
-	for k, i := range a.of {
-		a.gains[i] = float64(a.logp[k]) - typed
-		a.states[i] = a.after[k]
+		a.gains[i] = float64(j.advance(before, id, &a.states[i])) - typed
 	}
 	behind := -j.followers(sl.to)
 	a.keep(func(i int) bool { return a.gains[i]+behind >= a.floors[i] })
@@ -149,30 +119,13 @@ func (j *judge) weighInPlace(sl *slot) {
 func (j *judge) weighBehind(sl *slot) {
 	a := &j.alternatives
 	next, typed := j.ids[sl.to], float64(j.logp[sl.to])
-	for i := range a.ids {
-		if !a.right[i] {
-			a.gains[i] += float64(j.shortcut.Advance(&a.states[i], next, &j.ahead[0])) - typed + j.tail(sl.to)
-		}
-	}
-	a.batch(func(i int) bool { return a.right[i] })
-	for k := range a.words {
-		a.words[k] = next
-	}
-	j.e.lm.AdvanceEach(a.before, a.words, a.logp, a.after)
-	for k, i := range a.of {
-		a.gains[i] += float64(a.logp[k]) - typed
-		a.states[i] = a.after[k]
-	}
 	further := -j.followers(sl.to + 1)
-	a.keep(func(i int) bool {
-		if !a.right[i] {
-			return a.gains[i] >= a.floors[i]
-		}
-		return a.gains[i]+further >= a.floors[i]
-	})
 	for i := range a.ids {
-		if a.right[i] {
-			a.gains[i] += j.gainFrom(sl.to+1, sl.to+j.e.lm.Order()-1, a.states[i])
+		a.gains[i] += float64(j.advance(&a.states[i], next, &j.ahead[0])) - typed
+		if j.ahead[0].Only(next) {
+			a.gains[i] += j.tail(sl.to)
+		} else if a.gains[i]+further >= a.floors[i] {
+			a.gains[i] += j.gainFrom(sl.to+1, sl.to+j.e.lm.Order()-1, j.ahead[0])
 		}
 	}
 	a.keep(func(i int) bool { return a.gains[i] >= a.floors[i] })

@@ -83,8 +83,11 @@ func (j *judge) proposeConfusables(i int) {
 func (j *judge) proposeCandidates(i int) {
 	sl := &j.slots[i]
 	reach := float32(slipReach)
-	if sl.status == known || sl.token.Case == text.Title && i > j.lead {
-		reach = likelyReach
+	switch {
+	case sl.token.Case == text.Title && i > j.lead:
+		reach = nameReach
+	case sl.status == known:
+		reach = rareReach
 	}
 	for _, c := range j.finder.find(sl.token.Norm, reach) {
 		ch := change{from: i, to: i + 1, kind: Nonword, cost: float64(c.cost), house: c.house}

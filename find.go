@@ -18,10 +18,10 @@ const (
 	// at as one that is none: the table of confusable words does not go so far.
 	rareWord = -15
 	// slipReach is the weighted cost, nats, up to which they are looked for:
-	// beyond it a new word is the likelier reading of any form. likelyReach is the
-	// same for a form that is likely meant: a rare word, or a name, with a capital
-	// inside a sentence.
-	slipReach, likelyReach = 20, 14.5
+	// beyond it a new word is the likelier reading of any form. rareReach and nameReach
+	// are the same for forms that are likely meant: a rare word, and a name, with a
+	// capital inside a sentence.
+	slipReach, rareReach, nameReach = 22, 14.5, 12.5
 	// rankReach is the same for a ranking, where no new word competes.
 	rankReach = 60
 	// findSpread and rankSpread are the weighted costs, nats, above the best at

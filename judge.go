@@ -13,8 +13,8 @@ import (
 // Bounds of the lattice. They trade exactness for time; development text shows
 // no difference beyond them.
 const (
-	latticeStates = 64   // language-model states kept at a node
-	latticeMargin = 14   // nats below a node's best at which a state is dropped
+	latticeStates = 64  // language-model states kept at a node
+	latticeMargin = 14  // nats below a node's best at which a state is dropped
 	hopeless      = 8.0 // nats below the typed reading at which a change is not weighed
 )
 
@@ -210,7 +210,9 @@ func (j *judge) scoreTyped() {
 	j.tails = slices.Grow(j.tails[:0], n)[:n]
 	clear(j.tails)
 	j.states[0] = j.e.lm.Begin(j.e.lexicon.ClassID(lexicon.Begin))
-	j.e.lm.AdvanceText(j.ids, j.states, j.logp)
+	for i, id := range j.ids {
+		j.logp[i] = j.e.lm.Advance(&j.states[i], id, &j.states[i+1])
+	}
 }
 
 // advance asks the language model.

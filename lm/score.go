@@ -38,7 +38,13 @@ func (m *Model) Advance(s *State, w uint32, next *State) float32 {
 	if order == 0 {
 		return logp
 	}
-	for i := order - 1; i < min(int(s.n), m.order-1); i++ {
+	return s.backOff(logp, order, m.order)
+}
+
+// backOff adds to a log probability found by an n-gram of some order the
+// weights of the contexts that are longer.
+func (s *State) backOff(logp float32, order, highest int) float32 {
+	for i := order - 1; i < min(int(s.n), highest-1); i++ {
 		logp += s.backoff[i]
 	}
 	return logp

@@ -52,7 +52,7 @@ type evalNoiseFlags struct {
 	names   bool
 	seed    uint64
 	heldOut bool
-	budget  rate
+	proof   judgedFlags
 }
 
 func declareEvalNoise(fs *pflag.FlagSet) action {
@@ -63,7 +63,7 @@ func declareEvalNoise(fs *pflag.FlagSet) action {
 	fs.BoolVar(&f.names, "names", false, "put slips into words with capitals too")
 	fs.Uint64Var(&f.seed, "seed", 1, "`N` that the slips are drawn by")
 	heldOutFlag(fs, &f.heldOut)
-	budgetFlag(fs, &f.budget)
+	f.proof.declare(fs)
 	f.declare(fs)
 	return f.run
 }
@@ -87,7 +87,9 @@ func (f *evalNoiseFlags) run(c *console, files []string) (status, error) {
 	if swap {
 		slips.Mix, slips.Mistype = nil, eval.Neighbours(source.neighbours)
 	}
-	o.Budget = float64(f.budget)
+	if err := f.proof.apply(&o); err != nil {
+		return trouble, err
+	}
 	for _, path := range files {
 		items, file, err := readData(c, path, cleanReader(f.heldOut))
 		if err != nil {

@@ -39,8 +39,12 @@ of them makes as right.
 With --clean the files hold good text, a paragraph a line and blank lines
 between documents; every finding is a false alarm.
 
---results keeps what became of every flag and every error, with ledgers of the
-surest false alarms and of what was missed. --emit jsonl prints
+--without does without some of what a document tells about itself, to measure
+what that is worth: ` + orList(foulcase.EvidenceNames()) + `.
+
+--results keeps what became of every flag and every error, doubts below the
+budget's thresholds among them, with ledgers of the surest false alarms and of
+what was missed. --emit jsonl prints
 an object a metric: task, data, model, metric, class, value, low, high, n and,
 when the model says what it was fitted on, fitted (the share of the errors).`,
 		examples: `
@@ -57,7 +61,7 @@ type evalTextFlags struct {
 	columns string
 	clean   bool
 	heldOut bool
-	budget  rate
+	proof   judgedFlags
 }
 
 func declareEvalText(fs *pflag.FlagSet) action {
@@ -66,7 +70,7 @@ func declareEvalText(fs *pflag.FlagSet) action {
 	fs.StringVar(&f.columns, "columns", "source,reference", "`NAMES` of the columns")
 	fs.BoolVar(&f.clean, "clean", false, "the files hold good text")
 	heldOutFlag(fs, &f.heldOut)
-	budgetFlag(fs, &f.budget)
+	f.proof.declare(fs)
 	f.declare(fs)
 	return f.run
 }
@@ -75,8 +79,25 @@ func heldOutFlag(fs *pflag.FlagSet, only *bool) {
 	fs.BoolVar(only, "held-out-only", false, "of good text read only the documents that lm train --hold-out leaves out")
 }
 
-func budgetFlag(fs *pflag.FlagSet, budget *rate) {
-	fs.Var(budget, "budget", "false alarms to bear in 1,000 words of good text (default: the model's own)")
+// judgedFlags are the flags of verbs that measure what proofreading finds.
+type judgedFlags struct {
+	budget  rate
+	without []string
+}
+
+func (f *judgedFlags) declare(fs *pflag.FlagSet) {
+	fs.Var(&f.budget, "budget", "false alarms to bear in 1,000 words of good text (default: the model's own)")
+	withoutFlag(fs, &f.without)
+}
+
+// apply puts into the options what the flags ask for.
+func (f *judgedFlags) apply(o *foulcase.Options) error {
+	o.Budget = float64(f.budget)
+	var err error
+	if o.Without, err = foulcase.ParseEvidence(f.without...); err != nil {
+		return misusef("--without: %v", err)
+	}
+	return nil
 }
 
 func (f *evalTextFlags) run(c *console, files []string) (status, error) {
@@ -99,7 +120,9 @@ func (f *evalTextFlags) run(c *console, files []string) (status, error) {
 		return trouble, err
 	}
 	defer m.engine.Close()
-	o.Budget = float64(f.budget)
+	if err := f.proof.apply(&o); err != nil {
+		return trouble, err
+	}
 	for _, path := range files {
 		items, file, err := f.read(c, path, columns, knownBy(m.engine))
 		if err != nil {
@@ -162,6 +185,7 @@ func cleanReader(heldOut bool) func(file string, r io.Reader) ([]eval.Item, erro
 func (m *measurement) proofItems(file eval.DataFile, items []eval.Item, o foulcase.Options) error {
 	file.Measured = eval.HashItems(items)
 	file.Overlap = eval.Fitted(m.engine.Fitted).OverlapOfErrors(items)
+	o.Doubts = true // for the curves; reports leave them out
 	flags, err := flagAll(m.engine, items, o, int(*m.flags.jobs))
 	if err != nil {
 		return err
@@ -246,6 +270,7 @@ func flagOf(m foulcase.Mark, origin int) eval.Flag {
 		Kind:     eval.Kind(m.Kind.String()),
 		Grade:    m.Grade.String(),
 		P:        m.P,
+		Held:     m.Grade == foulcase.GradeDoubt,
 	}
 	for _, correction := range m.Corrections {
 		f.Corrections = append(f.Corrections, correction.Text)
