@@ -56,7 +56,7 @@ func (j *judge) oddsOf(f *finding) float64 {
 	case f.p < leastWeighed:
 		return math.Inf(-1)
 	case j.e.calibration == nil:
-		return logit(f.p)
+		return clampOdds(logit(f.p))
 	}
 	return j.e.calibration.logOdds(f.kind, j.collect(f))
 }

@@ -113,7 +113,7 @@ func (x *evidence) when(feature int, v bool) {
 
 // weighed is what the lattice made of the finding.
 func (x *evidence) weighed(f *finding) {
-	x.set(fOdds, min(max(logit(f.p), leastOdds), -leastOdds)) // a sum of shares may reach 1
+	x.set(fOdds, clampOdds(logit(f.p)))
 	c, second := &f.changes[0], rarestChange
 	if len(f.changes) > 1 {
 		second = max(second, f.changes[1].p)
@@ -122,6 +122,9 @@ func (x *evidence) weighed(f *finding) {
 	x.set(fGain, c.gain)
 	x.set(fCost, c.cost)
 }
+
+// clampOdds bounds log-odds of the lattice, where a sum of shares may reach 1.
+func clampOdds(odds float64) float64 { return min(max(odds, leastOdds), -leastOdds) }
 
 // frequencies compares how common the words are.
 func (j *judge) frequencies(x *evidence, sl *slot, meant uint32) {

@@ -16,8 +16,8 @@ import (
 type Ledger struct {
 	Sentence string    `json:"sentence"`
 	Weights  Judgement `json:"weights"`
-	// Rate is how many slips a word the writer is taken to make, and Shift what
-	// that adds to every finding's log-odds, nats.
+	// Rate is how many slips a word the writer is taken to make, 0 if the model is
+	// not calibrated, and Shift what that adds to every finding's log-odds, nats.
 	Rate  float64        `json:"rate"`
 	Shift float64        `json:"shift"`
 	Words []LedgerColumn `json:"words"`
@@ -100,7 +100,9 @@ func (e *Engine) Ledger(sentence string, o Options) Ledger {
 	}
 	d.rate.settle(d.words, d.odds)
 	l.Shift = d.rate.shift
-	l.Rate = logistic(d.rate.base + d.rate.shift)
+	if e.calibration != nil {
+		l.Rate = logistic(d.rate.base + d.rate.shift)
+	}
 	for i := range l.Words {
 		l.Words[i].decide(&d.rate, &d.limits)
 	}
@@ -244,7 +246,9 @@ func (l Ledger) String() string {
 	w := l.Weights
 	fmt.Fprintf(&b, "%s\n", strings.TrimSpace(l.Sentence))
 	fmt.Fprintf(&b, "score = %.3g × lm + slip - %.3g × channel + evidence   (nats)\n", w.LanguageModel, w.Channel)
-	fmt.Fprintf(&b, "the writer is taken to slip %.3g times in 1,000 words: %+.2f nats to every finding\n", 1000*l.Rate, l.Shift)
+	if l.Rate > 0 {
+		fmt.Fprintf(&b, "the writer is taken to slip %.3g times in 1,000 words: %+.2f nats to every finding\n", 1000*l.Rate, l.Shift)
+	}
 	for _, c := range l.Words {
 		fmt.Fprintf(&b, "\n%q  %s  p %.4f", c.Observed, c.Status, c.P)
 		if c.Mark > 0 {

@@ -14,7 +14,7 @@ func modelCalibrateVerb() verb {
 	return verb{
 		name:     "model calibrate",
 		operands: "TEXT...",
-		summary:  "learn from good text what a finding's evidence is worth",
+		summary:  "learn what a finding's evidence is worth",
 		about: `
 Writes a calibration, JSON, for foulcase model build --calibration: what each
 piece of evidence adds to the odds that a finding is right, and from which
