@@ -76,7 +76,7 @@ func declareEvalText(fs *pflag.FlagSet) action {
 }
 
 func heldOutFlag(fs *pflag.FlagSet, only *bool) {
-	fs.BoolVar(only, "held-out-only", false, "of good text read only the documents that lm train --hold-out leaves out")
+	fs.BoolVar(only, "held-out-only", false, "of good text read only the documents that training and calibration with this flag leave out")
 }
 
 // judgedFlags are the flags of verbs that measure what proofreading finds.
@@ -160,8 +160,8 @@ func (f *evalTextFlags) read(c *console, path string, columns []eval.Column, kno
 	return items, file, nil
 }
 
-// cleanReader reads good text, or only those of its documents that no model
-// learned from.
+// cleanReader reads good text, or only those of its documents that neither the
+// models nor their calibration learned from.
 func cleanReader(heldOut bool) func(file string, r io.Reader) ([]eval.Item, error) {
 	if !heldOut {
 		return eval.ReadClean
@@ -172,7 +172,7 @@ func cleanReader(heldOut bool) func(file string, r io.Reader) ([]eval.Item, erro
 			if err != nil {
 				return nil, err
 			}
-			if text.HeldOut(doc) {
+			if text.Unseen(doc) {
 				kept.Write(doc)
 				kept.WriteString(paragraphBreak)
 			}

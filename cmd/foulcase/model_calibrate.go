@@ -7,6 +7,7 @@ import (
 
 	"example.org/foulcase"
 	"example.org/foulcase/eval"
+	"example.org/foulcase/internal/text"
 	"github.com/spf13/pflag"
 )
 
@@ -22,8 +23,8 @@ probability on findings are reported for each budget of false alarms.
 
 TEXT is good text in plain files or folders of them, a paragraph a line and
 blank lines between documents, that the model did not learn from:
---held-out-only reads only the documents that lm train --hold-out leaves out.
-It is cut into pieces. Half of them teach, once as they are and once with slips
+--held-out-only reads only the documents that lm train --hold-out leaves out, and
+leaves out a third of those to be measured on. It is cut into pieces. Half of them teach, once as they are and once with slips
 put in, some densely and some rarely; the other half sets the thresholds, so
 that of the files three in four have no more findings than the budget. --words
 bounds what is taken of each file, evenly over its length.
@@ -54,7 +55,7 @@ func declareModelCalibrate(fs *pflag.FlagSet) action {
 	f := &calibrateFlags{words: 120000}
 	f.engine.declare(fs)
 	fs.StringArrayVar(&f.pairs, "pairs", nil, "`FILE` of corrections to draw slips from; may be repeated")
-	heldOutFlag(fs, &f.heldOut)
+	fs.BoolVar(&f.heldOut, "held-out-only", false, "read two thirds of the documents that lm train --hold-out leaves out")
 	fs.Var(&f.words, "words", "how many words to take of each file")
 	withoutFlag(fs, &f.without)
 	fs.Uint64Var(&f.seed, "seed", 1, "`N` that the slips are drawn by")
@@ -166,7 +167,7 @@ func readPieces(texts *corpus, in input, heldOut bool, words int) ([]string, err
 		if err = e; e != nil {
 			return false
 		}
-		if !heldOut || isHeldOut(doc) {
+		if !heldOut || text.HeldOut(doc) && !text.Unseen(doc) {
 			for _, p := range cutDocument(string(doc)) {
 				pieces = append(pieces, p)
 				total += eval.Words(p)

@@ -220,8 +220,6 @@ func occurrences(item eval.Item, word string) []eval.Span {
 	return found
 }
 
-func isHeldOut(doc []byte) bool { return text.HeldOut(doc) }
-
 // cutDocument cuts a document at paragraphs into pieces of about pieceSize.
 func cutDocument(doc string) []string {
 	var pieces []string
