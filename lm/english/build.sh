@@ -9,7 +9,8 @@
 # describes them. The word lists are those of Debian's packages wamerican-huge
 # and wbritish-huge (DICT names another folder). What is made on the way is kept
 # in WORK, if given; a step whose result is there already is not done again.
-# Every tenth document is left out. Twice gives the same bytes.
+# Every tenth document is left out of the models; two thirds of those calibrate them,
+# one third is for measuring. Twice gives the same bytes.
 set -euo pipefail
 if [ $# -lt 2 ]; then
 	sed -n '2,/^set/{/^set/d;s/^# \{0,1\}//;p}' "$0"
@@ -46,5 +47,12 @@ if [ ! -e "$work/lm.fcm" ]; then
 		--memory 4GiB --hold-out -o "$work/lm.fcm" "$texts"
 fi
 "$work/foulcase" model build --from "$work/parts.fcm" --from "$work/lm.fcm" \
-	--judgement lm/english/judgement.json --card lm/english/card.md -o lm/english/english.fcm
+	--judgement lm/english/judgement.json -o "$work/uncalibrated.fcm"
+"$work/foulcase" model calibrate --model "$work/uncalibrated.fcm" --held-out-only --words 300000 \
+	--pairs "$data/train/wikipedia-common.tsv" \
+	--pairs "$data/train/toefl-spell.tsv" \
+	--pairs "$data/train/typos-mixed.tsv" \
+	-o "$work/calibration.json" "$texts"
+"$work/foulcase" model build --from "$work/uncalibrated.fcm" \
+	--calibration "$work/calibration.json" --card lm/english/card.md -o lm/english/english.fcm
 "$work/foulcase" model check lm/english/english.fcm
