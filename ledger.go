@@ -73,12 +73,10 @@ type LedgerNGram struct {
 var statusNames = [...]string{closed: "closed", known: "known", unknown: "unknown", foreign: "other-variety"}
 
 // Ledger accounts for every word of a plain text, readings too poor to be
-// weighed in Proof included.
+// weighed in Proof included. What is said of findings is what Proof makes of them.
 func (e *Engine) Ledger(sentence string, o Options) Ledger {
 	d := e.newDocument(o)
 	defer e.give(d.judge)
-	d.hopeless = math.Inf(1)
-	defer func() { d.hopeless = hopeless }()
 
 	l := Ledger{Sentence: sentence, Weights: *e.judgement, Words: []LedgerColumn{}}
 	block := &text.Block{Text: []byte(sentence)}
@@ -88,50 +86,86 @@ func (e *Engine) Ledger(sentence string, o Options) Ledger {
 		if err != nil {
 			continue // no reading has a probability: nothing to account for
 		}
-		for _, f := range found {
-			d.odds = append(d.odds, f.odds)
-		}
 		d.words += wordsIn(s.Tokens)
-		for i := range d.slots {
-			if d.slots[i].token.Kind == text.Word {
-				l.Words = append(l.Words, d.column(i, found, block.Text))
-			}
-		}
+		l.Words = append(l.Words, d.columns(s, found, block.Text)...)
 	}
-	d.rate.settle(d.words, d.odds)
-	l.Shift = d.rate.shift
-	if e.calibration != nil {
-		l.Rate = logistic(d.rate.base + d.rate.shift)
-	}
-	for i := range l.Words {
-		l.Words[i].decide(&d.rate, &d.limits)
-	}
+	l.settle(d)
 	return l
 }
 
-// decide settles what becomes of a column now that the text is known.
-func (c *LedgerColumn) decide(rate *slipRate, limits *thresholds) {
-	if math.IsInf(c.odds, -1) {
+// settle settles what becomes of every column now that the text is known.
+func (l *Ledger) settle(d *document) {
+	for i := range l.Words {
+		d.odds = append(d.odds, l.Words[i].odds)
+	}
+	d.rate.settle(d.words, d.odds)
+	l.Shift = d.rate.shift
+	if d.e.calibration != nil {
+		l.Rate = logistic(d.rate.base + d.rate.shift)
+	}
+	var reported []float64
+	for i := range l.Words {
+		c := &l.Words[i]
+		if c.P = logistic(c.odds + l.Shift); c.found() && c.P >= d.limits.query[c.kind] {
+			reported = append(reported, c.P)
+		}
+	}
+	floor := d.limits.leastOf(d.words, reported)
+	for i := range l.Words {
+		l.Words[i].decide(&d.limits, floor)
+	}
+}
+
+// found reports whether a finding begins at the column.
+func (c *LedgerColumn) found() bool { return !math.IsInf(c.odds, -1) }
+
+// decide gives the verdict; under the floor nothing is reported.
+func (c *LedgerColumn) decide(limits *thresholds, floor float64) {
+	if !c.found() {
 		return
 	}
-	c.P = logistic(c.odds + rate.shift)
-	c.Query, c.Mark = limits.query[c.kind], limits.mark[c.kind]
-	if g := limits.grade(c.kind, c.P); g != GradeDoubt {
+	c.Query, c.Mark = max(limits.query[c.kind], floor), max(limits.mark[c.kind], floor)
+	if g := limits.grade(c.kind, c.P); g != GradeDoubt && c.P >= floor {
 		c.Verdict = g.String() + " " + c.kind.String()
 	}
 }
 
-// column accounts for slot i.
-func (j *judge) column(i int, found []finding, block []byte) LedgerColumn {
-	sl := &j.slots[i]
-	c := LedgerColumn{
-		Observed: string(block[sl.token.Start:sl.token.End]),
-		Offset:   sl.token.Start,
-		Status:   statusNames[sl.status],
-		Verdict:  "let stand",
-		odds:     math.Inf(-1),
-		Readings: []LedgerReading{j.typedReading(sl, block)},
+// columns accounts for the words of a sentence in which so much was found.
+func (j *judge) columns(s text.Sentence, found []finding, block []byte) []LedgerColumn {
+	columns := make([]LedgerColumn, len(j.slots))
+	for i := range columns {
+		columns[i].odds = math.Inf(-1)
 	}
+	for i := range found {
+		if f := &found[i]; !math.IsInf(f.odds, -1) {
+			c := &columns[f.from]
+			c.kind, c.odds = f.kind, f.odds
+			c.Base, c.Terms = j.terms(f)
+		}
+	}
+	j.hopeless = math.Inf(1)
+	defer func() { j.hopeless = hopeless }()
+	if _, err := j.findings(s, block); err != nil {
+		return nil
+	}
+	words := columns[:0]
+	for i, c := range columns {
+		if j.slots[i].token.Kind == text.Word {
+			j.fill(&c, i, block)
+			words = append(words, c)
+		}
+	}
+	return words
+}
+
+// fill accounts for the readings of slot i.
+func (j *judge) fill(c *LedgerColumn, i int, block []byte) {
+	sl := &j.slots[i]
+	c.Observed = string(block[sl.token.Start:sl.token.End])
+	c.Offset = sl.token.Start
+	c.Status = statusNames[sl.status]
+	c.Verdict = "let stand"
+	c.Readings = []LedgerReading{j.typedReading(sl, block)}
 	rest := 1.0
 	for _, ch := range j.changes {
 		if ch.from <= i && i < ch.to {
@@ -142,13 +176,6 @@ func (j *judge) column(i int, found []finding, block []byte) LedgerColumn {
 		}
 	}
 	c.Readings[0].P = max(rest, 0)
-	for n := range found {
-		if f := &found[n]; f.from == i && !math.IsInf(f.odds, -1) {
-			c.kind, c.odds = f.kind, f.odds
-			c.Base, c.Terms = j.terms(f)
-		}
-	}
-	return c
 }
 
 // terms accounts for the log-odds of a finding.
