@@ -134,11 +134,8 @@ func inflected(a, b string) bool {
 	if len(a) > len(b) {
 		a, b = b, a
 	}
-	switch strings.TrimPrefix(b, a) {
-	case "s", "es", "d", "ed", "ing", "ly":
-		return true
-	}
-	return false
+	ending, ok := strings.CutPrefix(b, a)
+	return ok && slices.Contains([]string{"s", "es", "d", "ed", "ing", "ly"}, ending)
 }
 
 // trialMix weighs the kinds of slip that a calibration learns from; densities
