@@ -27,7 +27,7 @@ var budgets = []float64{.1, .2, .5, 1, 2, 5, 10, 20}
 
 // kept is the share of sources whose false alarms a threshold holds within its
 // budget; the others may go beyond it.
-const kept = .67
+const kept = .75
 
 // Calibrate learns the calibration of a model: what is known of findings, and
 // whether they were right, from texts with slips and without (they should hold
@@ -39,7 +39,7 @@ const kept = .67
 // The log-odds of a finding are an additive model of its evidence, fitted by
 // likelihood. A threshold is one probability for all kinds, which at given false
 // alarms finds the most errors if the probabilities are true; it is chosen so
-// that two sources in three stay within the budget, every finding in good text
+// that three sources in four stay within the budget, every finding in good text
 // counted as a false alarm.
 func (e *Engine) Calibrate(learn, good []Trial, o Options) (*Calibration, error) {
 	c := &calibrator{Calibration: new(Calibration)}

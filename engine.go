@@ -168,6 +168,12 @@ func (e *Engine) Describe() []Section {
 		SectionLexicon: fmt.Sprintf("%d forms", e.lexicon.Len()),
 		SectionLM:      describeNGrams(e.lm),
 	}
+	if e.fitted != nil {
+		summaries[SectionFitted] = fmt.Sprintf("%d pairs", e.fitted.Len())
+	}
+	if c := e.calibration; c != nil {
+		summaries[SectionCalibration] = fmt.Sprintf("%d, %d and %d features", len(c.Nonword.Terms), len(c.Realword.Terms), len(c.Spaces.Terms))
+	}
 	var parts []Section
 	for _, name := range e.file.Names() {
 		body, _ := e.file.Section(name)

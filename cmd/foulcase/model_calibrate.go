@@ -26,7 +26,7 @@ blank lines between documents, that the model did not learn from:
 --held-out-only reads only the documents that lm train --hold-out leaves out, and
 leaves out a third of those to be measured on. It is cut into pieces. Half of them teach, once as they are and once with slips
 put in, some densely and some rarely; the other half sets the thresholds, so
-that two files in three have no more findings than the budget. --words
+that three files in four have no more findings than the budget. --words
 bounds what is taken of each file, evenly over its length.
 
 Slips are drawn from lists of corrections (--pairs: observed, intended and
