@@ -1,7 +1,10 @@
 package foulcase
 
 import (
+	"fmt"
 	"math"
+	"math/rand/v2"
+	"slices"
 	"testing"
 
 	"example.org/foulcase/internal/text"
@@ -116,5 +119,37 @@ func (r *reached) compare(t *testing.T, j *judge, s text.Sentence, block []byte,
 		if at != len(j.alternatives.ids) {
 			t.Fatalf("%d alternatives kept that were not given, or out of order", len(j.alternatives.ids)-at)
 		}
+	}
+}
+
+// A judge that was lent a shortcut by a long document keeps it: what it finds in
+// the next is the same to the last bit.
+func TestShortcutFindsTheSame(t *testing.T) {
+	e := openTiny(t, nil)
+	plain, short := newJudge(e), newJudge(e)
+	short.shortcut = e.shortcut()
+	random := rand.New(rand.NewPCG(2, 7))
+	seen := 0
+	for _, d := range tinyDocuments(t)[:40] {
+		d = slipped(d, 12, random).Text
+		found := [2][]string{}
+		for i, j := range []*judge{plain, short} {
+			eachSentence(t, j, d, func(s text.Sentence, block []byte) {
+				list, err := j.findings(s, block)
+				if err != nil {
+					t.Fatal(err)
+				}
+				for _, f := range list {
+					found[i] = append(found[i], fmt.Sprint(f.from, f.to, f.kind, f.p, f.odds, j.corrections(f, block)))
+				}
+			})
+		}
+		if !slices.Equal(found[0], found[1]) {
+			t.Errorf("with the shortcut %q, without %q", found[1], found[0])
+		}
+		seen += len(found[0])
+	}
+	if seen < 100 {
+		t.Errorf("%d findings: too few to tell", seen)
 	}
 }

@@ -227,6 +227,7 @@ func TestCalibrateRefuses(t *testing.T) {
 	}{
 		"no text to learn from": {nil, good, "nothing to learn from"},
 		"no slips":              {good, good, "nothing to learn from: 0 slips"},
+		"nothing but slips":     {[]Trial{{Text: "ancher", Slips: []Place{{0, 6}}}}, good, "nothing to learn from: 1 slips found in 1 words"},
 		"no good text":          {slips, nil, "no good text"},
 	} {
 		if _, err := e.Calibrate(c.learn, c.good, Options{}); err == nil || !strings.Contains(err.Error(), c.want) {

@@ -150,15 +150,22 @@ func TestSlipRateFollowsTheText(t *testing.T) {
 // findings are sure, near it if not.
 func TestSlipRateAddsWindowsUp(t *testing.T) {
 	certain := surely(12)
-	whole, halves := settled(usualSlips, Options{}, 1200, certain), settled(usualSlips, Options{}, 600, certain[:6], certain[6:])
-	if math.Abs(whole-halves) > 1e-9 {
-		t.Errorf("rate %v in halves, %v in one", halves, whole)
+	whole := settled(usualSlips, Options{}, 1200, certain)
+	for n := range 4 {
+		var windows [][]float64
+		for w := range slices.Chunk(certain, len(certain)/(n+1)) {
+			windows = append(windows, w)
+		}
+		if got := settled(usualSlips, Options{}, 1200/len(windows), windows...); math.Abs(whole-got) > 1e-9 {
+			t.Errorf("rate %v in %d windows, %v in one", got, len(windows), whole)
+		}
 	}
 	var odds []float64
 	for i := range 60 {
 		odds = append(odds, float64(i%9)-5)
 	}
-	whole, halves = settled(usualSlips, Options{}, 2400, odds), settled(usualSlips, Options{}, 1200, odds[:30], odds[30:])
+	whole = settled(usualSlips, Options{}, 2400, odds)
+	halves := settled(usualSlips, Options{}, 1200, odds[:30], odds[30:])
 	if d := math.Abs(logit(whole) - logit(halves)); d > .35 {
 		t.Errorf("rate %v in halves, %v in one: %.2f nats apart", halves, whole, d)
 	}
@@ -202,6 +209,30 @@ func TestMostShiftIsNotExceeded(t *testing.T) {
 	given := newSlipRate(usualSlips, learnedRate, Options{SlipRate: .3})
 	if given.mostShift() != given.shift {
 		t.Errorf("a given rate shifts by %v, at most %v", given.shift, given.mostShift())
+	}
+}
+
+func TestParseJudgementRefusesRates(t *testing.T) {
+	sound := Judgement{LanguageModel: 1, Channel: 1, SlipRate: usualSlips, LeastP: .05}
+	for name, damage := range map[string]func(j *Judgement){
+		"sound":                 func(*Judgement) {},
+		"no strength":           func(j *Judgement) { j.SlipRate.Strength = 0 },
+		"least of 0":            func(j *Judgement) { j.SlipRate.Least = 0 },
+		"prior under the least": func(j *Judgement) { j.SlipRate.Prior = j.SlipRate.Least / 2 },
+		"prior over the most":   func(j *Judgement) { j.SlipRate.Prior = 2 * j.SlipRate.Most },
+		"most of 1":             func(j *Judgement) { j.SlipRate.Most = 1 },
+		"least p of 1":          func(j *Judgement) { j.LeastP = 1 },
+		"least p below 0":       func(j *Judgement) { j.LeastP = -.1 },
+	} {
+		j := sound
+		damage(&j)
+		body, err := json.Marshal(j)
+		if err != nil {
+			t.Fatal(err)
+		}
+		if _, err := parseJudgement(body); (err == nil) != (name == "sound") {
+			t.Errorf("%s: %v", name, err)
+		}
 	}
 }
 

@@ -107,6 +107,11 @@ func TestHabits(t *testing.T) {
 	if found := occurrences(slip("cutter", "cuter"), "cutter"); len(found) != all-1 || found[0].Start <= at {
 		t.Errorf("besides its slip, cutter stands at %v", found)
 	}
+	twice := slip("cutter", "cutter cutter")
+	twice.Spans[0].Kind = eval.Repeat
+	if found := occurrences(twice, "cutter"); len(found) != all-1 || found[0].Start < twice.Spans[0].End {
+		t.Errorf("besides the cutter typed twice it stands at %v", found)
+	}
 }
 
 func TestCutDocument(t *testing.T) {
@@ -280,7 +285,8 @@ func TestInflected(t *testing.T) {
 		{"quay", "key", false},
 		{"pier", "pierce", false},
 		{"tide", "untide", false},
-		{"tug", "tug", false}, {"to", "ly", false},
+		{"tug", "tug", false},
+		{"to", "ly", false},
 	} {
 		if got := inflected(c.a, c.b); got != c.want || inflected(c.b, c.a) != got {
 			t.Errorf("%s and %s: %v, want %v", c.a, c.b, got, c.want)
