@@ -23,11 +23,12 @@ probability on findings are reported for each budget of false alarms.
 
 TEXT is good text in plain files or folders of them, a paragraph a line and
 blank lines between documents, that the model did not learn from:
---held-out-only reads only the documents that lm train --hold-out leaves out, and
-leaves out a third of those to be measured on. It is cut into pieces. Half of them teach, once as they are and once with slips
-put in, some densely and some rarely; the other half sets the thresholds, so
-that three files in four have no more findings than the budget. --words
-bounds what is taken of each file, evenly over its length.
+--held-out-only reads only the documents that lm train --hold-out leaves out,
+and leaves out a third of those to be measured on. It is cut into pieces. Half
+of them teach, once as they are and once with slips put in, some densely and
+some rarely; the other half sets the thresholds, so that some three files in
+four have no more findings than the budget. --words bounds what is taken of
+each file, evenly over its length.
 
 Slips are drawn from lists of corrections (--pairs: observed, intended and
 count, parted by tabs), where these know the word, and from the model's channel
