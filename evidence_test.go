@@ -144,6 +144,8 @@ func TestEvidenceOfAFinding(t *testing.T) {
 		{"The tug let go her ancher near the pier.", "ancher", fTypedPrior, noPrior},
 		{"The tug let go her ancher near the pier.", "ancher", fQuoted, 0},
 		{"The tug let go her “ancher” near the pier.", "ancher", fQuoted, 1},
+		{"The tug let go “her ancher” near the pier.", "ancher", fQuoted, 1},
+		{"The tug let go her ancher near “the pier.”", "ancher", fQuoted, 0},
 		{"The tug let go (her ancher) near the pier.", "ancher", fBracketed, 1},
 		{"The tug (a new one) let go her ancher.", "ancher", fBracketed, 0},
 		{"The tug let go her sea-ancher near the pier.", "ancher", fCompound, 1},
@@ -183,4 +185,60 @@ func TestEvidenceIsDoneWithout(t *testing.T) {
 			t.Errorf("without %d, %s is %v and %s %v; with it, %v and %v", c.without, featureNames[c.gone], without[c.gone], featureNames[c.stays], without[c.stays], with[c.gone], with[c.stays])
 		}
 	}
+}
+
+// TestEvidenceOfNGrams looks at a slip in a line that the small corpus has many
+// times, and at one among words that it never has together.
+func TestEvidenceOfNGrams(t *testing.T) {
+	e := openTiny(t, nil)
+	usual := evidenceOf(t, e, "The ferry let go her ancher near the yard.", "ancher", Options{})
+	strange := evidenceOf(t, e, "Noon ancher keep the channel clear.", "ancher", Options{})
+	for _, c := range []struct {
+		feature            int
+		ofUsual, ofStrange float32
+	}{
+		{fTypedLeft, 1, 1},
+		{fTypedRight, 1, 1},
+		{fTypedSpan, 1, 1}, // "near the" does not hold the typed word
+		{fMeantLeft, tinyOrder, 1},
+		{fMeantRight, tinyOrder, 1},
+		{fMeantSpan, tinyOrder, 1},
+	} {
+		if usual[c.feature] != c.ofUsual || strange[c.feature] != c.ofStrange {
+			t.Errorf("%s is %v in a usual line and %v in a strange one, want %v and %v", featureNames[c.feature], usual[c.feature], strange[c.feature], c.ofUsual, c.ofStrange)
+		}
+	}
+	// The gain is of the word, of the next, and of those further on.
+	j := e.take(Options{})
+	defer e.give(j)
+	eachSentence(t, j, "The ferry let go her ancher.", func(s text.Sentence, block []byte) {
+		found, err := j.findings(s, block)
+		if err != nil || len(found) == 0 {
+			t.Fatalf("%d findings, %v", len(found), err)
+		}
+		f := &found[len(found)-1]
+		x := j.collect(f)
+		at := j.slots[f.from].from
+		if x[fTypedLogP] != j.logp[at] || x[fTypedNext] != j.logp[at+1] {
+			t.Errorf("the typed words score %v and %v, want %v and %v", x[fTypedLogP], x[fTypedNext], j.logp[at], j.logp[at+1])
+		}
+		gain := x[fMeantLogP] + x[fMeantNext] - x[fTypedLogP] - x[fTypedNext] + j.rest(f)
+		if math.Abs(float64(gain-x[fGain])) > 1e-4 {
+			t.Errorf("the words' scores gain %v, the change %v", gain, x[fGain])
+		}
+	})
+}
+
+// rest is what the words behind the next gain by a finding's best change, nats.
+func (j *judge) rest(f *finding) (sum float32) {
+	c := &f.changes[0]
+	_, state := j.e.lm.Score(j.states[j.slots[c.from].from], j.words[c.lo])
+	for i := j.slots[c.to-1].to; i < len(j.ids); i++ {
+		logp, next := j.e.lm.Score(state, j.ids[i])
+		if i > j.slots[c.to-1].to {
+			sum += logp - j.logp[i]
+		}
+		state = next
+	}
+	return sum
 }
