@@ -147,15 +147,22 @@ func (c *calibrationCounts) of(class int) (value, n float64) {
 }
 
 // Calibration gives "calibration.error", the expected calibration error over ten
-// bins of equal width, of all flags and of those called nonword and realword, if
-// there are any.
+// bins of equal width, of all findings, those held back too, and of those called
+// nonword and realword, if there are any; and "calibration.reported" likewise, of
+// what the system reports alone.
 // The error of a resample is never less than chance allows, so intervals lie
 // somewhat high where predictions are few.
 func (j *Judged) Calibration(r Resampling) []Metric {
+	return append(
+		j.calibration("calibration.error", func(p *Place) bool { return p.predicts() }, r),
+		j.calibration("calibration.reported", func(p *Place) bool { return p.predicts() && p.Reported() }, r)...)
+}
+
+func (j *Judged) calibration(name string, counts func(*Place) bool, r Resampling) []Metric {
 	units := make([]calibrationCounts, len(j.Units))
 	for i := range j.Places {
 		p := &j.Places[i]
-		if !p.predicts() {
+		if !counts(p) {
 			continue
 		}
 		for k, class := range calibrationClasses {
@@ -166,7 +173,7 @@ func (j *Judged) Calibration(r Resampling) []Metric {
 	}
 	var measures []measure[calibrationCounts]
 	for k, class := range calibrationClasses {
-		measures = append(measures, measure[calibrationCounts]{"calibration.error", string(class), func(c calibrationCounts) (float64, float64) {
+		measures = append(measures, measure[calibrationCounts]{name, string(class), func(c calibrationCounts) (float64, float64) {
 			return c.of(k)
 		}})
 	}

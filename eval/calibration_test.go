@@ -110,4 +110,14 @@ func TestCalibrationMetric(t *testing.T) {
 			t.Errorf("%q: the function gives %v, want %v", want.class, got, want.value)
 		}
 	}
+	// What is held back is left out of the second metric.
+	for i, want := range []struct {
+		class eval.Kind
+		value float64
+		n     float64
+	}{{"", (.1 + .95 + .6) / 3, 3}, {eval.Nonword, (.1 + .95) / 2, 2}, {eval.Realword, .6, 1}} {
+		if m := metrics[3+i]; m.Name != "calibration.reported" || m.Class != string(want.class) || math.Abs(float64(m.Value)-want.value) > 1e-12 || m.N != want.n {
+			t.Errorf("%+v, want %+v", m, want)
+		}
+	}
 }
