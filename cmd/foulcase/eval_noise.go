@@ -21,8 +21,8 @@ Reads good text, a paragraph a line and blank lines between documents, puts a
 slip into one word in every so many, proofreads it, and reports what eval text
 does; and in 1,000 words without a slip how many are flagged (good.flagged) and
 how many the first correction would change (harmed), for all findings, by kind
-and by grade; and how far probabilities are from the truth, doubts below the
-budget's thresholds among them (calibration.error) or not (calibration.reported).
+and by grade; and how far probabilities are from the truth, of all findings
+(calibration.error) and of those that the budget reports (calibration.reported).
 
 --slips channel draws what is typed from the model's own account of how writers
 mis-write, words that are not long being mistyped in proportion to their length,
