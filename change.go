@@ -175,7 +175,7 @@ func (j *judge) keepAlternative(c change, lo int) {
 // model, inflections aside.
 func (j *judge) scoreOf(c *change, lo int) float64 {
 	w := j.e.judgement
-	return w.Slip.Of(c.kind) - w.Channel*c.cost + j.evidence(c, j.words[lo:])
+	return w.Slip.Of(c.kind) - w.Channel*c.cost + j.hints(c, j.words[lo:])
 }
 
 // floor is the least gain that brings a change within reach of the typed reading.
@@ -204,9 +204,9 @@ func (j *judge) keep(c change, lo int, floor float64) {
 	j.changes = append(j.changes, c)
 }
 
-// evidence is what is known about a change that neither model holds: the
+// hints are what is known about a change that neither model holds: the
 // document's own use of the word, and capitals.
-func (j *judge) evidence(c *change, words []uint32) float64 {
+func (j *judge) hints(c *change, words []uint32) float64 {
 	w, lex := j.e.judgement, j.e.lexicon
 	if c.house != "" {
 		return -w.House

@@ -17,6 +17,7 @@ const modulePath = "example.org/foulcase"
 // layers lists the packages from the bottom up. A package may import those of
 // the layers below its own; packages of one layer are strangers.
 var layers = [][]string{
+	{"internal/wholefile"},
 	{"internal/text", "internal/modelfile", "internal/additive"},
 	{"channel", "lm", "candidates/lexicon"},
 	{"candidates", "lm/lattice", "lm/train"},

@@ -1,7 +1,6 @@
 package eval
 
 import (
-	"slices"
 	"strings"
 )
 
@@ -22,15 +21,7 @@ type metricRow struct {
 type metricCell struct{ Value, Interval string }
 
 func newMetricTable(r *Report) metricTable {
-	var names, classes []string
-	for _, m := range r.Metrics {
-		if !slices.Contains(names, m.Name) {
-			names = append(names, m.Name)
-		}
-		if !slices.Contains(classes, m.Class) {
-			classes = append(classes, m.Class)
-		}
-	}
+	names, classes := r.axes()
 	t := metricTable{Corner: "metric"}
 	if len(classes) > len(names) {
 		t.Corner, t.Header = "class", names

@@ -3,6 +3,7 @@ package eval
 import (
 	"encoding/json"
 	"math"
+	"slices"
 )
 
 // A Number is a float64 that is null in JSON when it is not defined, as the
@@ -58,4 +59,17 @@ func (r *Report) Metric(name, class string) (Metric, bool) {
 		}
 	}
 	return Metric{}, false
+}
+
+// axes lists the names and the classes of the metrics, each in the order met.
+func (r *Report) axes() (names, classes []string) {
+	for _, m := range r.Metrics {
+		if !slices.Contains(names, m.Name) {
+			names = append(names, m.Name)
+		}
+		if !slices.Contains(classes, m.Class) {
+			classes = append(classes, m.Class)
+		}
+	}
+	return names, classes
 }

@@ -1,13 +1,12 @@
 package eval
 
 import (
-	"bytes"
 	"encoding/json"
 	"errors"
 	"fmt"
 	"io"
-	"os"
-	"path/filepath"
+
+	"example.org/foulcase/internal/wholefile"
 )
 
 // Errors of ReadResult, for errors.Is.
@@ -24,34 +23,8 @@ func (r *Result) Write(w io.Writer) error {
 	return enc.Encode(r)
 }
 
-// WriteFile writes the result beside path and renames it into place once it is
-// whole, so that path never holds half a result.
-func (r *Result) WriteFile(path string) (err error) {
-	tmp, err := os.CreateTemp(filepath.Dir(path), "."+filepath.Base(path)+".*")
-	if err != nil {
-		return err
-	}
-	defer func() {
-		if err != nil {
-			tmp.Close()
-			os.Remove(tmp.Name())
-		}
-	}()
-	var body bytes.Buffer
-	if err = r.Write(&body); err != nil {
-		return err
-	}
-	if _, err = tmp.Write(body.Bytes()); err != nil {
-		return err
-	}
-	if err = tmp.Chmod(0o644); err != nil {
-		return err
-	}
-	if err = tmp.Close(); err != nil {
-		return err
-	}
-	return os.Rename(tmp.Name(), path)
-}
+// WriteFile writes the result to path, whole or not at all.
+func (r *Result) WriteFile(path string) error { return wholefile.Write(path, r.Write) }
 
 // ReadResult reads a result that Write wrote. Errors name the file as given
 // and wrap ErrNoResult or ErrNewerResult, or tell what is wrong inside.

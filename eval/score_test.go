@@ -133,6 +133,9 @@ func TestTextByHand(t *testing.T) {
 		{"correction.precision", "", 3. / 5},
 		{"correction.recall", "", 3. / 6},
 		{"first.of.detected", "", 3. / 4},
+		{"first.of.one.edit", "", 3. / 4}, // "with in" for "within" is one edit too
+		{"first.of.one.edit", "nonword", 1},
+		{"first.of.one.edit", "realword", 0},
 		{"listed.of.detected", "", 1},
 		{"false.alarms", "", 1000. / 24},
 		{"detection.precision", "realword", 2. / 3},

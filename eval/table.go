@@ -17,15 +17,7 @@ type Table struct {
 // Table lays the report out. Values are shares in per cent, other than those
 // that are counts per 1,000 words; intervals stand in brackets.
 func (r *Report) Table() Table {
-	var names, classes []string
-	for _, m := range r.Metrics {
-		if !slices.Contains(names, m.Name) {
-			names = append(names, m.Name)
-		}
-		if !slices.Contains(classes, m.Class) {
-			classes = append(classes, m.Class)
-		}
-	}
+	names, classes := r.axes()
 	t := Table{Header: append([]string{"class", "n"}, names...)}
 	for _, class := range classes {
 		row := []string{class, ""}

@@ -15,6 +15,8 @@ import (
 //     1979) of the two;
 //   - "correction.…" likewise, where only a flag whose first correction is
 //     right counts as right;
+//   - "first.of.one.edit", the share of found errors a single edit from a
+//     correction that the flag's first correction mends (all, nonword, realword);
 //   - "first.of.detected" and "listed.of.detected", the share of found errors
 //     whose right correction is the flag's first, or among its corrections;
 //   - "false.alarms", wrong flags per 1,000 words;
@@ -73,6 +75,7 @@ type textCounts struct {
 	words                           float64
 	errors, found, corrected, first kindCounts
 	flags, right, rightFirst        kindCounts
+	near, nearFirst                 kindCounts // of found: a single edit from a correction
 }
 
 func (c textCounts) plus(d textCounts) textCounts {
@@ -85,6 +88,8 @@ func (c textCounts) plus(d textCounts) textCounts {
 		c.flags[i] += d.flags[i]
 		c.right[i] += d.right[i]
 		c.rightFirst[i] += d.rightFirst[i]
+		c.near[i] += d.near[i]
+		c.nearFirst[i] += d.nearFirst[i]
 	}
 	return c
 }
@@ -108,6 +113,9 @@ func (c *textCounts) count(p *Place) {
 		c.found.addIf(right, p.Error.Kind)
 		c.corrected.addIf(right && p.Rank > 0, p.Error.Kind)
 		c.first.addIf(right && p.Rank == 1, p.Error.Kind)
+		near := right && p.oneEdit()
+		c.near.addIf(near, p.Error.Kind)
+		c.nearFirst.addIf(near && p.Rank == 1, p.Error.Kind)
 	}
 	if p.Reported() && p.Outcome != PlaceNeither && !p.Again {
 		c.flags.addIf(true, p.Flag.Kind)
@@ -144,6 +152,10 @@ func textMeasures(class string, k int) []measure[textCounts] {
 			}})
 		}
 	}
+	if class == "" || class == string(Nonword) || class == string(Realword) {
+		measures = append(measures, ratio("first.of.one.edit",
+			func(c textCounts) float64 { return c.nearFirst[k] }, func(c textCounts) float64 { return c.near[k] }))
+	}
 	return append(measures,
 		ratio("first.of.detected", func(c textCounts) float64 { return c.first[k] }, found),
 		ratio("listed.of.detected", func(c textCounts) float64 { return c.corrected[k] }, found),
@@ -163,4 +175,11 @@ func fScore(precision, recall, beta float64) float64 {
 		return 0
 	}
 	return (1 + beta*beta) * precision * recall / (beta*beta*precision + recall)
+}
+
+// oneEdit reports whether the error is a single edit from one of its corrections.
+func (p *Place) oneEdit() bool {
+	return slices.ContainsFunc(p.Error.Corrections, func(c string) bool {
+		return editDistance(fold(p.Observed), fold(c)) == 1
+	})
 }

@@ -3,11 +3,12 @@ package main
 import (
 	"encoding/json"
 	"errors"
-	"os"
+	"io"
 
 	"example.org/foulcase"
 	"example.org/foulcase/eval"
 	"example.org/foulcase/internal/text"
+	"example.org/foulcase/internal/wholefile"
 	"github.com/spf13/pflag"
 )
 
@@ -118,11 +119,11 @@ func (f *calibrateFlags) run(c *console, operands []string) (status, error) {
 }
 
 func writeJSON(path string, v any) error {
-	body, err := json.MarshalIndent(v, "", " ")
-	if err != nil {
-		return err
-	}
-	return os.WriteFile(path, append(body, '\n'), 0o644)
+	return wholefile.Write(path, func(w io.Writer) error {
+		enc := json.NewEncoder(w)
+		enc.SetIndent("", " ")
+		return enc.Encode(v)
+	})
 }
 
 // halves deals pieces out in turn.

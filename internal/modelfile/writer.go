@@ -5,8 +5,8 @@ import (
 	"fmt"
 	"hash/crc32"
 	"io"
-	"os"
-	"path/filepath"
+
+	"example.org/foulcase/internal/wholefile"
 )
 
 // Writer collects sections and writes them as one model file. The same
@@ -83,31 +83,10 @@ func (c *countingWriter) Write(p []byte) (int, error) {
 	return n, err
 }
 
-// WriteFile writes the file beside path and renames it into place once it is
-// whole and on disk, so that path never holds half a model. On an error (a
-// full disk, say) path is left as it was.
-func (w *Writer) WriteFile(path string) (err error) {
-	tmp, err := os.CreateTemp(filepath.Dir(path), "."+filepath.Base(path)+".*")
-	if err != nil {
+// WriteFile writes the file to path, whole or not at all.
+func (w *Writer) WriteFile(path string) error {
+	return wholefile.Write(path, func(to io.Writer) error {
+		_, err := w.WriteTo(to)
 		return err
-	}
-	defer func() {
-		if err != nil {
-			tmp.Close()
-			os.Remove(tmp.Name())
-		}
-	}()
-	if _, err = w.WriteTo(tmp); err != nil {
-		return err
-	}
-	if err = tmp.Chmod(0o644); err != nil {
-		return err
-	}
-	if err = tmp.Sync(); err != nil {
-		return err
-	}
-	if err = tmp.Close(); err != nil {
-		return err
-	}
-	return os.Rename(tmp.Name(), path)
+	})
 }
