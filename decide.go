@@ -138,7 +138,7 @@ func (j *judge) corrections(f finding, block []byte) []Correction {
 		written := j.write(&c, block)
 		same := func(o Correction) bool { return o.Text == written }
 		if written != observed && !slices.ContainsFunc(out, same) {
-			out = append(out, Correction{written, c.p / f.p})
+			out = append(out, Correction{Text: written, P: c.p / f.p})
 		}
 	}
 	return out

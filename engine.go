@@ -208,16 +208,3 @@ func (e *Engine) knows(form []byte) bool {
 	}
 	return true
 }
-
-// Formats names the document formats that Options.Format takes.
-func Formats() []string {
-	var names []string
-	for _, f := range text.Formats() {
-		names = append(names, string(f))
-	}
-	return names
-}
-
-// FormatOf returns the format that a path's extension stands for, "plain" if
-// none.
-func FormatOf(path string) string { return string(text.FormatOf(path)) }

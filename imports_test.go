@@ -18,11 +18,12 @@ const modulePath = "example.org/foulcase"
 // the layers below its own; packages of one layer are strangers.
 var layers = [][]string{
 	{"internal/wholefile"},
-	{"internal/text", "internal/modelfile", "internal/additive"},
+	{"internal/text", "internal/charset", "internal/modelfile", "internal/additive"},
 	{"channel", "lm", "candidates/lexicon"},
 	{"candidates", "lm/lattice", "lm/train"},
 	{"."},
-	{"eval", "internal/editor"},
+	{"internal/house", "internal/tree"},
+	{"eval", "internal/editor", "internal/report"},
 	{"cmd/*"},
 }
 

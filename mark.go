@@ -43,18 +43,33 @@ func (g Grade) MarshalText() ([]byte, error) { return []byte(g.String()), nil }
 type Correction struct {
 	Text string  `json:"text"`
 	P    float64 `json:"p"` // posterior probability that this was intended
+	// Source is how the document must spell Text in the place of the mark, UTF-8;
+	// "" when it is spelled the same.
+	Source string `json:"source,omitempty"`
+}
+
+// Spelled returns the correction as the document must spell it, UTF-8.
+func (c Correction) Spelled() string {
+	if c.Source != "" {
+		return c.Source
+	}
+	return c.Text
 }
 
 // Mark is one finding in a document, of either grade.
 type Mark struct {
-	Line        int          `json:"line"`   // 1-based
-	Column      int          `json:"column"` // 1-based, in code points
-	Offset      int64        `json:"offset"` // bytes into the input
-	Length      int64        `json:"length"` // bytes
+	Part        string       `json:"part,omitempty"` // of a packed document; "" in all others
+	Line        int          `json:"line"`           // 1-based; in a packed document the paragraph of the part
+	Column      int          `json:"column"`         // 1-based, in code points
+	Offset      int64        `json:"offset"`         // bytes into the document, or into its part
+	Length      int64        `json:"length"`         // bytes
 	Observed    string       `json:"observed"`
 	Kind        Kind         `json:"kind"`
 	Grade       Grade        `json:"grade"`
 	P           float64      `json:"p"`           // probability that this is an error
 	Corrections []Correction `json:"corrections"` // best first; never nil
 	Context     string       `json:"context"`     // the words around it, on one line
+	// ByHand says that no program should put a correction in its place: markup stands
+	// inside the mark, or the document has no spelling for it there.
+	ByHand bool `json:"by_hand,omitempty"`
 }

@@ -61,7 +61,10 @@ func ReadHouse(name string, r io.Reader) (*House, error) {
 // Options says how a document is to be judged. The zero value is usable:
 // plain text, either variety, no house words, the model's own budget.
 type Options struct {
-	Format  string  // a name of Formats; "" is plain
+	Format string // the name of one of Formats; "" is plain
+	// Fields are the columns or members to read of a format of records; none means
+	// all that hold prose.
+	Fields  []string
 	Variety Variety // the spelling asked for
 	House   *House  // nil: none
 	// Budget is how many false alarms a 1,000 words of good text the reader

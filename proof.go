@@ -32,7 +32,7 @@ func (e *Engine) Proof(ctx context.Context, r io.Reader, o Options) iter.Seq2[Ma
 		}
 		d := e.newDocument(o)
 		defer e.give(d.judge)
-		for blocks, err := range windows(text.Blocks(r, format, text.Options{})) {
+		for blocks, err := range windows(text.Blocks(r, format, text.Options{Fields: o.Fields})) {
 			d.count(blocks)
 			if err := d.weigh(ctx, blocks); err != nil {
 				yield(Mark{}, err)
@@ -244,7 +244,8 @@ func (j *judge) mark(b *text.Block, f finding) Mark {
 	start, end := j.slots[f.from].token.Start, j.slots[f.to-1].token.End
 	from, to := b.Source(start, end)
 	at := b.Position(start)
-	return Mark{
+	m := Mark{
+		Part:        b.Part,
 		Line:        at.Line,
 		Column:      at.Column,
 		Offset:      from,
@@ -253,7 +254,16 @@ func (j *judge) mark(b *text.Block, f finding) Mark {
 		Kind:        f.kind,
 		Corrections: j.corrections(f, b.Text),
 		Context:     contextOf(b.Text, start, end),
+		ByHand:      b.Interrupted(start, end),
 	}
+	for i := range m.Corrections {
+		c := &m.Corrections[i]
+		spelled, ok := b.Escape(c.Text)
+		if m.ByHand = m.ByHand || !ok; ok && spelled != c.Text {
+			c.Source = spelled
+		}
+	}
+	return m
 }
 
 // contextOf quotes what stands around block[start:end], on one line, cut at

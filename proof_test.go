@@ -70,7 +70,8 @@ func checkDocument(t *testing.T, path string) {
 				t.Fatal(err)
 			}
 		default:
-			document, o.Format = f, foulcase.FormatOf(f.Name)
+			document = f
+			o.Format, _ = foulcase.FormatOf(f.Name)
 		}
 	}
 	if document == nil || want == nil {

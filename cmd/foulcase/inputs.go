@@ -6,10 +6,9 @@ import (
 	"io/fs"
 	"os"
 	"path/filepath"
-	"slices"
 	"strings"
 
-	"example.org/foulcase/internal/text"
+	"example.org/foulcase"
 )
 
 // input is one document to read. An input whose err is set could not be
@@ -84,14 +83,15 @@ func walkFolder(root string) []input {
 // extensions lists those of every known format.
 func extensions() []string {
 	var all []string
-	for _, f := range text.Formats() {
-		all = append(all, f.Extensions()...)
+	for _, f := range foulcase.Formats() {
+		all = append(all, f.Extensions...)
 	}
 	return all
 }
 
 func hasFormat(path string) bool {
-	return slices.Contains(extensions(), strings.ToLower(filepath.Ext(path)))
+	_, ok := foulcase.FormatOf(path)
+	return ok
 }
 
 // open opens the document for reading.

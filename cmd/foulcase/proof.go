@@ -52,7 +52,7 @@ func declareProof(fs *pflag.FlagSet) action {
 	f := new(proofFlags)
 	f.engine.declare(fs)
 	f.format = choiceFlag(fs, "as", "format of the documents; auto goes by the extension",
-		append([]string{"auto"}, foulcase.Formats()...)...)
+		append([]string{"auto"}, formatNames()...)...)
 	f.emit = emitFlag(fs)
 	fs.Var(&f.budget, "budget", "false alarms to bear in 1,000 words of good text (default: the model's own)")
 	f.jobs = jobsFlag(fs)
@@ -148,7 +148,7 @@ func (p *proofreader) proof(ctx context.Context, in input, w io.Writer, flush fu
 	defer r.Close()
 	o := p.options
 	if o.Format = p.flags.format.value; o.Format == "auto" {
-		o.Format = foulcase.FormatOf(in.path)
+		o.Format, _ = foulcase.FormatOf(in.path)
 	}
 	print := newMarkPrinter(w, p.flags.emit.value, in.path, p.palette)
 	for m, err := range p.engine.Proof(ctx, watched{r, p.progress}, o) {
@@ -164,6 +164,14 @@ func (p *proofreader) proof(ctx context.Context, in input, w io.Writer, flush fu
 		}
 	}
 	return marks, nil
+}
+
+func formatNames() []string {
+	var names []string
+	for _, f := range foulcase.Formats() {
+		names = append(names, f.Name)
+	}
+	return names
 }
 
 func statusOf(marks int) status {

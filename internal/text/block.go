@@ -6,11 +6,13 @@ package text
 type Block struct {
 	Text    []byte // the prose; line breaks inside are white space
 	Heading bool   // the format says that it is a heading
+	Part    string // the part of a packed document that it stands in; "" elsewhere
 
-	source []byte   // what the text came from: from its first source byte to its last
-	offset int64    // of source in the whole
-	origin Position // of source[0]
-	spans  []span   // ascending; nil when Text is source
+	source []byte                      // what the text came from: from its first source byte to its last
+	offset int64                       // of source in the whole
+	origin Position                    // of source[0]
+	spans  []span                      // ascending; nil when Text is source
+	escape func(string) (string, bool) // see Escape; nil: as it is
 }
 
 // span maps a stretch of Text to source. Where both lengths are equal the bytes
@@ -34,6 +36,31 @@ func (b *Block) Source(start, end int) (from, to int64) {
 func (b *Block) Raw(start, end int) []byte {
 	f, t := b.local(start, end)
 	return b.source[f:t:t]
+}
+
+// Escape returns words as the source must spell them to have them in this block,
+// and false when it cannot. A line break in a word is none of them.
+func (b *Block) Escape(words string) (string, bool) {
+	if b.escape == nil {
+		return words, true
+	}
+	return b.escape(words)
+}
+
+// Interrupted reports whether markup that is no part of the text stands inside
+// Text[start:end]: to replace that stretch of the source would remove it.
+// A line break, with what the format wants around it, does not count.
+func (b *Block) Interrupted(start, end int) bool {
+	if b.spans == nil || start == end {
+		return false
+	}
+	first, last := b.spanAt(start), b.spanAt(end-1)
+	for i := first + 1; i <= last; i++ {
+		if b.spans[i].source != b.spans[i-1].sourceEnd {
+			return true
+		}
+	}
+	return false
 }
 
 // Position returns the place of Text[start] in the source. It counts from the

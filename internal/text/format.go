@@ -19,22 +19,34 @@ const (
 )
 
 // format is an entry of the registry: to add a format, write its reader and
-// give it one line here. A reader yields blocks in the order of the source until
+// give it an entry here. A reader yields blocks in the order of the source until
 // yield returns false, and an error at most once, as the last thing.
 type format struct {
 	name       Format
+	about      string   // what is read of it, in a line
 	extensions []string // lower case, with the point
+	languages  []string // identifiers of the Language Server Protocol 3.17, where it has any
 	read       func(r io.Reader, o Options, yield func(*Block, error) bool)
+	// splice writes edits into a source whose parts are packed; nil where the
+	// source is the text itself.
+	splice func(source []byte, edits []Edit) ([]byte, error)
 }
 
 func registry() []format {
 	return []format{
-		{Plain, []string{".txt", ".text"}, readPlain},
-		{Markdown, []string{".md", ".markdown", ".mkd"}, readMarkdown},
+		{
+			name: Plain, about: "paragraphs, whether lines are wrapped or not",
+			extensions: []string{".txt", ".text"}, languages: []string{"plaintext"}, read: readPlain,
+		},
+		{
+			name: Markdown, about: "all prose; not code, HTML, link destinations and front matter",
+			extensions: []string{".md", ".markdown", ".mkd"}, languages: []string{"markdown"}, read: readMarkdown,
+		},
 	}
 }
 
-// Options bound what reading may take. The zero value is good.
+// Options says what is read of a document and bounds what reading may take. The
+// zero value is good.
 type Options struct {
 	// Chunk is the most bytes of a block of a format that streams; 0 means
 	// 64 KiB, less than 4 KiB means 4 KiB.
@@ -42,6 +54,12 @@ type Options struct {
 	// MaxBytes is the most bytes of a document of a format that is read as a
 	// whole; 0 means 16 MiB.
 	MaxBytes int64
+	// Language is the primary subtag (BCP 47) of the language whose prose is read,
+	// where a format tells languages apart; "" means "en".
+	Language string
+	// Fields are the columns or members that are read of a format of records; none
+	// means all that hold prose.
+	Fields []string
 }
 
 // Formats returns the names of all formats.
@@ -59,16 +77,33 @@ func (f Format) Extensions() []string {
 	return e.extensions
 }
 
-// FormatOf returns the format of a file by its name's ending, Plain when
-// nothing is known of it.
-func FormatOf(path string) Format {
+// About says in a line what is read of the format.
+func (f Format) About() string {
+	e, _ := f.entry()
+	return e.about
+}
+
+// FormatOf returns the format of a file by its name's ending; ok is false, and
+// the format Plain, when nothing is known of it.
+func FormatOf(path string) (f Format, ok bool) {
 	ext := strings.ToLower(filepath.Ext(path))
 	for _, f := range registry() {
 		if slices.Contains(f.extensions, ext) {
-			return f.name
+			return f.name, true
 		}
 	}
-	return Plain
+	return Plain, false
+}
+
+// FormatOfLanguage is FormatOf for a language identifier of the Language Server
+// Protocol.
+func FormatOfLanguage(id string) (f Format, ok bool) {
+	for _, f := range registry() {
+		if slices.Contains(f.languages, id) {
+			return f.name, true
+		}
+	}
+	return Plain, false
 }
 
 // ParseFormat returns the format of that name, or an error that lists the names.

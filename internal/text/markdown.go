@@ -13,41 +13,17 @@ import (
 	gtext "github.com/yuin/goldmark/text"
 )
 
-const defaultMaxBytes = 16 << 20
-
 // readMarkdown reads the whole document and yields a block for each paragraph,
 // heading, list item's text, table cell, footnote and defined term, in the order
 // of the source. Link text and the alternative text of images are prose; link
 // destinations and titles, code blocks, HTML and front matter are left out. An
 // inline code span is one U+FFFC in the text, so that its sentence stays whole.
 func readMarkdown(r io.Reader, o Options, yield func(*Block, error) bool) {
-	most := o.MaxBytes
-	if most == 0 {
-		most = defaultMaxBytes
-	}
-	data, err := io.ReadAll(io.LimitReader(r, most+1))
-	if err == nil && int64(len(data)) > most {
-		err = fmt.Errorf("the document has more than %d bytes, the most that Markdown is read with; split it or read it as plain text", most)
-	}
-	if err != nil {
-		yield(nil, err)
-		return
-	}
-	m := markdown{source: data}
-	if err := m.parse(); err != nil {
-		yield(nil, err)
-		return
-	}
-	var lines LineMap
-	at := bomLen(data)
-	for _, b := range m.blocks {
-		lines.Feed(data[at:b.offset])
-		at = int(b.offset)
-		b.origin = lines.Position()
-		if !yield(b, nil) {
-			return
-		}
-	}
+	readWhole(r, o, yield, func(source []byte) ([]*Block, error) {
+		m := markdown{source: source}
+		err := m.parse()
+		return m.blocks, err
+	})
 }
 
 // markdown gathers the blocks of one document.
@@ -185,13 +161,6 @@ func frontMatter(source []byte) int {
 		if mark := string(source[l.start:l.end]); mark == fence || mark == "..." && fence == "---" {
 			return l.next
 		}
-	}
-	return 0
-}
-
-func bomLen(source []byte) int {
-	if bytes.HasPrefix(source, byteOrderMark) {
-		return len(byteOrderMark)
 	}
 	return 0
 }

@@ -230,7 +230,7 @@ func TestFormats(t *testing.T) {
 	for path, want := range map[string]text.Format{
 		"a.md": text.Markdown, "A.MD": text.Markdown, "x/y.markdown": text.Markdown, "a.txt": text.Plain, "a": text.Plain, "": text.Plain, "a.md/b": text.Plain,
 	} {
-		if got := text.FormatOf(path); got != want {
+		if got, _ := text.FormatOf(path); got != want {
 			t.Errorf("FormatOf(%q) = %s, want %s", path, got, want)
 		}
 	}
