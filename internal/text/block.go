@@ -15,12 +15,13 @@ type Block struct {
 	escape func(string) (string, bool) // see Escape; nil: as it is
 }
 
-// span maps a stretch of Text to source. Where both lengths are equal the bytes
-// are the same, one by one; elsewhere the text stands for the stretch as a whole
-// (a decoded entity, the space for a line break, a placeholder).
+// span maps a stretch of Text to source: byte by byte, or, where whole, the text
+// stands for the stretch as a whole (a decoded entity, the space for a line break,
+// a placeholder).
 type span struct {
 	text, textEnd     int // in Block.Text
 	source, sourceEnd int // in Block.source
+	whole             bool
 }
 
 // Source returns the byte offsets in the whole source of Text[start:end], the
@@ -98,24 +99,22 @@ func (b *Block) spanAt(i int) int {
 	return lo
 }
 
-func (s span) verbatim() bool { return s.textEnd-s.text == s.sourceEnd-s.source }
-
 // at returns where the source of the text byte at i begins.
 func (s span) at(i int) int {
 	switch {
 	case i >= s.textEnd:
 		return s.sourceEnd
-	case s.verbatim():
-		return s.source + i - s.text
+	case s.whole:
+		return s.source
 	}
-	return s.source
+	return s.source + i - s.text
 }
 
 // after returns where the source of the text before i, which ends inside the
 // span or at its end, ends.
 func (s span) after(i int) int {
-	if s.verbatim() {
-		return s.source + i - s.text
+	if s.whole {
+		return s.sourceEnd
 	}
-	return s.sourceEnd
+	return s.source + i - s.text
 }

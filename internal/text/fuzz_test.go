@@ -45,31 +45,41 @@ type oneByOne struct{ r *bytes.Reader }
 
 func (o oneByOne) Read(p []byte) (int, error) { return o.r.Read(p[:min(1, len(p))]) }
 
-func FuzzMarkdown(f *testing.F) {
-	for _, s := range seeds {
+func FuzzMarkdown(f *testing.F) { fuzzFormat(f, text.Markdown) }
+
+// fuzzFormat holds the reader of a format to what is true of any document: its
+// blocks come in order and point into the source, and so do their tokens. More
+// seeds are documents of the format.
+func fuzzFormat(f *testing.F, format text.Format, more ...string) {
+	for _, s := range append(more, seeds...) {
 		f.Add([]byte(s))
 	}
-	f.Fuzz(func(t *testing.T, source []byte) {
-		var s text.Segmenter
-		var last int64
-		for b, err := range text.Blocks(bytes.NewReader(source), text.Markdown, text.Options{}) {
-			if err != nil {
-				return // the parser's own faults come back as errors
-			}
-			checkBlock(t, b, source)
-			checkTokens(t, b.Text)
-			if from, _ := b.Source(0, 0); from < last {
-				t.Fatalf("a block at %d after one at %d", from, last)
-			} else {
-				last = from
-			}
-			for sentence := range s.Sentences(b.Text) {
-				for _, k := range sentence.Tokens {
-					if from, to := b.Source(k.Start, k.End); from >= to {
-						t.Fatalf("token %q comes from %d..%d", b.Text[k.Start:k.End], from, to)
-					}
+	f.Fuzz(func(t *testing.T, source []byte) { checkReader(t, format, source) })
+}
+
+// checkReader reads a document and checks all that can be checked of any. A
+// document that is refused is read no further.
+func checkReader(t testing.TB, format text.Format, source []byte) {
+	t.Helper()
+	var s text.Segmenter
+	var last int64
+	for b, err := range text.Blocks(bytes.NewReader(source), format, text.Options{}) {
+		if err != nil {
+			return
+		}
+		checkBlock(t, b, source)
+		checkTokens(t, b.Text)
+		if from, _ := b.Source(0, 0); from < last {
+			t.Fatalf("a block at %d after one at %d", from, last)
+		} else {
+			last = from
+		}
+		for sentence := range s.Sentences(b.Text) {
+			for _, k := range sentence.Tokens {
+				if from, to := b.Source(k.Start, k.End); from >= to {
+					t.Fatalf("token %q comes from %d..%d", b.Text[k.Start:k.End], from, to)
 				}
 			}
 		}
-	})
+	}
 }

@@ -59,8 +59,8 @@ func (p *prose) add(text []byte, from, to int) {
 	at := len(p.text)
 	p.text = append(p.text, text...)
 	p.end = to
-	next := span{at, len(p.text), from, to}
-	if n := len(p.spans); n > 0 && next.verbatim() && p.spans[n-1].verbatim() && p.spans[n-1].sourceEnd == from {
+	next := span{at, len(p.text), from, to, !bytes.Equal(text, p.source[from:to])}
+	if n := len(p.spans); n > 0 && !next.whole && !p.spans[n-1].whole && p.spans[n-1].sourceEnd == from {
 		p.spans[n-1].textEnd, p.spans[n-1].sourceEnd = next.textEnd, to
 		return
 	}
