@@ -1,5 +1,10 @@
 package text
 
+import (
+	"bytes"
+	"slices"
+)
+
 // Block is one run of prose freed of markup: a paragraph, a heading, a table
 // cell. It belongs to whoever receives it and is not changed afterwards, so it
 // may be read from several goroutines.
@@ -65,12 +70,44 @@ func (b *Block) Interrupted(start, end int) bool {
 }
 
 // Position returns the place of Text[start] in the source. It counts from the
-// start of the block: time grows with start.
+// start of the block: time grows with start. Who asks for many uses Places.
 func (b *Block) Position(start int) Position {
-	f, _ := b.local(start, start)
-	m := NewLineMap(b.origin)
-	m.Feed(b.source[:f])
-	return m.Position()
+	p := b.Places()
+	return p.Position(start)
+}
+
+// Places begins a count of places from the start of the block.
+func (b *Block) Places() Places { return Places{block: b, lines: NewLineMap(b.origin)} }
+
+// Places tells the places of ascending offsets of a block's text, each counted
+// from the one before.
+type Places struct {
+	block *Block
+	lines LineMap
+	at    int // in block.source
+}
+
+// Position returns the place of Text[start]; start must not go back.
+func (p *Places) Position(start int) Position {
+	from, _ := p.block.local(start, start)
+	p.lines.Feed(p.block.source[p.at:from])
+	p.at = from
+	return p.lines.Position()
+}
+
+// Move notes that as many bytes and lines more, or fewer, stand before the
+// block in the source than when it was read. It is for the block's owner,
+// while nobody else reads it.
+func (b *Block) Move(bytes int64, lines int) {
+	b.offset += bytes
+	b.origin.Line += lines
+}
+
+// Same reports whether two blocks have the same text, from the same source
+// bytes, markup included; their places may differ.
+func (b *Block) Same(o *Block) bool {
+	return b.Heading == o.Heading && b.Part == o.Part && bytes.Equal(b.Text, o.Text) &&
+		bytes.Equal(b.source, o.source) && slices.Equal(b.spans, o.spans)
 }
 
 // local is Source within b.source.
