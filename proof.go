@@ -5,6 +5,7 @@ import (
 	"io"
 	"iter"
 	"math"
+	"slices"
 	"strings"
 
 	"example.org/foulcase/internal/text"
@@ -82,30 +83,37 @@ func (e *Engine) newDocument(o Options) *document {
 // weigh judges the blocks of a window.
 func (d *document) weigh(ctx context.Context, blocks []*text.Block) error {
 	d.words, d.odds, d.pending = 0, d.odds[:0], d.pending[:0]
-	if d.shortcut == nil && sizeOf(blocks) >= shortcutSize {
-		d.shortcut = d.e.shortcut()
-	}
+	d.hasten(sizeOf(blocks))
 	for _, b := range blocks {
 		if ctx.Err() != nil {
 			return ctx.Err()
 		}
+		places := b.Places()
 		for s := range d.segmenter.Sentences(b.Text) {
 			found, err := d.findings(s, b.Text)
 			if err != nil {
 				return err
 			}
-			d.keep(b, found)
+			d.odds, d.pending = d.keep(b, &places, found, d.odds, d.pending)
 			d.words += wordsIn(s.Tokens)
 		}
 	}
 	d.rate.settle(d.words, d.odds)
-	d.floor = d.floorOf()
+	d.floor = d.floorOf(d.words, d.pending)
 	return nil
 }
 
 // shortcutSize is how many bytes of prose make the language model's shortcut worth
 // its making.
 const shortcutSize = 256 << 10
+
+// hasten takes the language model's shortcut where so many bytes of prose are to
+// be judged that it pays.
+func (d *document) hasten(size int) {
+	if d.shortcut == nil && size >= shortcutSize {
+		d.shortcut = d.e.shortcut()
+	}
+}
 
 func sizeOf(blocks []*text.Block) int {
 	n := 0
@@ -115,33 +123,34 @@ func sizeOf(blocks []*text.Block) int {
 	return n
 }
 
-// floorOf is the least probability that the budget grants the window's findings
+// floorOf is the least probability that the budget grants the findings of so many words
 // together.
-func (d *document) floorOf() float64 {
+func (d *document) floorOf(words int, all []pending) float64 {
 	var p []float64
-	for _, c := range d.pending {
+	for _, c := range all {
 		if v := logistic(c.odds + d.rate.shift); v >= d.limits.query[c.mark.Kind] {
 			p = append(p, v)
 		}
 	}
-	return d.limits.leastOf(d.words, p)
+	return d.limits.leastOf(words, p)
 }
 
-// keep notes the findings of a sentence, and writes out those that may be
-// reported however often the writer slips.
-func (d *document) keep(b *text.Block, found []finding) {
+// keep appends the log-odds of a sentence's findings to odds, and to kept those
+// that may be reported however often the writer slips.
+func (d *document) keep(b *text.Block, places *text.Places, found []finding, odds []float64, kept []pending) ([]float64, []pending) {
 	for _, f := range found {
 		if math.IsInf(f.odds, -1) {
 			continue
 		}
-		d.odds = append(d.odds, f.odds)
+		odds = append(odds, f.odds)
 		if logistic(f.odds+d.rate.mostShift()) < d.least(f.kind) {
 			continue
 		}
-		if m := d.mark(b, f); len(m.Corrections) > 0 {
-			d.pending = append(d.pending, pending{m, f.odds})
+		if m := d.mark(b, places, f); len(m.Corrections) > 0 {
+			kept = append(kept, pending{m, f.odds})
 		}
 	}
+	return odds, kept
 }
 
 // least is the probability from which findings of a kind are yielded.
@@ -156,25 +165,31 @@ func (d *document) least(k Kind) float64 {
 func (d *document) decide() iter.Seq[Mark] {
 	return func(yield func(Mark) bool) {
 		for _, c := range d.pending {
-			m := c.mark
-			m.P = logistic(c.odds + d.rate.shift)
-			if m.P < d.least(m.Kind) {
-				continue
-			}
-			if m.Grade = d.limits.grade(m.Kind, m.P); m.P < d.floor {
-				m.Grade = GradeDoubt
-			}
-			if m.Grade == GradeDoubt && !d.doubts {
-				continue
-			}
-			for i := range m.Corrections {
-				m.Corrections[i].P *= m.P
-			}
-			if !yield(m) {
+			if m, ok := d.passed(c); ok && !yield(m) {
 				return
 			}
 		}
 	}
+}
+
+// passed returns a finding as a mark, if the limits let it pass.
+func (d *document) passed(c pending) (Mark, bool) {
+	m := c.mark
+	m.P = logistic(c.odds + d.rate.shift)
+	if m.P < d.least(m.Kind) {
+		return m, false
+	}
+	if m.Grade = d.limits.grade(m.Kind, m.P); m.P < d.floor {
+		m.Grade = GradeDoubt
+	}
+	if m.Grade == GradeDoubt && !d.doubts {
+		return m, false
+	}
+	m.Corrections = slices.Clone(m.Corrections)
+	for i := range m.Corrections {
+		m.Corrections[i].P *= m.P
+	}
+	return m, true
 }
 
 func wordsIn(tokens []text.Token) int {
@@ -240,10 +255,10 @@ func (j *judge) count(blocks []*text.Block) {
 }
 
 // mark places a finding in the document. Its probability is settled later.
-func (j *judge) mark(b *text.Block, f finding) Mark {
+func (j *judge) mark(b *text.Block, places *text.Places, f finding) Mark {
 	start, end := j.slots[f.from].token.Start, j.slots[f.to-1].token.End
 	from, to := b.Source(start, end)
-	at := b.Position(start)
+	at := places.Position(start)
 	m := Mark{
 		Part:        b.Part,
 		Line:        at.Line,
