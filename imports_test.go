@@ -39,7 +39,7 @@ var outside = map[string][]string{
 	"github.com/spf13/pflag":           {"cmd/*"},
 	"github.com/yuin/goldmark":         {"internal/text"},
 	"golang.org/x/term":                {"cmd/*"},
-	"golang.org/x/text":                {"internal/text", "candidates/lexicon", "channel", "eval"},
+	"golang.org/x/text":                {"internal/text", "internal/charset", "candidates/lexicon", "channel", "eval"},
 }
 
 // sourceFile is a Go file of the module with what it imports.
