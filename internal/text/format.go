@@ -25,6 +25,7 @@ type format struct {
 	name       Format
 	about      string   // what is read of it, in a line
 	extensions []string // lower case, with the point
+	names      []string // whole names of files, lower case
 	languages  []string // identifiers of the Language Server Protocol 3.17, where it has any
 	read       func(r io.Reader, o Options, yield func(*Block, error) bool)
 	// splice writes edits into a source whose parts are packed; nil where the
@@ -83,12 +84,20 @@ func (f Format) About() string {
 	return e.about
 }
 
-// FormatOf returns the format of a file by its name's ending; ok is false, and
-// the format Plain, when nothing is known of it.
+// Packed reports that the text stands in parts inside the document, packed, so
+// that offsets are of a part.
+func (f Format) Packed() bool {
+	e, _ := f.entry()
+	return e.splice != nil
+}
+
+// FormatOf returns the format of a file by its name or its name's ending; ok is
+// false, and the format Plain, when nothing is known of it.
 func FormatOf(path string) (f Format, ok bool) {
-	ext := strings.ToLower(filepath.Ext(path))
+	name := strings.ToLower(filepath.Base(path))
+	ext := filepath.Ext(name)
 	for _, f := range registry() {
-		if slices.Contains(f.extensions, ext) {
+		if slices.Contains(f.names, name) || slices.Contains(f.extensions, ext) {
 			return f.name, true
 		}
 	}
