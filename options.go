@@ -64,9 +64,12 @@ type Options struct {
 	Format string // the name of one of Formats; "" is plain
 	// Fields are the columns or members to read of a format of records; none means
 	// all that hold prose.
-	Fields  []string
-	Variety Variety // the spelling asked for
-	House   *House  // nil: none
+	Fields []string
+	// Encoding is that of the document, by a name of the WHATWG's Encoding Standard,
+	// utf-32le or utf-32be; "" is UTF-8. A byte order mark overrides it.
+	Encoding string
+	Variety  Variety // the spelling asked for
+	House    *House  // nil: none
 	// Budget is how many false alarms a 1,000 words of good text the reader
 	// will bear, marks and queries together; 0 takes the model's default.
 	Budget float64

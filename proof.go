@@ -31,6 +31,11 @@ func (e *Engine) Proof(ctx context.Context, r io.Reader, o Options) iter.Seq2[Ma
 			yield(Mark{}, err)
 			return
 		}
+		r, origin, err := decode(r, format, o.Encoding)
+		if err != nil {
+			yield(Mark{}, err)
+			return
+		}
 		d := e.newDocument(o)
 		defer e.give(d.judge)
 		for blocks, err := range windows(text.Blocks(r, format, text.Options{Fields: o.Fields})) {
@@ -40,7 +45,7 @@ func (e *Engine) Proof(ctx context.Context, r io.Reader, o Options) iter.Seq2[Ma
 				return
 			}
 			for m := range d.decide() {
-				if !yield(m, nil) {
+				if !yield(origin.mark(m), nil) {
 					return
 				}
 			}
