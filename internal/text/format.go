@@ -16,6 +16,11 @@ type Format string
 const (
 	Plain    Format = "plain"
 	Markdown Format = "markdown"
+	HTML     Format = "html"
+	XML      Format = "xml"
+	LaTeX    Format = "latex"
+	RST      Format = "rst"
+	AsciiDoc Format = "asciidoc"
 )
 
 // format is an entry of the registry: to add a format, write its reader and
@@ -42,6 +47,14 @@ func registry() []format {
 		{
 			name: Markdown, about: "all prose; not code, HTML, link destinations and front matter",
 			extensions: []string{".md", ".markdown", ".mkd"}, languages: []string{"markdown"}, read: readMarkdown,
+		},
+		{
+			name: HTML, about: "text and the attributes that are shown, in the language asked for; not code and scripts",
+			extensions: []string{".html", ".htm", ".xhtml"}, languages: []string{"html"}, read: readHTML,
+		},
+		{
+			name: XML, about: "text of two words or more, in the language asked for; not elements named as code",
+			extensions: []string{".xml", ".dita", ".ditamap", ".dbk"}, languages: []string{"xml"}, read: readXML,
 		},
 	}
 }

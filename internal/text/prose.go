@@ -69,15 +69,20 @@ func (p *prose) add(text []byte, from, to int) {
 
 // decoded takes source[from:to] with backslash escapes and character references
 // resolved.
-func (p *prose) decoded(from, to int) {
+func (p *prose) decoded(from, to int) { p.decodedBy(from, to, "\\&", resolve) }
+
+// decodedBy takes source[from:to], where at each of the bytes marks read may tell
+// what the bytes from there on stand for and how many they are, 1 when they stand
+// for themselves.
+func (p *prose) decodedBy(from, to int, marks string, read func(b []byte) (text string, n int)) {
 	for from < to {
-		i := bytes.IndexAny(p.source[from:to], "\\&")
+		i := bytes.IndexAny(p.source[from:to], marks)
 		if i < 0 {
 			break
 		}
 		p.verbatim(from, from+i)
 		from += i
-		text, n := resolve(p.source[from:to])
+		text, n := read(p.source[from:to])
 		if n > 1 {
 			p.standIn(text, from, from+n)
 		} else {
@@ -86,6 +91,35 @@ func (p *prose) decoded(from, to int) {
 		from += n
 	}
 	p.verbatim(from, to)
+}
+
+// folded takes source[from:to] by pieces, with white space that holds line ends
+// as one of them, and none at the start of the text.
+func (p *prose) folded(from, to int, take func(from, to int)) {
+	for from < to {
+		if len(p.text) == 0 {
+			for from < to && isSpaceByte(p.source[from]) {
+				from++
+			}
+		}
+		i := bytes.IndexAny(p.source[from:to], "\r\n")
+		if i < 0 {
+			take(from, to)
+			return
+		}
+		start, end := from+i, from+i
+		for start > from && isSpaceByte(p.source[start-1]) {
+			start--
+		}
+		for end < to && isSpaceByte(p.source[end]) {
+			end++
+		}
+		take(from, start)
+		if len(p.text) > 0 {
+			p.standIn("\n", start, end)
+		}
+		from = end
+	}
 }
 
 // resolve reads the escape or character reference at the start of b and returns
@@ -109,11 +143,13 @@ func resolve(b []byte) (text string, n int) {
 	return text, end + 1
 }
 
-// block returns what was built, nil when it is nothing but white space.
+// block returns what was built less the white space at its end, nil when nothing
+// is left.
 func (p *prose) block() *Block {
 	if len(bytes.TrimSpace(p.text)) == 0 {
 		return nil
 	}
+	p.trim()
 	base := p.spans[0].source
 	for i := range p.spans {
 		p.spans[i].source -= base
@@ -121,4 +157,21 @@ func (p *prose) block() *Block {
 	}
 	end := base + p.spans[len(p.spans)-1].sourceEnd
 	return &Block{Text: p.text, source: p.source[base:end:end], offset: int64(base), spans: p.spans}
+}
+
+// trim takes ASCII white space off the end, as far as it is spans of its own or
+// the end of a verbatim one.
+func (p *prose) trim() {
+	_, end := trimSpace(p.text, 0, len(p.text))
+	n := len(p.spans)
+	for p.spans[n-1].text >= end {
+		n--
+	}
+	p.spans = p.spans[:n]
+	last := &p.spans[n-1]
+	if excess := last.textEnd - end; excess > 0 && !last.whole {
+		last.textEnd -= excess
+		last.sourceEnd -= excess
+	}
+	p.text = p.text[:last.textEnd]
 }
