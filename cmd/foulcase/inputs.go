@@ -1,14 +1,10 @@
 package main
 
 import (
-	"fmt"
 	"io"
-	"io/fs"
 	"os"
-	"path/filepath"
-	"strings"
 
-	"example.org/foulcase"
+	"example.org/foulcase/internal/tree"
 )
 
 // input is one document to read. An input whose err is set could not be
@@ -23,75 +19,40 @@ type input struct {
 // standardInput is the operand that stands for it.
 const standardInput = "-"
 
-// findInputs turns operands into documents: files as named, folders walked in
-// the order of names for files of a known format, "-" (or no operand at all)
-// for standard input, which goes by stdinName.
+// findInputs turns operands into documents: files as named, folders with the
+// files of a known format below them, whatever git ignores, "-" (or no operand at
+// all) for standard input, which goes by stdinName.
 func findInputs(operands []string, stdin io.Reader, stdinName string) []input {
 	if len(operands) == 0 {
 		operands = []string{standardInput}
 	}
-	var found []input
-	for _, path := range operands {
-		if path == standardInput {
-			found = append(found, input{path: stdinName, in: stdin})
-			stdin = strings.NewReader("") // it can be read but once
-			continue
-		}
-		info, err := os.Stat(path)
+	return findWith(tree.NewFinder(tree.Options{NoIgnore: true}), operands, stdin, stdinName)
+}
+
+// findWith has a finder look for operands. Standard input is read once, in the
+// place where it is named first.
+func findWith(f *tree.Finder, operands []string, stdin io.Reader, stdinName string) []input {
+	var before []input // with standard input, once it was named
+	for _, operand := range operands {
 		switch {
-		case err != nil:
-			found = append(found, input{path: path, err: err})
-		case info.IsDir():
-			found = append(found, walkFolder(path)...)
-		default:
-			found = append(found, input{path: path, size: info.Size()})
+		case operand != standardInput:
+			f.Add(operand)
+		case before == nil:
+			before = append(inputsOf(f.Found()), input{path: stdinName, in: stdin})
 		}
 	}
-	return found
+	if before == nil {
+		return inputsOf(f.Found())
+	}
+	return append(before, inputsOf(f.Found()[len(before)-1:])...)
 }
 
-// walkFolder lists the documents of a known format below a folder. Hidden
-// files and folders are passed over and links are not followed.
-func walkFolder(root string) []input {
-	var found []input
-	err := filepath.WalkDir(root, func(path string, d fs.DirEntry, err error) error {
-		hidden := strings.HasPrefix(d.Name(), ".") && path != root
-		switch {
-		case err != nil:
-			found = append(found, input{path: path, err: err})
-		case d.IsDir() && hidden:
-			return fs.SkipDir
-		case !hidden && d.Type().IsRegular() && hasFormat(path):
-			in := input{path: path}
-			if info, err := d.Info(); err == nil {
-				in.size = info.Size()
-			}
-			found = append(found, in)
-		}
-		return nil
-	})
-	if err == nil && len(found) == 0 {
-		err = fmt.Errorf("%s: no text in this folder (looked for %s); name other files one by one",
-			root, strings.Join(extensions(), " "))
+func inputsOf(documents []tree.Document) []input {
+	var inputs []input
+	for _, d := range documents {
+		inputs = append(inputs, input{path: d.Path, size: d.Size, err: d.Err})
 	}
-	if err != nil {
-		found = append(found, input{path: root, err: err})
-	}
-	return found
-}
-
-// extensions lists those of every known format.
-func extensions() []string {
-	var all []string
-	for _, f := range foulcase.Formats() {
-		all = append(all, f.Extensions...)
-	}
-	return all
-}
-
-func hasFormat(path string) bool {
-	_, ok := foulcase.FormatOf(path)
-	return ok
+	return inputs
 }
 
 // open opens the document for reading.

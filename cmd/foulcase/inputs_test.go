@@ -72,7 +72,7 @@ func TestStandardInputOnce(t *testing.T) {
 		}
 		got = append(got, string(data))
 	}
-	if want := []string{"typed", ""}; !slices.Equal(got, want) {
+	if want := []string{"typed"}; !slices.Equal(got, want) {
 		t.Errorf("read %q, want %q", got, want)
 	}
 }
