@@ -4,8 +4,10 @@ go 1.26.0
 
 require (
 	github.com/agnivade/levenshtein v1.2.2
+	github.com/aymanbagabas/go-udiff v0.4.2
 	github.com/clipperhouse/uax29/v2 v2.7.0
 	github.com/rogpeppe/go-internal v1.16.0
+	github.com/santhosh-tekuri/jsonschema/v6 v6.0.3
 	github.com/spf13/pflag v1.1.0
 	github.com/yuin/goldmark v1.8.7
 	golang.org/x/term v0.48.0
