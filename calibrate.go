@@ -101,7 +101,7 @@ func (j *judge) observe(t *Trial) observed {
 		}
 		for i := range found {
 			f := &found[i]
-			if f.p < leastWeighed || len(j.corrections(*f, block.Text)) == 0 {
+			if f.p < leastWeighed || f.preferred != nil || len(j.corrections(*f, block.Text)) == 0 {
 				continue
 			}
 			right := t.slipped(j.slots[f.from].token.Start, j.slots[f.to-1].token.End)

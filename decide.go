@@ -26,7 +26,9 @@ type finding struct {
 	kind     Kind
 	p        float64  // the lattice's posterior that the typed reading is wrong
 	odds     float64  // log-odds that it is, all evidence weighed, nats, before the document's rate of slips
-	changes  []change // best first
+	changes  []change // best first; none of a preference
+	// preferred is what the house has to say here; nil where the models found it.
+	preferred *preference
 }
 
 // findings weighs a sentence of the block and returns what may be wrong in it, in order,
@@ -35,7 +37,7 @@ func (j *judge) findings(s text.Sentence, block []byte) ([]finding, error) {
 	j.read(s, block)
 	j.propose()
 	if len(j.changes) == 0 {
-		return nil, nil
+		return j.prefer(nil, block), nil
 	}
 	if err := j.weighTogether(); err != nil {
 		return nil, err
@@ -44,7 +46,7 @@ func (j *judge) findings(s text.Sentence, block []byte) ([]finding, error) {
 	for i := range found {
 		found[i].odds = j.oddsOf(&found[i])
 	}
-	return found, nil
+	return j.prefer(found, block), nil
 }
 
 // leastWeighed is the posterior under which a finding is not looked at further.
@@ -129,6 +131,9 @@ func (j *judge) group() []finding {
 // corrections writes out the changes of a finding as the text would have them,
 // with each one's share of the finding.
 func (j *judge) corrections(f finding, block []byte) []Correction {
+	if f.preferred != nil {
+		return []Correction{{Text: j.writePreferred(&f, block), P: 1}}
+	}
 	out := make([]Correction, 0, min(len(f.changes), maxCorrections))
 	observed := string(block[j.slots[f.from].token.Start:j.slots[f.to-1].token.End])
 	for i, c := range f.changes {

@@ -180,7 +180,7 @@ func (j *judge) fill(c *LedgerColumn, i int, block []byte) {
 
 // terms accounts for the log-odds of a finding.
 func (j *judge) terms(f *finding) (base float64, terms []LedgerTerm) {
-	if j.e.calibration == nil {
+	if j.e.calibration == nil || f.preferred != nil {
 		return f.odds, nil
 	}
 	model := j.e.calibration.models[groupOf(f.kind)]

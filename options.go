@@ -2,11 +2,11 @@ package foulcase
 
 import (
 	"fmt"
-	"io"
 	"slices"
 	"strings"
 
 	"example.org/foulcase/candidates/lexicon"
+	"example.org/foulcase/internal/text"
 )
 
 // Variety is the English the text is held to.
@@ -38,26 +38,6 @@ func ParseVariety(name string) (Variety, error) {
 	return 0, fmt.Errorf("variety %q: want en-US, en-GB or any", name)
 }
 
-// House is the organisation's own vocabulary, read once and shared between
-// goroutines.
-type House struct {
-	words *lexicon.Lexicon
-}
-
-// ReadHouse reads a list of house words, one a line, UTF-8, "#" beginning a
-// comment. Errors name the list, the line and the remedy.
-func ReadHouse(name string, r io.Reader) (*House, error) {
-	list, err := lexicon.ReadWords(r, name)
-	if err != nil {
-		return nil, err
-	}
-	words, err := lexicon.FromWords(list)
-	if err != nil {
-		return nil, fmt.Errorf("%s: %w", name, err)
-	}
-	return &House{words}, nil
-}
-
 // Options says how a document is to be judged. The zero value is usable:
 // plain text, either variety, no house words, the model's own budget.
 type Options struct {
@@ -82,6 +62,9 @@ type Options struct {
 	// LeastDoubt, so that a measurement can draw its own.
 	Doubts bool
 }
+
+// reading is what the options say of reading a document.
+func (o Options) reading() text.Options { return text.Options{Fields: o.Fields} }
 
 // LeastDoubt is the least probability of a finding that Options.Doubts yields.
 const LeastDoubt = .002
@@ -116,12 +99,3 @@ func ParseEvidence(names ...string) (Evidence, error) {
 }
 
 func (e Evidence) has(one Evidence) bool { return e&one != 0 }
-
-// has reports whether the house has the folded form; a nil House has none.
-func (h *House) has(form []byte) bool {
-	if h == nil {
-		return false
-	}
-	_, ok := h.words.ID(form)
-	return ok
-}

@@ -69,6 +69,7 @@ func (e *Engine) Rank(word string, o RankOptions) Ranking {
 		r.Candidates[i].P = math.Exp(r.Candidates[i].P - total)
 	}
 	slices.SortStableFunc(r.Candidates, func(a, b Candidate) int { return cmp.Compare(b.P, a.P) })
+	r.Candidates = j.preferFirst(r.Candidates, word)
 	r.Candidates = r.Candidates[:min(o.K, len(r.Candidates))]
 	return r
 }

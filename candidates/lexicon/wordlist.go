@@ -5,6 +5,7 @@ import (
 	"errors"
 	"fmt"
 	"io"
+	"iter"
 	"strings"
 	"unicode"
 	"unicode/utf8"
@@ -27,28 +28,47 @@ type WordList struct {
 // skipped. Errors name the list and the line and say what to do.
 func ReadWords(r io.Reader, name string) ([]string, error) {
 	var words []string
-	lines := bufio.NewScanner(r)
-	lines.Buffer(nil, maxLine)
-	n := 0
-	for lines.Scan() {
-		n++
-		line := lines.Text()
-		if n == 1 {
-			line = strings.TrimPrefix(line, "\ufeff")
+	for line, err := range ReadLines(r, name) {
+		if err != nil {
+			return nil, err
 		}
-		if !utf8.ValidString(line) {
-			return nil, fmt.Errorf("%s:%d: the line is not UTF-8: save the list as UTF-8 text, one word a line", name, n)
-		}
-		if word := strings.TrimSpace(cutComment(line)); word != "" {
-			words = append(words, word)
-		}
-	}
-	if err := lines.Err(); errors.Is(err, bufio.ErrTooLong) {
-		return nil, fmt.Errorf("%s:%d: the line is longer than %d bytes: put one word on a line", name, n+1, maxLine)
-	} else if err != nil {
-		return nil, fmt.Errorf("%s:%d: %w", name, n+1, err)
+		words = append(words, line.Text)
 	}
 	return words, nil
+}
+
+// Line is an entry of a list and the number of its line, from 1 on.
+type Line struct {
+	Number int
+	Text   string
+}
+
+// ReadLines yields the entries of a list as ReadWords reads it, up to the first error.
+func ReadLines(r io.Reader, name string) iter.Seq2[Line, error] {
+	return func(yield func(Line, error) bool) {
+		lines := bufio.NewScanner(r)
+		lines.Buffer(nil, maxLine)
+		n := 0
+		for lines.Scan() {
+			n++
+			line := lines.Text()
+			if n == 1 {
+				line = strings.TrimPrefix(line, "\ufeff")
+			}
+			if !utf8.ValidString(line) {
+				yield(Line{}, fmt.Errorf("%s:%d: the line is not UTF-8: save the list as UTF-8 text, one word a line", name, n))
+				return
+			}
+			if entry := strings.TrimSpace(cutComment(line)); entry != "" && !yield(Line{n, entry}, nil) {
+				return
+			}
+		}
+		if err := lines.Err(); errors.Is(err, bufio.ErrTooLong) {
+			yield(Line{}, fmt.Errorf("%s:%d: the line is longer than %d bytes: put one word on a line", name, n+1, maxLine))
+		} else if err != nil {
+			yield(Line{}, fmt.Errorf("%s:%d: %w", name, n+1, err))
+		}
+	}
 }
 
 func cutComment(line string) string {
