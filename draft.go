@@ -1,58 +1,107 @@
 package foulcase
 
 import (
-	"bytes"
 	"context"
 	"fmt"
 	"slices"
+
+	"example.org/foulcase/internal/text"
 )
 
 // Draft is a document under its writer's hands: it takes edits and, asked for
-// its marks, judges again what they touched. One goroutine uses it at a time.
+// its marks, judges again what they touched and nothing else. What an edit
+// changes in the evidence for sentences elsewhere (how often a word is used, say)
+// counts there after Settle, which makes the marks those of Engine.Proof for a
+// document of up to a mebibyte; in a longer one Proof looks a mebibyte ahead, and a
+// draft is known whole. One goroutine uses a draft at a time.
 type Draft struct {
-	engine  *Engine
-	options Options
+	*document
+	asked   Options
+	format  text.Format
 	source  []byte
+	blocks  []*draftBlock
+	near    vicinity // around edits not read yet
+	unread  bool     // the blocks are not those of source
+	fault   error    // of reading source
+	drifted bool     // there were edits since everything was judged together
 }
 
-// NewDraft begins a draft with a copy of source, UTF-8.
-func (e *Engine) NewDraft(source []byte, o Options) *Draft {
-	return &Draft{engine: e, options: o, source: slices.Clone(source)}
+// NewDraft begins a draft with a copy of source, UTF-8. Its format must not be a
+// packed one. An unknown format is an error. Close the draft when done.
+func (e *Engine) NewDraft(source []byte, o Options) (*Draft, error) {
+	format, err := text.ParseFormat(o.formatName())
+	if err != nil {
+		return nil, err
+	}
+	return &Draft{
+		document: e.newDocument(o),
+		asked:    o,
+		format:   format,
+		source:   slices.Clone(source),
+		unread:   true,
+	}, nil
 }
+
+// Close gives back what the draft holds; it must not be used afterwards.
+func (d *Draft) Close() { d.e.give(d.judge) }
 
 // Source is the document as it stands. It is the draft's, to be read until the
 // next Edit.
 func (d *Draft) Source() []byte { return d.source }
 
-// Edit replaces source[start:end], in bytes.
+// Edit replaces source[start:end], in bytes. An edit outside the source is an
+// error and changes nothing.
 func (d *Draft) Edit(start, end int, replacement []byte) error {
 	if start < 0 || end < start || end > len(d.source) {
 		return fmt.Errorf("an edit of bytes %d to %d in a document of %d", start, end, len(d.source))
 	}
+	if !d.unread && !d.widen(start, end) {
+		d.unread = true
+	}
 	d.source = slices.Replace(d.source, start, end, replacement...)
+	d.drifted = true
 	return nil
 }
 
-// Marks returns the marks of the document as it stands, in order. It judges what
-// was not judged since it was edited; if ctx ends before, what was judged is kept
-// and the error is that of ctx. Progress, when not nil, is told now and then how many
-// bytes of how many are judged.
-func (d *Draft) Marks(ctx context.Context, progress func(done, total int)) ([]Mark, error) {
-	var marks []Mark
-	for m, err := range d.engine.Proof(ctx, bytes.NewReader(d.source), d.options) {
-		if err != nil {
-			return nil, err
+// SetOptions changes the options under which the draft is judged, its format and
+// fields aside. Sentences with marks are judged anew by the next Marks, all others
+// by the next Settle.
+func (d *Draft) SetOptions(o Options) {
+	fresh := d.e.newDocument(o)
+	fresh.recurring, d.recurring = d.recurring, fresh.recurring
+	d.e.give(d.judge)
+	d.document, d.asked, d.drifted = fresh, o, true
+	for s := range d.sentences() {
+		if len(s.kept) > 0 {
+			s.state = unjudged
 		}
-		marks = append(marks, m)
 	}
-	return marks, nil
 }
 
-// Settle is Marks after everything was read and judged anew: what edits far away
-// have changed in the evidence for a sentence counts too.
+// Marks returns the marks of the document as it stands, in order. If ctx ends
+// before everything new is judged, the error is that of ctx, and what was judged
+// is kept for the next call. A document that cannot be read to its end has the
+// marks of what was read, and an error. Progress, when not nil, is told now and
+// then how many sentences of how many are judged.
+func (d *Draft) Marks(ctx context.Context, progress func(done, total int)) ([]Mark, error) {
+	d.read()
+	if err := d.judgeAll(ctx, unjudged, progress); err != nil {
+		return nil, err
+	}
+	return d.decided(), d.fault
+}
+
+// Settle is Marks after everything was read anew and judged together. Where it
+// is cut short by ctx, the next call goes on.
 func (d *Draft) Settle(ctx context.Context, progress func(done, total int)) ([]Mark, error) {
+	if d.drifted {
+		d.unread = true
+		d.read()
+		d.recount()
+		d.drifted = false
+	}
+	if err := d.judgeAll(ctx, drifted, progress); err != nil {
+		return nil, err
+	}
 	return d.Marks(ctx, progress)
 }
-
-// Close gives back what the draft holds; it must not be used afterwards.
-func (d *Draft) Close() {}

@@ -45,11 +45,11 @@ func TestRecurrenceComparesWithExpectation(t *testing.T) {
 	var r recurrence
 	r.init(3)
 	for range 100 {
-		r.addWord(0)
+		r.addWord(0, 1)
 	}
-	r.addWord(1)
-	r.addForm([]byte("zilverbank"), false)
-	r.addForm([]byte("zilverbank"), false)
+	r.addWord(1, 1)
+	r.addForm([]byte("zilverbank"), false, 1)
+	r.addForm([]byte("zilverbank"), false, 1)
 	often, seldom := share(0.9), share(1e-7)
 	if got := r.word(0, often, 1); got > math.Log(3) {
 		t.Errorf("a word as frequent as everywhere has evidence %v", got)

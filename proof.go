@@ -38,7 +38,7 @@ func (e *Engine) Proof(ctx context.Context, r io.Reader, o Options) iter.Seq2[Ma
 		}
 		d := e.newDocument(o)
 		defer e.give(d.judge)
-		for blocks, err := range windows(text.Blocks(r, format, text.Options{Fields: o.Fields})) {
+		for blocks, err := range windows(text.Blocks(r, format, o.reading())) {
 			d.count(blocks)
 			if err := d.weigh(ctx, blocks); err != nil {
 				yield(Mark{}, err)
@@ -72,8 +72,9 @@ type document struct {
 
 // pending is a finding whose document is not yet known.
 type pending struct {
-	mark Mark
-	odds float64
+	mark       Mark
+	odds       float64
+	start, end int // in the block's text
 }
 
 func (e *Engine) newDocument(o Options) *document {
@@ -152,7 +153,8 @@ func (d *document) keep(b *text.Block, places *text.Places, found []finding, odd
 			continue
 		}
 		if m := d.mark(b, places, f); len(m.Corrections) > 0 {
-			kept = append(kept, pending{m, f.odds})
+			start, end := d.extent(f)
+			kept = append(kept, pending{m, f.odds, start, end})
 		}
 	}
 	return odds, kept
@@ -243,37 +245,49 @@ func windows(blocks iter.Seq2[*text.Block, error]) iter.Seq2[[]*text.Block, erro
 func (j *judge) count(blocks []*text.Block) {
 	for _, b := range blocks {
 		for s := range j.segmenter.Sentences(b.Text) {
-			for _, t := range s.Tokens {
-				if t.Kind != text.Word {
-					continue
-				}
-				j.ids = j.e.lexicon.Read(j.ids[:0], t)
-				if len(j.ids) > 0 && int(j.ids[0]) < j.e.lexicon.Len() {
-					j.recurring.addWord(j.ids[0])
-				} else {
-					j.recurring.addForm(t.Norm, t.Case != text.Lower)
-				}
-			}
+			j.countSentence(s)
 		}
 	}
 	j.recurring.settle(j.e.lexicon)
 }
 
-// mark places a finding in the document. Its probability is settled later.
+// countSentence adds the words of a sentence to the document's counts.
+func (j *judge) countSentence(s text.Sentence) {
+	for _, t := range s.Tokens {
+		if t.Kind != text.Word {
+			continue
+		}
+		if id, ok := j.wordOf(t); ok {
+			j.recurring.addWord(id, 1)
+		} else {
+			j.recurring.addForm(t.Norm, t.Case != text.Lower, 1)
+		}
+	}
+}
+
+// wordOf returns the lexicon word that a token is or begins with.
+func (j *judge) wordOf(t text.Token) (id uint32, ok bool) {
+	j.ids = j.e.lexicon.Read(j.ids[:0], t)
+	if len(j.ids) == 0 || int(j.ids[0]) >= j.e.lexicon.Len() {
+		return 0, false
+	}
+	return j.ids[0], true
+}
+
+// extent is the stretch of the block's text that a finding covers.
+func (j *judge) extent(f finding) (start, end int) {
+	return j.slots[f.from].token.Start, j.slots[f.to-1].token.End
+}
+
+// mark writes out a finding and places it in the document. Its probability is
+// settled later.
 func (j *judge) mark(b *text.Block, places *text.Places, f finding) Mark {
-	start, end := j.slots[f.from].token.Start, j.slots[f.to-1].token.End
-	from, to := b.Source(start, end)
-	at := places.Position(start)
+	start, end := j.extent(f)
 	m := Mark{
 		Part:        b.Part,
-		Line:        at.Line,
-		Column:      at.Column,
-		Offset:      from,
-		Length:      to - from,
 		Observed:    string(b.Raw(start, end)),
 		Kind:        f.kind,
 		Corrections: j.corrections(f, b.Text),
-		Context:     contextOf(b.Text, start, end),
 		ByHand:      b.Interrupted(start, end),
 	}
 	for i := range m.Corrections {
@@ -283,7 +297,17 @@ func (j *judge) mark(b *text.Block, places *text.Places, f finding) Mark {
 			c.Source = spelled
 		}
 	}
+	m.place(b, places, start, end)
 	return m
+}
+
+// place notes where in the document the mark stands: at Text[start:end] of a block.
+func (m *Mark) place(b *text.Block, places *text.Places, start, end int) {
+	from, to := b.Source(start, end)
+	at := places.Position(start)
+	m.Line, m.Column = at.Line, at.Column
+	m.Offset, m.Length = from, to-from
+	m.Context = contextOf(b.Text, start, end)
 }
 
 // contextOf quotes what stands around block[start:end], on one line, cut at

@@ -38,34 +38,37 @@ func (r *recurrence) reset() {
 	r.total, r.capital = 0, 0
 }
 
-// addWord counts one occurrence of a lexicon word.
-func (r *recurrence) addWord(id uint32) {
-	r.total++
-	switch r.words[id] {
-	case math.MaxUint16:
-		return
-	case 0:
+// addWord counts an occurrence of a lexicon word, or takes one out: times is 1 or -1.
+func (r *recurrence) addWord(id uint32, times int) {
+	r.total += float64(times)
+	n := r.words[id]
+	if n == 0 && times > 0 {
 		r.touched = append(r.touched, id)
 	}
-	r.words[id]++
+	r.words[id] = saturating(n, times)
 	if r.total >= decayAt {
 		r.decay()
 	}
 }
 
-// addForm counts one occurrence of a form the lexicon lacks.
-func (r *recurrence) addForm(form []byte, capital bool) {
-	r.total++
+// addForm is addWord for a form the lexicon lacks.
+func (r *recurrence) addForm(form []byte, capital bool, times int) {
+	r.total += float64(times)
 	if capital {
-		r.capital++
+		r.capital += float64(times)
 	}
-	if n, ok := r.forms[string(form)]; ok {
-		if n < math.MaxUint16 {
-			r.forms[string(form)] = n + 1
-		}
-	} else if len(r.forms) < maxForms {
-		r.forms[string(form)] = 1
+	n, ok := r.forms[string(form)]
+	switch n = saturating(n, times); {
+	case ok && n == 0:
+		delete(r.forms, string(form))
+	case ok || times > 0 && len(r.forms) < maxForms:
+		r.forms[string(form)] = n
 	}
+}
+
+// saturating adds times to a count, which stays at its ends.
+func saturating(n uint16, times int) uint16 {
+	return uint16(min(max(int(n)+times, 0), math.MaxUint16))
 }
 
 func (r *recurrence) decay() {
@@ -93,11 +96,22 @@ func (r *recurrence) word(id uint32, lex prior, own int) float64 {
 	return math.Log(1 + n/(1+r.total*math.Exp(float64(lex.Prior(id)))))
 }
 
-// settle works out what the counts so far say of every word met.
+// settle works out what the counts so far say of every word met, and forgets those
+// that were taken out again.
 func (r *recurrence) settle(lex prior) {
+	met := r.touched[:0]
 	for _, id := range r.touched {
-		r.oftener[id] = float32(r.word(id, lex, 0))
+		r.settleWord(id, lex)
+		if r.words[id] > 0 {
+			met = append(met, id)
+		}
 	}
+	r.touched = met
+}
+
+// settleWord is settle for one word.
+func (r *recurrence) settleWord(id uint32, lex prior) {
+	r.oftener[id] = float32(r.word(id, lex, 0))
 }
 
 // form is the evidence for a form the lexicon lacks, as word.
