@@ -3,6 +3,7 @@ package text
 import (
 	"bytes"
 	"slices"
+	"unicode/utf8"
 )
 
 // Block is one run of prose freed of markup: a paragraph, a heading, a table
@@ -69,8 +70,9 @@ func (b *Block) Interrupted(start, end int) bool {
 	return false
 }
 
-// Position returns the place of Text[start] in the source. It counts from the
-// start of the block: time grows with start. Who asks for many uses Places.
+// Position returns the place of Text[start] in the source; in a part of a packed
+// document, lines are its paragraphs and columns count their text. It counts from
+// the start of the block: time grows with start. Who asks for many uses Places.
 func (b *Block) Position(start int) Position {
 	p := b.Places()
 	return p.Position(start)
@@ -84,11 +86,16 @@ func (b *Block) Places() Places { return Places{block: b, lines: NewLineMap(b.or
 type Places struct {
 	block *Block
 	lines LineMap
-	at    int // in block.source
+	at    int // in block.source, or in the text of a packed document
 }
 
 // Position returns the place of Text[start]; start must not go back.
 func (p *Places) Position(start int) Position {
+	if p.block.Part != "" {
+		p.lines.column += utf8.RuneCount(p.block.Text[p.at:start])
+		p.at = start
+		return p.lines.Position()
+	}
 	from, _ := p.block.local(start, start)
 	p.lines.Feed(p.block.source[p.at:from])
 	p.at = from

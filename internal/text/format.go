@@ -39,7 +39,7 @@ type format struct {
 }
 
 func registry() []format {
-	return append([]format{
+	return slices.Concat([]format{
 		{
 			name: Plain, about: "paragraphs, whether lines are wrapped or not",
 			extensions: []string{".txt", ".text"}, languages: []string{"plaintext"}, read: readPlain,
@@ -56,7 +56,11 @@ func registry() []format {
 			name: XML, about: "text of two words or more, in the language asked for; not elements named as code",
 			extensions: []string{".xml", ".dita", ".ditamap", ".dbk"}, languages: []string{"xml"}, read: readXML,
 		},
-	}, sourceFormats()...)
+		{
+			name: LaTeX, about: "text and the arguments that are text; not mathematics, code, references and comments",
+			extensions: []string{".tex", ".ltx"}, languages: []string{"latex", "tex"}, read: readLaTeX,
+		},
+	}, recordFormats(), packedFormats(), sourceFormats())
 }
 
 // Options says what is read of a document and bounds what reading may take. The

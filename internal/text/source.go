@@ -14,7 +14,7 @@ type codeReader struct {
 	source []byte
 	blocks []*Block
 	lines  []stretch // of the comment at hand
-	last   codePiece     // the last piece of it
+	last   codePiece // the last piece of it
 }
 
 // stretch is source[from:to].
