@@ -15,10 +15,9 @@ type pattern struct {
 
 // token is one step of a pattern.
 type token struct {
-	kind    tokenKind
-	b       byte
-	set     *[256]bool
-	skipped bool // deep alone: the slash that follows may be missing with it
+	kind tokenKind
+	b    byte
+	set  *[256]bool
 }
 
 type tokenKind uint8
@@ -29,6 +28,7 @@ const (
 	in                    // a byte of set, never a slash
 	star                  // bytes that are no slash, as many as there are
 	deep                  // any bytes
+	none                  // no byte; the two tokens that follow, deep and a slash, may be missing
 )
 
 // compilePattern reads a pattern.
@@ -57,7 +57,7 @@ func compilePattern(s string) pattern {
 			i += n
 		case '*':
 			n := len(s[i:]) - len(strings.TrimLeft(s[i:], "*"))
-			p.tokens = append(p.tokens, compileStars(s, i, n))
+			p.tokens = append(p.tokens, compileStars(s, i, n)...)
 			i += n
 		default:
 			p.tokens = append(p.tokens, token{kind: one, b: c})
@@ -69,17 +69,17 @@ func compilePattern(s string) pattern {
 
 // compileStars reads the n stars at s[i]. Two or more that fill a part of the path
 // stand for any folders, all others for what is no slash.
-func compileStars(s string, i, n int) token {
+func compileStars(s string, i, n int) []token {
 	after := s[i+n:]
 	begins := i == 0 || s[i-1] == '/'
 	slash := strings.HasPrefix(after, "/") || strings.HasPrefix(after, `\/`)
 	switch {
 	case n < 2 || !begins || after != "" && !slash:
-		return token{kind: star}
+		return []token{{kind: star}}
 	case slash:
-		return token{kind: deep, skipped: true}
+		return []token{{kind: none}, {kind: deep}}
 	}
-	return token{kind: deep}
+	return []token{{kind: deep}}
 }
 
 // classes are the POSIX character classes, in ASCII.
@@ -149,6 +149,7 @@ func addToSet(set *[256]bool, s string) (n int, ok bool) {
 	if !ok {
 		return 0, false
 	}
+	set[low] = true // whatever it is the beginning of, as git has it
 	high := low
 	if rest := s[n:]; len(rest) >= 2 && rest[0] == '-' && rest[1] != ']' {
 		var m int
@@ -205,10 +206,10 @@ func (p pattern) reach(states []bool, at int) {
 		if at == len(p.tokens) {
 			return
 		}
-		switch t := p.tokens[at]; {
-		case t.kind == deep && t.skipped:
-			p.reach(states, at+2)
-		case t.kind != star && t.kind != deep:
+		switch p.tokens[at].kind {
+		case none:
+			p.reach(states, at+3)
+		case one, any1, in:
 			return
 		}
 		at++
@@ -224,6 +225,8 @@ func (t token) takes(c byte) bool {
 		return t.set[c]
 	case deep:
 		return true
+	case none:
+		return false
 	}
 	return c != '/'
 }
