@@ -36,6 +36,7 @@ func verbs() []verb {
 		proofVerb(),
 		rankVerb(),
 		ledgerVerb(),
+		editorVerb(),
 		lmTrainVerb(),
 		lmMeasureVerb(),
 		modelBuildVerb(),

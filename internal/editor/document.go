@@ -1,0 +1,276 @@
+package editor
+
+import (
+	"bytes"
+	"context"
+	"time"
+	"unicode/utf8"
+
+	"example.org/foulcase"
+	"example.org/foulcase/internal/text"
+)
+
+// maxDocument is the most bytes of a document that is judged.
+const maxDocument = 32 << 20
+
+// document is one that the client has open.
+type document struct {
+	s         *Server
+	uri       string
+	path      string // where its settings are looked up
+	language  string // the protocol's identifier
+	inbox     mailbox
+	preferred preferences // what its goroutine was told last, under s.mu
+
+	// The rest belongs to its goroutine.
+
+	version  int
+	draft    *foulcase.Draft // nil: too large, or no such format
+	format   string          // of the draft
+	lines    lines
+	settings Settings // nil: none
+	asked    preferences
+	stands   map[mark]bool // what settings said of marks
+	closed   bool
+
+	stale  bool // the draft changed since marks were found
+	settle bool // far evidence is to be read anew too
+	judged bool // once
+	took   time.Duration
+
+	marks    []foulcase.Mark // of the draft, if it is not stale
+	items    []byte          // diagnostics of the marks, a JSON array
+	resultID int64           // numbers items, whatever document they are of
+	trouble  string          // the last that was reported
+}
+
+// mark is what decides whether a mark stands.
+type mark struct {
+	kind                    foulcase.Kind
+	part, observed, context string
+}
+
+// run does the tasks of a document until it is closed, and judges it in between.
+func (d *document) run() {
+	defer d.s.work.Done()
+	for !d.closed && d.s.ctx.Err() == nil {
+		if t, ok := d.inbox.take(); ok {
+			t.run()
+		} else if !d.stale {
+			d.wait(nil)
+		} else if pause := d.pause(); pause == 0 || d.wait(time.After(pause)) {
+			d.judge(d.s.ctx)
+		}
+	}
+	if d.draft != nil {
+		d.draft.Close()
+	}
+}
+
+// wait waits for a task; it reports whether timeout came before.
+func (d *document) wait(timeout <-chan time.Time) bool {
+	select {
+	case <-d.inbox.wake:
+	case <-d.s.ctx.Done():
+	case <-timeout:
+		return true
+	}
+	return false
+}
+
+const (
+	// quick is a judgement that need not wait for the writer to pause.
+	quick = 10 * time.Millisecond
+	// longestPause is the most that is waited.
+	longestPause = 250 * time.Millisecond
+)
+
+// pause is how long the writer must not have typed before the document is judged: as
+// long as that is likely to take, when it takes long.
+func (d *document) pause() time.Duration {
+	if d.took < quick {
+		return 0
+	}
+	return min(d.took, longestPause)
+}
+
+// edited makes the changes of a version.
+func (d *document) edited(version int, changes []contentChange) {
+	if version <= d.version {
+		d.s.log(loudWarning, "%s: version %d after version %d", d.uri, version, d.version)
+	}
+	d.version = version
+	for _, c := range changes {
+		d.change(c)
+	}
+	d.stale = true
+}
+
+func (d *document) change(c contentChange) {
+	switch {
+	case c.Range == nil && d.draft == nil:
+		d.begin([]byte(c.Text))
+	case c.Range == nil:
+		start, end, added := difference(d.draft.Source(), []byte(c.Text))
+		d.splice(start, end, added)
+	case d.draft != nil:
+		source := d.draft.Source()
+		start, ok := d.lines.offset(source, c.Range.Start)
+		end, okEnd := d.lines.offset(source, c.Range.End)
+		if !ok || !okEnd || end < start {
+			d.s.log(loudWarning, "%s: a change from %d:%d to %d:%d reaches out of the document, which was made within it",
+				d.uri, c.Range.Start.Line, c.Range.Start.Character, c.Range.End.Line, c.Range.End.Character)
+		}
+		d.splice(min(start, end), max(start, end), []byte(c.Text))
+	}
+}
+
+// begin makes the draft of a text, unless that is too large.
+func (d *document) begin(source []byte) {
+	d.draft, d.stale, d.judged = nil, true, false
+	if len(source) > maxDocument {
+		d.refuse(len(source))
+		return
+	}
+	o := d.options()
+	draft, err := d.s.config.Engine.NewDraft(source, o)
+	if d.report(err); err != nil {
+		return
+	}
+	d.draft, d.format = draft, o.Format
+	d.lines.reset(source)
+}
+
+// refuse gives a document up until its whole text is sent anew.
+func (d *document) refuse(size int) {
+	if d.draft != nil {
+		d.draft.Close()
+	}
+	d.draft = nil
+	d.s.show(loudWarning, "foulcase: %s has %d bytes, the most that is judged is %d: nothing is marked in it", nameOf(d.uri), size, maxDocument)
+}
+
+func (d *document) splice(start, end int, added []byte) {
+	if size := len(d.draft.Source()) + len(added) - (end - start); size > maxDocument {
+		d.refuse(size)
+		return
+	}
+	if err := d.draft.Edit(start, end, added); err != nil {
+		d.s.log(loudError, "%s: %v", d.uri, err)
+		return
+	}
+	d.lines.edit(d.draft.Source(), start, end, len(added))
+}
+
+// difference is the least stretch of old, in whole code points, whose replacement
+// makes it new.
+func difference(old, new []byte) (start, end int, added []byte) {
+	most := min(len(old), len(new))
+	for start < most && old[start] == new[start] {
+		start++
+	}
+	for start > 0 && (start < len(old) && !utf8.RuneStart(old[start]) || start < len(new) && !utf8.RuneStart(new[start])) {
+		start--
+	}
+	same := 0
+	for same < most-start && old[len(old)-1-same] == new[len(new)-1-same] {
+		same++
+	}
+	for same > 0 && !utf8.RuneStart(old[len(old)-same]) {
+		same--
+	}
+	return start, len(old) - same, new[start : len(new)-same]
+}
+
+// judge finds the marks of the document as it stands, unless they are known, and
+// publishes them. The error says why they are not known.
+func (d *document) judge(ctx context.Context) *failure {
+	if !d.stale {
+		return nil
+	}
+	ctx, ok := d.inbox.begin(ctx)
+	if !ok {
+		return failf(contentModified, "the document changes")
+	}
+	begun := time.Now()
+	marks, err := d.look(ctx)
+	ended := ctx.Err() != nil
+	changing := d.inbox.end()
+	switch {
+	case ended && changing:
+		return failf(contentModified, "the document changes")
+	case ended:
+		return failf(requestCancelled, "cancelled")
+	}
+	d.took = time.Since(begun)
+	d.stale, d.settle, d.judged = false, false, true
+	d.report(err)
+	d.keep(marks)
+	d.publish()
+	return nil
+}
+
+// look asks the draft for its marks.
+func (d *document) look(ctx context.Context) ([]foulcase.Mark, error) {
+	if d.draft == nil {
+		return nil, nil
+	}
+	var progress func(done, total int)
+	if !d.judged {
+		p := d.s.progress(nameOf(d.uri), len(d.draft.Source()))
+		defer p.end()
+		progress = p.report
+	}
+	if d.settle {
+		return d.draft.Settle(ctx, progress)
+	}
+	return d.draft.Marks(ctx, progress)
+}
+
+// report tells of what hinders a judgement, once.
+func (d *document) report(err error) {
+	now := ""
+	if err != nil {
+		now = err.Error()
+	}
+	if now != "" && now != d.trouble {
+		d.s.show(loudError, "foulcase: %s: %s", nameOf(d.uri), now)
+	}
+	d.trouble = now
+}
+
+// keep takes over the marks that do not stand.
+func (d *document) keep(marks []foulcase.Mark) {
+	d.marks = d.marks[:0]
+	for _, m := range marks {
+		if m.Part == "" && !d.letsStand(m) {
+			d.marks = append(d.marks, m)
+		}
+	}
+	items := d.appendDiagnostics(make([]byte, 0, len(d.items)+1024), d.marks)
+	if d.resultID == 0 || !bytes.Equal(items, d.items) {
+		d.items, d.resultID = items, d.s.counter.Add(1)
+	}
+}
+
+// maxStands is how many answers of the settings are kept.
+const maxStands = 10000
+
+func (d *document) letsStand(m foulcase.Mark) bool {
+	if len(d.asked.house) > 0 && d.asked.house[string(text.Fold(nil, []byte(m.Observed)))] {
+		return true
+	}
+	if d.settings == nil {
+		return false
+	}
+	key := mark{m.Kind, m.Part, m.Observed, m.Context}
+	stands, known := d.stands[key]
+	if !known {
+		if len(d.stands) >= maxStands {
+			clear(d.stands)
+		}
+		stands = d.settings.Stands(d.path, m)
+		d.stands[key] = stands
+	}
+	return stands
+}
