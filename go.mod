@@ -15,6 +15,7 @@ require (
 )
 
 require (
+	github.com/pelletier/go-toml/v2 v2.4.3 // indirect
 	golang.org/x/sys v0.50.0 // indirect
 	golang.org/x/tools v0.52.0 // indirect
 )

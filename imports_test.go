@@ -37,6 +37,7 @@ var outside = map[string][]string{
 	"github.com/agnivade/levenshtein":  {"eval"},
 	"github.com/aymanbagabas/go-udiff": {"internal/report"},
 	"github.com/clipperhouse/uax29/v2": {"internal/text"},
+	"github.com/pelletier/go-toml/v2":  {"internal/house"},
 	"github.com/spf13/pflag":           {"cmd/*"},
 	"github.com/yuin/goldmark":         {"internal/text"},
 	"golang.org/x/term":                {"cmd/*"},

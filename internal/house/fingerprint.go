@@ -11,6 +11,9 @@ import (
 	"example.org/foulcase/internal/text"
 )
 
+// fingerprintBytes is the length of a fingerprint in bytes; as digits it is twice that.
+const fingerprintBytes = 8
+
 // reach is how many words to each side of a mark its fingerprint takes in.
 const reach = 3
 
@@ -20,9 +23,9 @@ const reach = 3
 // path is spelled. Marks alike in all of these share it.
 func Fingerprint(path string, m foulcase.Mark) string {
 	before, after := surroundings(m)
-	parts := slices.Concat([]string{Name(path), m.Part, m.Kind.String(), fold(m.Observed)}, before, []string{""}, after)
+	parts := slices.Concat([]string{Name(path), m.Part, m.Kind.String(), formOf(m.Observed)}, before, []string{""}, after)
 	sum := sha256.Sum256([]byte(strings.Join(parts, "\x00")))
-	return hex.EncodeToString(sum[:8])
+	return hex.EncodeToString(sum[:fingerprintBytes])
 }
 
 // surroundings are the nearest words before and after a mark, folded. Where its
@@ -48,5 +51,8 @@ func wordsOf(s string) []string {
 		return !unicode.IsLetter(r) && !unicode.IsNumber(r) && !unicode.IsMark(r) && r != '\''
 	})
 }
+
+// formOf folds what was observed, however its lines were broken.
+func formOf(observed string) string { return fold(strings.Join(strings.Fields(observed), " ")) }
 
 func fold(s string) string { return string(text.Fold(nil, []byte(s))) }

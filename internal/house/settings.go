@@ -1,38 +1,154 @@
 // Package house holds what an organisation, or one user, settled about its
 // documents: the settings of foulcase.toml, the lists of house words, and the
-// decisions about marks. It also tells marks apart from run to run, by their
-// fingerprints.
+// decisions about marks. It also knows a mark again from run to run, by its
+// fingerprint.
 //
-// Settings of one document come from five places; the first that has a word on it wins: the
-// command's flags, the environment, the project's foulcase.toml, found upwards
-// from the document's folder, the user's own, and the defaults.
+// The settings of a document come from five places; the first that sets a key
+// wins: the command's flags, the environment, the project's foulcase.toml, found
+// upwards from the document's folder, the user's own, and the defaults.
 package house
 
-import "example.org/foulcase"
+import (
+	"cmp"
+	"errors"
+	"path/filepath"
+	"slices"
+	"strconv"
+
+	"example.org/foulcase"
+)
 
 // Settings are what holds for the documents of one folder. They are safe for
 // concurrent use.
-type Settings struct{}
+type Settings struct {
+	values []Value // in the order of Keys; of what adds up, the strongest place first
+	files  []string
+	words  *vocabulary
+	stets  *book
+}
 
-// Load reads the settings of one file, with nothing before and behind it but
-// the defaults. The path "" stands for a file that sets nothing.
-func Load(path string) (*Settings, error) { return &Settings{}, nil }
+// Load reads the settings of one file, with nothing beside it but the defaults.
+// The path "" stands for a file that sets nothing.
+func Load(path string) (*Settings, error) {
+	if path != "" {
+		path = absolute(path)
+	}
+	return NewResolver(Sources{Config: None, Getenv: func(string) string { return "" }}).load(path)
+}
+
+// Values lists every value and who says so, with those of the defaults, in the order of
+// Keys.
+func (s *Settings) Values() []Value {
+	var all []Value
+	for _, k := range Keys() {
+		n := len(all)
+		for _, v := range s.values {
+			if v.Key == k.Name {
+				all = append(all, v)
+			}
+		}
+		if len(all) == n {
+			all = append(all, Value{Key: k.Name, Text: k.Default, Origin: "default"})
+		}
+	}
+	return all
+}
+
+// of returns the values of a key that were set.
+func (s *Settings) of(key string) []string {
+	var all []string
+	for _, v := range s.values {
+		if v.Key == key {
+			all = append(all, v.Text)
+		}
+	}
+	return all
+}
+
+// Get returns the value of a key of one, "" when nobody sets it.
+func (s *Settings) Get(key string) string {
+	if all := s.of(key); len(all) > 0 {
+		return all[0]
+	}
+	return ""
+}
 
 // Options is how the document at path is to be judged.
 func (s *Settings) Options(path string) foulcase.Options {
+	o := foulcase.Options{
+		Format:   s.format(path),
+		Fields:   s.of("fields"),
+		Encoding: s.Get("encoding"),
+		House:    s.words.get(),
+	}
+	// Both were checked when they were set.
+	o.Variety, _ = foulcase.ParseVariety(cmp.Or(s.Get("variety"), "any"))
+	o.Budget, _ = strconv.ParseFloat(cmp.Or(s.Get("budget"), "0"), 64)
+	return o
+}
+
+// format is that of the first glob that matches, else that of the extension.
+func (s *Settings) format(path string) string {
+	for _, v := range s.values {
+		if v.Key == "formats" && matches(v.Glob, v.dir, absolute(path)) {
+			return v.Text
+		}
+	}
 	format, _ := foulcase.FormatOf(path)
-	return foulcase.Options{Format: format}
+	return format
+}
+
+// HasFormat tells whether a document's format is known, by a glob or by its extension.
+func (s *Settings) HasFormat(path string) bool {
+	_, known := foulcase.FormatOf(path)
+	return known || slices.ContainsFunc(s.values, func(v Value) bool {
+		return v.Key == "formats" && matches(v.Glob, v.dir, absolute(path))
+	})
+}
+
+// Ignores tells whether a file is to be passed over when a folder that holds it is read.
+func (s *Settings) Ignores(path string) bool {
+	return slices.ContainsFunc(s.values, func(v Value) bool {
+		return v.Key == "ignore" && matches(v.Text, v.dir, absolute(path))
+	})
+}
+
+func absolute(path string) string {
+	if abs, err := filepath.Abs(path); err == nil {
+		return abs
+	}
+	return path
 }
 
 // Stands tells whether someone decided that a mark of the document at path stand.
-func (s *Settings) Stands(path string, m foulcase.Mark) bool { return false }
+func (s *Settings) Stands(path string, m foulcase.Mark) bool { return s.stets.stands(path, m) }
 
-// AddWord adds a house word and returns the list it was added to.
-func (s *Settings) AddWord(word string) (file string, err error) { return "", nil }
+// AddWord adds a house word, or an entry of another kind, to the list that was named last, or
+// to the user's own where none was named. It returns that list, and an error when the entry
+// contradicts another or cannot be written. From then on Options heeds the word.
+func (s *Settings) AddWord(word string) (file string, err error) { return s.words.add(word) }
 
-// Record keeps a decision.
-func (s *Settings) Record(d Decision) error { return nil }
+// Record keeps a decision, and from then on Stands heeds it. Decisions may be recorded by
+// several programs at once.
+func (s *Settings) Record(d Decision) error {
+	if s.stets.path == "" {
+		return errors.New("there is no file for decisions: name one with --stets, or as stets in " + FileName)
+	}
+	return s.stets.record(d)
+}
+
+// Decisions lists what was decided, each once, in order.
+func (s *Settings) Decisions() []Decision { return s.stets.list() }
+
+// StetFile is where Record writes; "" when there is no such file.
+func (s *Settings) StetFile() string { return s.stets.path }
 
 // Files lists the files that the settings were read from, or would be if they
 // were there, for a program that watches them.
-func (s *Settings) Files() []string { return nil }
+func (s *Settings) Files() []string {
+	all := slices.Concat(s.files, s.words.paths)
+	if s.stets.path != "" {
+		all = append(all, s.stets.path)
+	}
+	return all
+}
