@@ -276,6 +276,7 @@ func (d *Draft) decided() []Mark {
 	d.rate = d.e.slipRate(d.asked)
 	d.rate.settle(words, d.odds)
 	d.floor = d.floorOf(words, d.pending)
+	d.said = directivesOf(d.source)
 
 	var marks []Mark
 	for _, b := range d.blocks {
@@ -283,8 +284,12 @@ func (d *Draft) decided() []Mark {
 		for i := range b.sentences {
 			s := &b.sentences[i]
 			for _, c := range s.kept {
-				if m, ok := d.passed(c); ok {
-					m.place(b.Block, &places, s.start+c.start, s.start+c.end)
+				m, ok := d.passed(c)
+				if !ok {
+					continue
+				}
+				m.place(b.Block, &places, s.start+c.start, s.start+c.end)
+				if !d.said.stand(m.Offset, m.Offset+m.Length, m.Observed) {
 					marks = append(marks, m)
 				}
 			}

@@ -215,6 +215,36 @@ func TestDraftTakesOptions(t *testing.T) {
 	}
 }
 
+// TestDraftHeedsTheHouse: what the writer lets stand, and what the house has written
+// otherwise, count in a draft as in Proof.
+func TestDraftHeedsTheHouse(t *testing.T) {
+	house, err := foulcase.ReadHouse("words", strings.NewReader("pilot boat, not pilotboat\n"))
+	if err != nil {
+		t.Fatal(err)
+	}
+	document := "The pilotboat recieved a call.\n\n<!-- foulcase: stet recieved -->\n\nThe pilotboat recieved a call.\n"
+	o := foulcase.Options{Format: "markdown", House: house}
+	d := draft(t, document, o)
+	marks := now(t, d, nil)
+	sameMarks(t, "opened", marks, proof(t, document, o))
+	rules := 0
+	for _, m := range marks {
+		if m.Rule == foulcase.RuleHouse && m.Corrections[0].Text == "pilot boat" {
+			rules++
+		}
+	}
+	if len(marks) != 3 || rules != 2 {
+		t.Errorf("marks %+v", marks)
+	}
+	at := strings.Index(document, "<!--")
+	if err := d.Edit(at, at+len("<!-- foulcase: stet recieved -->"), nil); err != nil {
+		t.Fatal(err)
+	}
+	if marks := now(t, d, nil); len(marks) != 4 {
+		t.Errorf("without the comment: %+v", marks)
+	}
+}
+
 func TestDraftRefuses(t *testing.T) {
 	if _, err := engine().NewDraft(nil, foulcase.Options{Format: "parchment"}); err == nil {
 		t.Error("a draft of an unknown format")

@@ -72,6 +72,10 @@ type Mark struct {
 	// ByHand says that no program should put a correction in its place: markup stands
 	// inside the mark, or the document has no spelling for it there.
 	ByHand bool `json:"by_hand,omitempty"`
-	// Rule is "house" when a list of house words has it written so, whatever the models say; "" else.
+	// Rule is RuleHouse when a list of house words has it written otherwise, whatever the
+	// models say; "" else.
 	Rule string `json:"rule,omitempty"`
 }
+
+// RuleHouse is the Mark.Rule of what the house always writes otherwise.
+const RuleHouse = "house"

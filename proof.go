@@ -38,6 +38,8 @@ func (e *Engine) Proof(ctx context.Context, r io.Reader, o Options) iter.Seq2[Ma
 		}
 		d := e.newDocument(o)
 		defer e.give(d.judge)
+		d.said = newDirectives()
+		r = d.said.read(r)
 		for blocks, err := range windows(text.Blocks(r, format, o.reading())) {
 			d.count(blocks)
 			if err := d.weigh(ctx, blocks); err != nil {
@@ -63,6 +65,7 @@ type document struct {
 	rate   slipRate
 	limits thresholds
 	doubts bool
+	said   *directives // of the source, as far as it was read
 	// Of the window at hand:
 	words   int
 	odds    []float64 // of all findings, nats
@@ -134,6 +137,9 @@ func sizeOf(blocks []*text.Block) int {
 func (d *document) floorOf(words int, all []pending) float64 {
 	var p []float64
 	for _, c := range all {
+		if c.mark.Rule != "" {
+			continue
+		}
 		if v := logistic(c.odds + d.rate.shift); v >= d.limits.query[c.mark.Kind] {
 			p = append(p, v)
 		}
@@ -142,13 +148,16 @@ func (d *document) floorOf(words int, all []pending) float64 {
 }
 
 // keep appends the log-odds of a sentence's findings to odds, and to kept those
-// that may be reported however often the writer slips.
+// that may be reported however often the writer slips. What the house has written
+// otherwise is no sign of how often that is.
 func (d *document) keep(b *text.Block, places *text.Places, found []finding, odds []float64, kept []pending) ([]float64, []pending) {
 	for _, f := range found {
 		if math.IsInf(f.odds, -1) {
 			continue
 		}
-		odds = append(odds, f.odds)
+		if f.preferred == nil {
+			odds = append(odds, f.odds)
+		}
 		if logistic(f.odds+d.rate.mostShift()) < d.least(f.kind) {
 			continue
 		}
@@ -172,7 +181,8 @@ func (d *document) least(k Kind) float64 {
 func (d *document) decide() iter.Seq[Mark] {
 	return func(yield func(Mark) bool) {
 		for _, c := range d.pending {
-			if m, ok := d.passed(c); ok && !yield(m) {
+			m, ok := d.passed(c)
+			if ok && !d.said.stand(m.Offset, m.Offset+m.Length, m.Observed) && !yield(m) {
 				return
 			}
 		}
@@ -182,15 +192,16 @@ func (d *document) decide() iter.Seq[Mark] {
 // passed returns a finding as a mark, if the limits let it pass.
 func (d *document) passed(c pending) (Mark, bool) {
 	m := c.mark
-	m.P = logistic(c.odds + d.rate.shift)
-	if m.P < d.least(m.Kind) {
-		return m, false
-	}
-	if m.Grade = d.limits.grade(m.Kind, m.P); m.P < d.floor {
-		m.Grade = GradeDoubt
-	}
-	if m.Grade == GradeDoubt && !d.doubts {
-		return m, false
+	if m.Rule != "" {
+		m.P, m.Grade = preferredP, GradeMark
+	} else {
+		m.P = logistic(c.odds + d.rate.shift)
+		if m.Grade = d.limits.grade(m.Kind, m.P); m.P < d.floor {
+			m.Grade = GradeDoubt
+		}
+		if m.P < d.least(m.Kind) || m.Grade == GradeDoubt && !d.doubts {
+			return m, false
+		}
 	}
 	m.Corrections = slices.Clone(m.Corrections)
 	for i := range m.Corrections {
@@ -296,6 +307,9 @@ func (j *judge) mark(b *text.Block, places *text.Places, f finding) Mark {
 		if m.ByHand = m.ByHand || !ok; ok && spelled != c.Text {
 			c.Source = spelled
 		}
+	}
+	if f.preferred != nil {
+		m.Rule = RuleHouse
 	}
 	m.place(b, places, start, end)
 	return m
