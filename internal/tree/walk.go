@@ -66,9 +66,13 @@ func (w *walk) walk(dir place, rules *ignores) {
 	}
 }
 
-// visit decides about one name of a folder.
+// visit decides about one name of a folder. What a glob does not stand for is not
+// counted as passed over.
 func (w *walk) visit(at place, d fs.DirEntry, rules *ignores) {
 	skipped := &w.finder.skipped
+	if w.wanted != nil && !w.wanted(at.path) {
+		skipped = new(Skipped)
+	}
 	switch {
 	case d.Name() == ".git": // which nobody expects to be read
 	case strings.HasPrefix(d.Name(), ".") && !w.names(at.path):
