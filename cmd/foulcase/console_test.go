@@ -10,6 +10,8 @@ import (
 	"syscall"
 	"testing"
 	"time"
+
+	"example.org/foulcase/internal/report"
 )
 
 // failing is a stream that nothing can be written to.
@@ -82,7 +84,7 @@ func TestChoosePalette(t *testing.T) {
 		color    string
 		terminal bool
 		env      string
-		want     palette
+		want     report.Palette
 	}{
 		{"auto", true, "", true},
 		{"auto", false, "", false},

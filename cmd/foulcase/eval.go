@@ -12,6 +12,7 @@ import (
 
 	"example.org/foulcase"
 	"example.org/foulcase/eval"
+	"example.org/foulcase/internal/report"
 	"github.com/spf13/pflag"
 )
 
@@ -153,7 +154,7 @@ func (m *measurement) print(w io.Writer, data string, r *eval.Report, o eval.Ove
 		if share := o.Share(); o.Recorded {
 			fitted = &share
 		}
-		enc := jsonLines(w)
+		enc := report.JSONLines(w)
 		for _, metric := range r.Metrics {
 			if err := enc.Encode(metricObject{r.Task, data, m.result.Model, metric, fitted}); err != nil {
 				return err

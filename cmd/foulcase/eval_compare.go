@@ -7,6 +7,7 @@ import (
 	"strings"
 
 	"example.org/foulcase/eval"
+	"example.org/foulcase/internal/report"
 	"github.com/spf13/pflag"
 )
 
@@ -71,7 +72,7 @@ func (f *compareFlags) run(c *console, paths []string) (status, error) {
 		return trouble, err
 	}
 	if f.emit.value == "jsonl" {
-		err = jsonLines(c.out).Encode(comparison)
+		err = report.JSONLines(c.out).Encode(comparison)
 	} else {
 		err = f.print(c.out, comparison, paths, results)
 	}
@@ -124,8 +125,8 @@ func (f *compareFlags) list(w io.Writer, how string, items []eval.Changed) {
 	for _, item := range items[:max(0, min(f.show, len(items)))] {
 		wanted := ""
 		if item.Wanted != "" {
-			wanted = " for " + quoted(item.Wanted)
+			wanted = " for " + report.Quoted(item.Wanted)
 		}
-		fmt.Fprintf(w, "  %-6s  %s:%d: %s%s: %s -> %s\n", how, item.Data, item.Line, quoted(item.Observed), wanted, item.A, item.B)
+		fmt.Fprintf(w, "  %-6s  %s:%d: %s%s: %s -> %s\n", how, item.Data, item.Line, report.Quoted(item.Observed), wanted, item.A, item.B)
 	}
 }

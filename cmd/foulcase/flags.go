@@ -15,10 +15,17 @@ import (
 type choice struct {
 	value string
 	among []string
+	label string // stands for the words in the help, where they are many
 }
 
 func (c *choice) String() string { return c.value }
-func (c *choice) Type() string   { return strings.Join(c.among, "|") }
+
+func (c *choice) Type() string {
+	if c.label != "" {
+		return c.label
+	}
+	return strings.Join(c.among, "|")
+}
 
 func (c *choice) Set(s string) error {
 	if !slices.Contains(c.among, s) {
@@ -30,7 +37,12 @@ func (c *choice) Set(s string) error {
 
 // choiceFlag declares a flag whose default is the first of the words.
 func choiceFlag(fs *pflag.FlagSet, name, usage string, among ...string) *choice {
-	c := &choice{among[0], among}
+	return namedChoiceFlag(fs, name, "", usage, among...)
+}
+
+// namedChoiceFlag is choiceFlag with a label for the words in the help.
+func namedChoiceFlag(fs *pflag.FlagSet, name, label, usage string, among ...string) *choice {
+	c := &choice{among[0], among, label}
 	fs.Var(c, name, usage)
 	return c
 }

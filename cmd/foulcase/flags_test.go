@@ -61,7 +61,7 @@ func TestFlagValues(t *testing.T) {
 	var n count
 	var r rate
 	var lists wordLists
-	c := &choice{"a", []string{"a", "b"}}
+	c := &choice{value: "a", among: []string{"a", "b"}}
 	for _, test := range []struct {
 		flag interface{ Set(string) error }
 		in   string

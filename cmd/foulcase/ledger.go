@@ -5,6 +5,7 @@ import (
 	"strings"
 
 	"example.org/foulcase"
+	"example.org/foulcase/internal/report"
 	"github.com/spf13/pflag"
 )
 
@@ -58,7 +59,7 @@ func declareLedger(fs *pflag.FlagSet) action {
 
 func printLedger(w io.Writer, l foulcase.Ledger, emit string) error {
 	if emit == "jsonl" {
-		return jsonLines(w).Encode(l)
+		return report.JSONLines(w).Encode(l)
 	}
 	_, err := io.WriteString(w, l.String())
 	return err

@@ -9,6 +9,7 @@ import (
 	"example.org/foulcase"
 	"example.org/foulcase/candidates/lexicon"
 	"example.org/foulcase/internal/modelfile"
+	"example.org/foulcase/internal/report"
 	"example.org/foulcase/lm"
 	"example.org/foulcase/lm/train"
 	"github.com/spf13/pflag"
@@ -112,7 +113,7 @@ func printMeasurement(w io.Writer, m *train.Measurement, emit string) error {
 		orders = orders[:len(orders)-1]
 	}
 	if emit == "jsonl" {
-		return jsonLines(w).Encode(measurementObject{
+		return report.JSONLines(w).Encode(measurementObject{
 			m.Sentences, m.Tokens, m.Unseen, m.LogProb, finite(m.Perplexity()), finite(m.PerplexitySeen()), orders,
 		})
 	}

@@ -5,6 +5,7 @@ import (
 	"strings"
 
 	"example.org/foulcase"
+	"example.org/foulcase/internal/report"
 	"github.com/spf13/pflag"
 )
 
@@ -37,7 +38,7 @@ func declareModelShow(fs *pflag.FlagSet) action {
 		}
 		defer e.Close()
 		if emit.value == "jsonl" {
-			return clean, jsonLines(c.out).Encode(modelObject{e.Hash(), e.Describe(), e.Card()})
+			return clean, report.JSONLines(c.out).Encode(modelObject{e.Hash(), e.Describe(), e.Card()})
 		}
 		_, err = fmt.Fprintf(c.out, "model %s\n\n%s\n%s", e.Hash(), sectionTable(e.Describe()), e.Card())
 		return clean, err

@@ -1,13 +1,10 @@
 package main
 
 import (
-	"bytes"
-	"context"
-	"io"
-	"os"
 	"slices"
 
-	"example.org/foulcase"
+	"example.org/foulcase/internal/charset"
+	"example.org/foulcase/internal/report"
 	"github.com/spf13/pflag"
 )
 
@@ -25,153 +22,127 @@ Reads files, folders (every file of a known format in them) or standard input
 A mark is sure enough to act on; a query is a doubt to put to the author. The
 kinds are nonword, realword (a word, but not the one meant), runon, split and
 repeat. Lines and columns count from 1, columns in code points. p is the
-probability that this is an error. No file is ever changed.
+probability that this is an error.
 
 --emit jsonl prints an object a finding: path, line, column, offset and length
 (bytes of the file), observed, kind, grade, p, corrections ({text, p}, best
-first) and context.`,
+first) and context. --emit sarif is SARIF 2.1.0; diff is a unified diff that
+puts the marks right, for git apply or patch -p1; annotations are the workflow
+commands of hosted CI; html is a page of the documents with their marks.
+
+--apply puts the first correction of each mark into the files and tells so;
+queries, and marks with markup inside, are left to do by hand and printed. A
+file that was changed meanwhile, or that a link leads to out of its folder, is
+not written. Standard input comes out corrected on standard output. The exit
+code is 1 when something was marked, put right or not.`,
 		examples: `
 			foulcase proof --house testdata/pilots/house-words.txt testdata/pilots/papers
-			foulcase proof --as markdown --emit jsonl < testdata/pilots/papers/defect-report.md`,
+			foulcase proof --as markdown --emit jsonl < testdata/pilots/papers/defect-report.md
+			foulcase proof --apply --dry-run testdata/pilots/papers/watch-log.txt`,
 		declare: declareProof,
 	}
 }
 
 // proofFlags are what the user asked of proof.
 type proofFlags struct {
-	engine engineFlags
-	format *choice
-	emit   *choice
-	budget rate
-	jobs   *count
-	color  *choice
-	name   string
+	engine   engineFlags
+	tree     treeFlags
+	format   *choice
+	encoding string
+	fields   []string
+	name     string
+	emit     *choice
+	apply    bool
+	dryRun   bool
+	formats  bool
+	budget   rate
+	jobs     *count
+	color    *choice
 }
 
 func declareProof(fs *pflag.FlagSet) action {
 	f := new(proofFlags)
 	f.engine.declare(fs)
-	f.format = choiceFlag(fs, "as", "format of the documents; auto goes by the extension",
-		append([]string{"auto"}, formatNames()...)...)
-	f.emit = emitFlag(fs)
 	fs.Var(&f.budget, "budget", "false alarms to bear in 1,000 words of good text (default: the model's own)")
+	f.tree.declare(fs)
+	f.format = namedChoiceFlag(fs, "as", "FORMAT", "format of the documents, one of --formats; auto goes by the file name",
+		append([]string{"auto"}, formatNames()...)...)
+	fs.StringVar(&f.encoding, "encoding", "", "`NAME` of the documents' encoding, such as windows-1252 (default: UTF-8, or UTF-16 by its mark)")
+	fs.StringArrayVar(&f.fields, "field", nil, "`NAME` or number of a column or member to read of records; may be repeated")
+	fs.StringVar(&f.name, "name", standardInput, "`PATH` that standard input goes by; its extension tells the format")
+	f.emit = namedChoiceFlag(fs, "emit", "FORM", "how results are printed: "+orList(report.Names()), report.Names()...)
+	fs.BoolVar(&f.apply, "apply", false, "put the marks right in the files")
+	fs.BoolVar(&f.dryRun, "dry-run", false, "with --apply: print the diff of what it would do")
+	fs.BoolVar(&f.formats, "formats", false, "list the formats of documents")
 	f.jobs = jobsFlag(fs)
 	f.color = colorFlag(fs)
-	fs.StringVar(&f.name, "name", standardInput, "`PATH` that standard input goes by; its extension tells the format")
 	return f.run
 }
 
 func (f *proofFlags) run(c *console, operands []string) (status, error) {
-	e, o, err := f.engine.open()
+	if f.formats {
+		return clean, printFormats(c.out, f.emit.value)
+	}
+	p, err := f.open(c, operands)
 	if err != nil {
 		return trouble, err
 	}
-	defer e.Close()
-	o.Budget = float64(f.budget)
-
-	inputs := findInputs(operands, c.in, f.name)
-	if !slices.ContainsFunc(inputs, input.isTyped) {
-		c.progress.Set("proof", totalSize(inputs))
+	defer p.engine.Close()
+	if !slices.ContainsFunc(p.documents.inputs, input.isTyped) {
+		c.progress.Set("proof", totalSize(p.documents.inputs))
 	}
-	p := &proofreader{
-		engine:   e,
-		options:  o,
-		flags:    f,
-		palette:  choosePalette(f.color.value, c.out.terminal),
-		progress: c.progress,
+	var marks int
+	switch {
+	case f.apply && !f.dryRun:
+		marks, err = p.applyAll(c)
+	case len(p.documents.inputs) == 1:
+		marks, err = p.stream(c, p.documents.inputs[0])
+	default:
+		marks, err = p.reportAll(c)
 	}
-	if len(inputs) == 1 {
-		return p.stream(c, inputs[0])
+	if err == nil {
+		err = p.documents.finish(c)
 	}
-	return p.all(c, inputs)
+	return statusOf(marks), err
 }
 
-// proofreader reads documents and prints their marks. It is safe for
-// concurrent use.
-type proofreader struct {
-	engine   *foulcase.Engine
-	options  foulcase.Options
-	flags    *proofFlags
-	palette  palette
-	progress *progress
-}
-
-// stream proofreads one document and hands each mark on as it is found.
-func (p *proofreader) stream(c *console, in input) (status, error) {
-	n, err := p.proof(context.Background(), in, c.out, c.out.Flush)
-	if err != nil && c.out.err == nil {
-		c.complain(err)
+// open readies what proofreading takes. The caller closes the engine.
+func (f *proofFlags) open(c *console, operands []string) (*proofreader, error) {
+	if err := f.check(); err != nil {
+		return nil, err
 	}
-	return statusOf(n), c.out.err
-}
-
-// report is the outcome of one document.
-type report struct {
-	text  []byte
-	marks int
-	err   error
-}
-
-// all proofreads documents several at a time and prints their marks in the
-// documents' order. What is wrong with one document is reported there and does
-// not stop the others.
-func (p *proofreader) all(c *console, inputs []input) (status, error) {
-	ctx, cancel := context.WithCancel(context.Background())
-	defer cancel()
-	total := 0
-	reports := ordered(len(inputs), int(*p.flags.jobs), func(i int) report {
-		var text bytes.Buffer
-		n, err := p.proof(ctx, inputs[i], &text, func() error { return nil })
-		return report{text.Bytes(), n, err}
-	})
-	for _, r := range reports {
-		total += r.marks
-		c.out.Write(r.text)
-		if err := c.out.Flush(); err != nil {
-			cancel()
-			return statusOf(total), err
-		}
-		if r.err != nil {
-			c.complain(r.err)
-		}
-	}
-	return statusOf(total), nil
-}
-
-// proof prints the marks of one document and returns their number. Flush is
-// called after each.
-func (p *proofreader) proof(ctx context.Context, in input, w io.Writer, flush func() error) (marks int, err error) {
-	r, err := in.open()
+	e, o, err := f.engine.open()
 	if err != nil {
-		return 0, err
+		return nil, err
 	}
-	defer r.Close()
-	o := p.options
-	if o.Format = p.flags.format.value; o.Format == "auto" {
-		o.Format, _ = foulcase.FormatOf(in.path)
+	p := &proofreader{engine: e, options: o, flags: f, operands: operands, progress: c.progress}
+	if p.documents, err = f.tree.find(c, operands, search{stdinName: f.name, anyBytes: f.encoding != ""}); err == nil {
+		p.form, err = report.New(f.emit.value, report.Settings{
+			Palette: choosePalette(f.color.value, c.out.terminal),
+			Model:   e.Hash(),
+		})
 	}
-	print := newMarkPrinter(w, p.flags.emit.value, in.path, p.palette)
-	for m, err := range p.engine.Proof(ctx, watched{r, p.progress}, o) {
-		if err != nil {
-			return marks, &os.PathError{Op: "read", Path: in.path, Err: cause(err)}
-		}
-		marks++
-		if err := print(m); err != nil {
-			return marks, err
-		}
-		if err := flush(); err != nil {
-			return marks, err
-		}
+	if err != nil {
+		e.Close()
+		return nil, err
 	}
-	return marks, nil
+	return p, nil
 }
 
-func formatNames() []string {
-	var names []string
-	for _, f := range foulcase.Formats() {
-		names = append(names, f.Name)
+// check refuses flags that do not go together, and makes a dry run a diff.
+func (f *proofFlags) check() error {
+	if _, err := charset.Find(f.encoding); err != nil {
+		return misusef("--encoding: %v", err)
 	}
-	return names
+	switch {
+	case f.dryRun && !f.apply:
+		return misusef("--dry-run says how --apply is done; give that too")
+	case f.apply && f.emit.value != "lines" && !(f.dryRun && f.emit.value == "diff"):
+		return misusef("--apply tells what it does in lines; leave --emit %s to another run", f.emit.value)
+	case f.dryRun:
+		f.emit.value = "diff"
+	}
+	return nil
 }
 
 func statusOf(marks int) status {

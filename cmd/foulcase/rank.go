@@ -8,6 +8,7 @@ import (
 	"strings"
 
 	"example.org/foulcase"
+	"example.org/foulcase/internal/report"
 	"github.com/spf13/pflag"
 )
 
@@ -74,7 +75,7 @@ func (f *rankFlags) run(c *console, words []string) (status, error) {
 
 func (f *rankFlags) printer(c *console) func(foulcase.Ranking) error {
 	if f.emit.value == "jsonl" {
-		enc := jsonLines(c.out)
+		enc := report.JSONLines(c.out)
 		return func(r foulcase.Ranking) error { return enc.Encode(r) }
 	}
 	p := choosePalette(f.color.value, c.out.terminal)
@@ -85,7 +86,7 @@ func (f *rankFlags) printer(c *console) func(foulcase.Ranking) error {
 }
 
 // rankingLines prints a word and, under it, a line for each candidate.
-func rankingLines(r foulcase.Ranking, p palette) string {
+func rankingLines(r foulcase.Ranking, p report.Palette) string {
 	note := "not in the lexicon"
 	if r.Known {
 		note = "in the lexicon"
@@ -95,14 +96,14 @@ func rankingLines(r foulcase.Ranking, p palette) string {
 		width = max(width, len([]rune(candidate.Text)))
 	}
 	var b strings.Builder
-	fmt.Fprintf(&b, "%s %s\n", p.paint(bold, quoted(r.Word)), p.paint(dim, note))
+	fmt.Fprintf(&b, "%s %s\n", p.Paint(report.Bold, report.Quoted(r.Word)), p.Paint(report.Dim, note))
 	for i, candidate := range r.Candidates {
 		text := fmt.Sprintf("%-*s", width, candidate.Text)
 		if i == 0 {
-			text = p.paint(green, text)
+			text = p.Paint(report.Green, text)
 		}
 		fmt.Fprintf(&b, "  %s  %.4f  %s\n", text, candidate.P,
-			p.paint(dim, fmt.Sprintf("channel %7.2f  lm %7.2f", candidate.Channel, candidate.LM)))
+			p.Paint(report.Dim, fmt.Sprintf("channel %7.2f  lm %7.2f", candidate.Channel, candidate.LM)))
 	}
 	return b.String()
 }

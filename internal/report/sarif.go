@@ -126,16 +126,9 @@ func fixesOf(artifact sarifArtifact, m foulcase.Mark) []sarifFix {
 
 // sarifRules are the kinds, at the places of their values.
 func sarifRules() []sarifRule {
-	about := [...]string{
-		foulcase.Nonword:  "A form that is no word.",
-		foulcase.Realword: "A word, but not the one meant.",
-		foulcase.Runon:    "A space is missing between words.",
-		foulcase.Split:    "A space stands inside a word.",
-		foulcase.Repeat:   "A word is written twice.",
-	}
 	var rules []sarifRule
 	for _, k := range foulcase.Kinds() {
-		rules = append(rules, sarifRule{ID: k.String(), Short: sarifText{about[k]}})
+		rules = append(rules, sarifRule{ID: k.String(), Short: sarifText{kindAbout[k]}})
 	}
 	return rules
 }

@@ -35,3 +35,12 @@ func wording(m foulcase.Mark) string {
 	}
 	return fmt.Sprintf("%s: %s %s (p %s)", Quoted(m.Observed), how, strings.Join(texts, ", "), Probability(m.P))
 }
+
+// kindAbout says what is wrong with a mark of each kind.
+var kindAbout = [...]string{
+	foulcase.Nonword:  "A form that is no word.",
+	foulcase.Realword: "A word, but not the one meant.",
+	foulcase.Runon:    "A space is missing between words.",
+	foulcase.Split:    "A space stands inside a word.",
+	foulcase.Repeat:   "A word is written twice.",
+}
