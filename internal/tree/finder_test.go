@@ -70,7 +70,7 @@ func TestFinder(t *testing.T) {
 		{"no rules", Options{NoIgnore: true}, []string{"."}, []string{
 			"a.txt", "b.tmp.txt", "drafts/d.txt", "inner/b.tmp.txt", "inner/h.txt",
 			"keep.tmp.txt", "log/b.tmp.txt", "log/g.md", "log/old/f.txt", "private.txt",
-		}, Skipped{Hidden: 4, Foreign: 3, Binary: 1}},
+		}, Skipped{Hidden: 5, Foreign: 3, Binary: 1}},
 		{"named", Options{}, []string{"private.txt", "binary.txt", "picture.png", "gone.txt"}, []string{"private.txt", "binary.txt", "picture.png", "!gone.txt"}, Skipped{}},
 		{"rules from above", Options{}, []string{"log"}, []string{"log/b.tmp.txt", "log/g.md"}, Skipped{Ignored: 1, Hidden: 1}},
 		{"an ignored folder by name", Options{}, []string{"drafts"}, []string{"drafts/d.txt"}, Skipped{}},
