@@ -66,10 +66,17 @@ func (c *codeReader) afterLeader(p codePiece) stretch {
 	for from < p.to && c.source[from] == sign {
 		from++
 	}
-	if from < p.to && bytes.IndexByte([]byte("!'|^<"), c.source[from]) >= 0 && (from+1 == p.to || isSpaceByte(c.source[from+1])) {
+	begin := from
+	for _, signs := range []string{"!'|^<", "|^"} { // at once, or behind a blank
+		if from < p.to && strings.IndexByte(signs, c.source[from]) >= 0 && (from+1 == p.to || isSpaceByte(c.source[from+1])) {
+			return stretch{from + 1, p.to}
+		}
+		if from == p.to || c.source[from] != ' ' {
+			break
+		}
 		from++
 	}
-	return stretch{from, p.to}
+	return stretch{begin, p.to}
 }
 
 // finishComment reads the comment at hand.
@@ -131,9 +138,11 @@ func (c *codeReader) add(p *prose, in *enclosure) {
 // would end it, nor has a raw string; what might be read as a format verb,
 // interpolation or escape is spelled in none.
 func (e *enclosure) spell(words string) (string, bool) {
-	if e.role == remark || e.role == docstring {
-		ends := strings.Contains(words, e.close) || e.nested && strings.Contains(words, e.open)
-		return words, !ends && !(e.role == docstring && strings.ContainsAny(words, `"'\`) && strings.ContainsAny(words, e.close[:1]+`\`))
+	if e.role == remark {
+		return words, !strings.Contains(words, e.close) && !strings.Contains(words, e.open)
+	}
+	if e.role == docstring {
+		return words, !strings.ContainsAny(words, e.close[:1]+`\`)
 	}
 	mark := e.close[:1]
 	switch {

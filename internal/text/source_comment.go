@@ -55,6 +55,7 @@ func (r *commentReader) line(l stretch, first bool) {
 		r.finish()
 		return
 	}
+	r.members = r.members && columns(r.source[l.from:from]) > r.margin
 	skipped, whole := docTag(line, r.members)
 	if whole {
 		r.finish()
@@ -63,7 +64,7 @@ func (r *commentReader) line(l stretch, first bool) {
 	if skipped > 0 || listMark(line) {
 		r.finish()
 	}
-	r.members = namesFollow(line) || r.members && columns(r.source[l.from:from]) > r.margin
+	r.members = r.members || namesFollow(line)
 	r.inline(from+skipped, to)
 	r.prose.lineBreak(l.to)
 }

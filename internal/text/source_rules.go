@@ -2,6 +2,7 @@ package text
 
 import (
 	"bytes"
+	"slices"
 	"unicode"
 	"unicode/utf8"
 )
@@ -14,7 +15,8 @@ import (
 //     its blanks is no plain word; or it begins with an assignment.
 //   - A tag names what the words behind it are about; see docTag.
 //   - A string is prose when it has two plain words or more, these are two thirds
-//     of what stands between its blanks, and it is no query or pattern.
+//     of what has letters or digits between its blanks, and it is no query or
+//     pattern.
 //
 // A plain word is letters alone, with apostrophes inside, less quotation marks and
 // brackets around it and punctuation behind it.
@@ -34,9 +36,9 @@ func directive(line []byte, attached bool) bool {
 	head := fields[0]
 	switch {
 	case len(fields) == 1:
-		return !plain(head) || attached && len(line) > 1 && isLower(rune(line[0]))
+		return !plain(head) || head[len(head)-1] == ';' || attached && len(line) > 1 && isLower(rune(line[0]))
 	case attached && bytes.IndexByte([]byte("!+#@%"), head[0]) >= 0 && len(head) > 1,
-		bytes.HasPrefix(head, []byte("#!")), bytes.HasPrefix(head, []byte("!/")),
+		head[0] == '+' && len(head) > 1 && isLower(rune(head[1])), bytes.HasPrefix(head, []byte("#!")), bytes.HasPrefix(head, []byte("!/")),
 		bytes.HasPrefix(line, []byte("-*-")), bytes.HasPrefix(line, []byte(">>>")),
 		bytes.HasPrefix(head, []byte("SPDX-")), bytes.EqualFold(head, []byte("copyright")):
 		return true
@@ -102,8 +104,8 @@ func hasCodeSign(line []byte) bool {
 }
 
 // docTag returns how many bytes at the start of a line are a tag: "@param name",
-// "\param[in] name", "@returns {type}", ":param name:", "TODO(name):", and, among
-// members, "name:", "name (type):", "name : type". Whole says that nothing but
+// "\param[in] name", "@returns {type}", ":param name:", "TODO(name):", "name : type",
+// and, among members, "name:" and "name (type):". Whole says that nothing but
 // names follows.
 func docTag(line []byte, members bool) (n int, whole bool) {
 	switch c := line[0]; {
@@ -126,12 +128,13 @@ func docTag(line []byte, members bool) (n int, whole bool) {
 			return name + i + 1 + len(rest[i+1:]) - len(bytes.TrimLeft(rest[i+1:], ": ")), false
 		}
 	}
+	if name > 0 && bytes.HasPrefix(rest, []byte(" : ")) {
+		return 0, true
+	}
 	if !members || name == 0 {
 		return 0, false
 	}
 	switch i := bytes.Index(rest, []byte(": ")); {
-	case bytes.HasPrefix(rest, []byte(" : ")):
-		return 0, true
 	case i == 0 || i > 0 && bytes.HasPrefix(rest, []byte(" (")) && rest[i-1] == ')':
 		return name + i + 2, false
 	}
@@ -182,7 +185,7 @@ func namesFollow(line []byte) bool {
 
 // prosy reports text of a string that is prose.
 func prosy(text []byte) bool {
-	fields := bytes.Fields(bytes.ReplaceAll(text, []byte(placeholder), nil))
+	fields := slices.DeleteFunc(bytes.Fields(bytes.ReplaceAll(text, []byte(placeholder), nil)), ruled)
 	if len(fields) < 2 || query(fields[0]) {
 		return false
 	}

@@ -119,7 +119,7 @@ func (s *codeScanner) findIsland() {
 func (s *codeScanner) lineComment() bool {
 	rest := s.source[s.pos:]
 	i := slices.IndexFunc(s.line, func(open string) bool { return bytes.HasPrefix(rest, []byte(open)) })
-	if i < 0 || s.fresh && s.pos != s.inside || s.spaced && s.pos > 0 && !bytes.ContainsRune([]byte(" \t\r\n;(){}"), rune(s.source[s.pos-1])) {
+	if i < 0 || s.fresh && s.pos != s.inside || s.spaced && !lineStart(s.source, s.pos) && !bytes.ContainsRune([]byte(" \t\r\n;(){}"), rune(s.source[s.pos-1])) {
 		return false
 	}
 	end := s.pos + lineLength(rest)
