@@ -9,7 +9,7 @@ import (
 
 var (
 	encodedWord = regexp.MustCompile(`=\?[^?\s]+\?[BbQq]\?[^?\s]*\?=`) // RFC 2047
-	replyMark   = regexp.MustCompile(`^(?i:\s*(?:re|fwd?|aw)\s*:)*`)
+	replyMark   = regexp.MustCompile(`^(?i:\s*(?:re|fwd?)\s*:)*\s*`)
 )
 
 // subject yields the subject without the marks of answers. An encoded word
@@ -48,11 +48,14 @@ func (m *mail) subject(s piece) {
 // unfold takes part of a field's value, each fold as a line break.
 func (m *mail) unfold(p *prose, from, to int) {
 	for l := range linesOf(m.source[:to], from) {
-		p.verbatim(from, l.end)
-		if from = l.next; l.next < to {
-			p.lineBreak(l.end)
+		if l.next == to {
+			break
 		}
+		p.verbatim(from, l.end)
+		p.lineBreak(l.end)
+		from = l.next
 	}
+	p.verbatim(from, to)
 }
 
 func isASCII(s string) bool {
