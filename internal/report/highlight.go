@@ -24,8 +24,11 @@ func highlighted(d Document, items []item) (template.HTML, error) {
 		at = i.Offset + i.Length
 	}
 	h.text(at, int64(len(d.Source)), nil)
-	h.b.WriteString(lineClose)
-	return template.HTML(h.b.String()), h.err
+	text, ended := strings.CutSuffix(h.b.String(), lineOpen)
+	if !ended { // the last line has no end of its own
+		text += lineClose
+	}
+	return template.HTML(text), h.err
 }
 
 const (
@@ -57,7 +60,7 @@ func (h *highlighter) text(from, to int64, mark *item) {
 			h.b.WriteString(lineClose + "\n" + lineOpen)
 			h.open(mark, false)
 		default:
-			h.rune(r)
+			h.rune(seen(r))
 		}
 		h.afterCR = r == '\r'
 	}
@@ -101,22 +104,31 @@ func (h *highlighter) tip(mark *item) {
 	h.b.WriteString(" (p " + Probability(mark.P) + ")</span>")
 }
 
-// rune writes a character: what would not be seen as what it is has a sign in
-// its place.
+// rune writes a character; -1 is none.
 func (h *highlighter) rune(r rune) {
-	switch {
-	case r == '<':
+	switch r {
+	case -1:
+	case '<':
 		h.b.WriteString("&lt;")
-	case r == '>':
+	case '>':
 		h.b.WriteString("&gt;")
-	case r == '&':
+	case '&':
 		h.b.WriteString("&amp;")
-	case r == '\uFEFF':
-	case r < ' ' && r != '\t':
-		h.b.WriteRune('\u2400' + r) // control pictures
-	case unicode.Is(unicode.Bidi_Control, r) || r == 0x7F || 0x80 <= r && r < 0xA0:
-		h.b.WriteRune(unicode.ReplacementChar)
 	default:
 		h.b.WriteRune(r)
 	}
+}
+
+// seen is a character, or a sign in its place where it would not be seen as what
+// it is.
+func seen(r rune) rune {
+	switch {
+	case r == '\uFEFF':
+		return -1
+	case r < ' ' && r != '\t':
+		return '\u2400' + r // control pictures
+	case unicode.Is(unicode.Bidi_Control, r) || r >= 0x7F && r < 0xA0:
+		return unicode.ReplacementChar
+	}
+	return r
 }

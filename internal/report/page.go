@@ -6,6 +6,7 @@ import (
 	"html/template"
 	"io"
 	"slices"
+	"strings"
 	"sync"
 
 	"example.org/foulcase"
@@ -14,9 +15,10 @@ import (
 // page is one HTML page of all documents: the text of each with its marks in
 // place, and a list of them. It needs nothing from elsewhere and runs no scripts.
 type page struct {
-	settings Settings
-	mu       sync.Mutex
-	contents []entry // a document that has marks; in any order until the tail
+	settings  Settings
+	templates *template.Template
+	mu        sync.Mutex
+	contents  []entry // a document that has marks; in any order until the tail
 }
 
 // entry is a document in the table of contents.
@@ -32,14 +34,21 @@ var pageStyle string
 //go:embed page.tmpl
 var pageTemplate string
 
-// templates are the pieces of the page.
-func (p *page) templates() *template.Template {
-	return template.Must(template.New("page").Funcs(template.FuncMap{
+func newPage(s Settings) *page {
+	return &page{settings: s, templates: template.Must(template.New("page").Funcs(template.FuncMap{
 		"style":       func() template.CSS { return template.CSS(pageStyle) },
+		"path":        breakable,
+		"seen":        func(s string) string { return strings.Map(seen, s) },
 		"probability": Probability,
 		"certain":     func(g foulcase.Grade) bool { return g == foulcase.GradeMark },
 		"about":       func(k foulcase.Kind) string { return kindAbout[k] },
-	}).Parse(pageTemplate))
+	}).Parse(pageTemplate))}
+}
+
+// breakable is a path that lines may be broken in after each slash.
+func breakable(path string) template.HTML {
+	escaped := template.HTMLEscapeString(Visible(path))
+	return template.HTML(strings.ReplaceAll(escaped, "/", "/<wbr>"))
 }
 
 // Whole is true: the page shows the documents.
@@ -47,13 +56,13 @@ func (p *page) Whole() bool     { return true }
 func (p *page) Between() string { return "" }
 
 func (p *page) Head(w io.Writer) error {
-	return p.templates().ExecuteTemplate(w, "head", p.settings)
+	return p.templates.ExecuteTemplate(w, "head", p.settings)
 }
 
 // Tail writes the table of contents; the style sheet puts it beside the texts.
 func (p *page) Tail(w io.Writer) error {
 	slices.SortFunc(p.contents, func(a, b entry) int { return a.Number - b.Number })
-	return p.templates().ExecuteTemplate(w, "tail", p.contents)
+	return p.templates.ExecuteTemplate(w, "tail", p.contents)
 }
 
 func (p *page) Page(w io.Writer, d Document) Page {
@@ -102,7 +111,7 @@ func (a *article) Close() error {
 	a.page.mu.Lock()
 	a.page.contents = append(a.page.contents, e)
 	a.page.mu.Unlock()
-	return a.page.templates().ExecuteTemplate(a.w, "article", view)
+	return a.page.templates.ExecuteTemplate(a.w, "article", view)
 }
 
 // articleView is what the template shows of a document.

@@ -61,7 +61,7 @@ var forms = []struct {
 	{"sarif", func(s Settings) Form { return sarif{s} }},
 	{"diff", func(Settings) Form { return diff{} }},
 	{"annotations", func(Settings) Form { return annotations{} }},
-	{"html", func(s Settings) Form { return &page{settings: s} }},
+	{"html", func(s Settings) Form { return newPage(s) }},
 }
 
 // Names are those of the forms.

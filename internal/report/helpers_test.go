@@ -1,0 +1,76 @@
+package report
+
+import (
+	"bytes"
+	"context"
+	"sync"
+	"testing"
+
+	"example.org/foulcase"
+	"example.org/foulcase/lm/english"
+)
+
+// engine is the embedded English model, opened once for all tests.
+var engine = sync.OnceValue(func() *foulcase.Engine {
+	e, err := foulcase.Open(english.Model())
+	if err != nil {
+		panic(err)
+	}
+	return e
+})
+
+// marksOf proofreads a document.
+func marksOf(t testing.TB, source string, o foulcase.Options) []foulcase.Mark {
+	t.Helper()
+	var marks []foulcase.Mark
+	for m, err := range engine().Proof(context.Background(), bytes.NewReader([]byte(source)), o) {
+		if err != nil {
+			t.Fatal(err)
+		}
+		marks = append(marks, m)
+	}
+	return marks
+}
+
+// written is the report of documents in a form.
+func written(t testing.TB, name string, documents ...Document) string {
+	t.Helper()
+	form, err := New(name, Settings{Version: "1.2", Model: "0123456789abcdef"})
+	if err != nil {
+		t.Fatal(err)
+	}
+	var out bytes.Buffer
+	w, err := NewWriter(&out, form)
+	if err != nil {
+		t.Fatal(err)
+	}
+	for i, d := range documents {
+		d.Number = i + 1
+		var text bytes.Buffer
+		page := form.Page(&text, d)
+		for _, m := range marksOf(t, string(d.Source), d.Options) {
+			if err := page.Mark(m); err != nil {
+				t.Fatal(err)
+			}
+		}
+		if err := page.Close(); err != nil {
+			t.Fatal(err)
+		}
+		if err := w.Add(text.Bytes()); err != nil {
+			t.Fatal(err)
+		}
+	}
+	if err := w.Close(); err != nil {
+		t.Fatal(err)
+	}
+	return out.String()
+}
+
+// papers are documents with marks of several kinds, and one without any.
+func papers() []Document {
+	return []Document{
+		{Path: "log/watch 3.txt", Source: []byte("The café at the pier recieved us – “at noon” – before the\nthe fog.\n")},
+		{Path: "log/good.txt", Source: []byte("The tug let go her anchor near the pier.\n")},
+		{Path: "log/naïve.md", Source: []byte("# Notice\r\n\r\nAlot of rain fell on the <quay> & the launch came alongsyde."), Options: foulcase.Options{Format: "markdown"}},
+	}
+}
