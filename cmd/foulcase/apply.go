@@ -64,7 +64,10 @@ func (p *proofreader) apply(ctx context.Context, in input, palette report.Palett
 	if err != nil {
 		return application{err: err}
 	}
-	o := p.optionsOf(in.path)
+	o, err := p.optionsOf(in.path)
+	if err != nil {
+		return application{err: err}
+	}
 	var marks []foulcase.Mark
 	for m, err := range p.marks(ctx, in, bytes.NewReader(source), o) {
 		if err != nil {

@@ -1,63 +1,72 @@
 package main
 
 import (
-	"fmt"
-	"os"
-	"strings"
-
 	"example.org/foulcase"
+	"example.org/foulcase/internal/house"
 	"github.com/spf13/pflag"
 )
 
 // engineFlags are the flags of every verb that judges text.
 type engineFlags struct {
-	model   string
-	house   []string
-	variety *choice
+	config string
+	set    *pflag.FlagSet // the verb's: what was given there wins over files
+	// Known once the engine is open:
+	here  *house.Settings // of the working directory
+	model string          // the engine's file; "" is the English model inside foulcase
 }
 
 func (f *engineFlags) declare(fs *pflag.FlagSet) {
+	f.set = fs
 	modelFlag(fs, &f.model)
-	fs.StringArrayVar(&f.house, "house", nil, "`FILE` of house words, one a line; may be repeated")
-	f.variety = choiceFlag(fs, "variety", "the English asked for", "any", "en-US", "en-GB")
+	fs.StringArray("house", nil, "`FILE` of house words, beside those that settings name; may be repeated")
+	choiceFlag(fs, "variety", "the English asked for", "any", "en-US", "en-GB")
+	configFlag(fs, &f.config)
 }
 
 func modelFlag(fs *pflag.FlagSet, path *string) {
 	fs.StringVar(path, "model", "", "`FILE` of the model (default: the English model inside foulcase)")
 }
 
-// open opens the engine and reads the options that the flags stand for. The
-// caller closes the engine.
-func (f *engineFlags) open() (*foulcase.Engine, foulcase.Options, error) {
-	var o foulcase.Options
-	var err error
-	if o.Variety, err = foulcase.ParseVariety(f.variety.value); err != nil {
-		return nil, o, err
-	}
-	if o.House, err = readHouse(f.house); err != nil {
-		return nil, o, err
-	}
-	e, err := openEngine(f.model)
-	return e, o, err
+func configFlag(fs *pflag.FlagSet, path *string) {
+	fs.StringVar(path, "config", "", "`FILE` of settings in place of the "+house.FileName+" found upwards from each document; none for neither that nor the user's own")
 }
 
-// readHouse reads house lists into one; nil when there are none. Each is read
-// by itself first, so that an error names its file and line.
-func readHouse(paths []string) (*foulcase.House, error) {
-	var all strings.Builder
-	for _, path := range paths {
-		data, err := os.ReadFile(path)
-		if err != nil {
-			return nil, fmt.Errorf("house words: %w", err)
-		}
-		if _, err := foulcase.ReadHouse(path, strings.NewReader(string(data))); err != nil {
-			return nil, err
-		}
-		all.Write(data)
-		all.WriteByte('\n')
+// open opens the engine and reads the options that hold for text of no document: those of
+// the working directory. The caller closes the engine.
+func (f *engineFlags) open() (*foulcase.Engine, foulcase.Options, error) {
+	e, _, err := f.openFor()
+	if err != nil {
+		return nil, foulcase.Options{}, err
 	}
-	if len(paths) == 0 {
-		return nil, nil
+	o := f.here.Options(standardInput)
+	return e, foulcase.Options{Variety: o.Variety, House: o.House, Budget: o.Budget}, nil
+}
+
+// openFor opens the engine and finds the settings of documents. There is one model for
+// all of them: that of the working directory. The caller closes the engine.
+func (f *engineFlags) openFor() (e *foulcase.Engine, found *house.Resolver, err error) {
+	found = f.settings()
+	if f.here, err = found.For(standardInput); err != nil {
+		return nil, nil, err
 	}
-	return foulcase.ReadHouse("house words", strings.NewReader(all.String()))
+	f.model = f.here.Get("model")
+	e, err = openEngine(f.model)
+	return e, found, err
+}
+
+// settings finds the settings of documents. Every flag of the verb that goes by the
+// name of a setting, and was given, is among them.
+func (f *engineFlags) settings() *house.Resolver {
+	given := map[string][]string{}
+	for _, k := range house.Keys() {
+		flag := f.set.Lookup(k.Flag)
+		if flag == nil || !flag.Changed {
+			continue
+		}
+		given[k.Name] = []string{flag.Value.String()}
+		if many, ok := flag.Value.(pflag.SliceValue); ok {
+			given[k.Name] = many.GetSlice()
+		}
+	}
+	return house.NewResolver(house.Sources{Config: f.config, Flags: given})
 }

@@ -81,18 +81,16 @@ func heldOutFlag(fs *pflag.FlagSet, only *bool) {
 
 // judgedFlags are the flags of verbs that measure what proofreading finds.
 type judgedFlags struct {
-	budget  rate
 	without []string
 }
 
 func (f *judgedFlags) declare(fs *pflag.FlagSet) {
-	fs.Var(&f.budget, "budget", "false alarms to bear in 1,000 words of good text (default: the model's own)")
+	fs.Var(new(rate), "budget", "false alarms to bear in 1,000 words of good text (default: the model's own)")
 	withoutFlag(fs, &f.without)
 }
 
 // apply puts into the options what the flags ask for.
 func (f *judgedFlags) apply(o *foulcase.Options) error {
-	o.Budget = float64(f.budget)
 	var err error
 	if o.Without, err = foulcase.ParseEvidence(f.without...); err != nil {
 		return misusef("--without: %v", err)

@@ -32,8 +32,7 @@ const maxSentence = 64 << 10
 func declareLedger(fs *pflag.FlagSet) action {
 	var engine engineFlags
 	engine.declare(fs)
-	var budget rate
-	fs.Var(&budget, "budget", "false alarms to bear in 1,000 words of good text (default: the model's own)")
+	fs.Var(new(rate), "budget", "false alarms to bear in 1,000 words of good text (default: the model's own)")
 	emit := emitFlag(fs)
 	return func(c *console, words []string) (status, error) {
 		sentence := strings.Join(words, " ")
@@ -52,7 +51,6 @@ func declareLedger(fs *pflag.FlagSet) action {
 			return trouble, err
 		}
 		defer e.Close()
-		o.Budget = float64(budget)
 		return clean, printLedger(c.out, e.Ledger(sentence, o), emit.value)
 	}
 }

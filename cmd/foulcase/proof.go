@@ -49,39 +49,43 @@ type proofFlags struct {
 	tree     treeFlags
 	format   *choice
 	encoding string
-	fields   []string
 	name     string
 	emit     *choice
 	apply    bool
 	dryRun   bool
 	formats  bool
-	budget   rate
-	jobs     *count
-	color    *choice
+	// showConfig has the settings printed, and nothing read.
+	showConfig bool
+	jobs       *count
+	color      *choice
 }
 
 func declareProof(fs *pflag.FlagSet) action {
 	f := new(proofFlags)
 	f.engine.declare(fs)
-	fs.Var(&f.budget, "budget", "false alarms to bear in 1,000 words of good text (default: the model's own)")
+	fs.Var(new(rate), "budget", "false alarms to bear in 1,000 words of good text (default: the model's own)")
 	f.tree.declare(fs)
 	f.format = namedChoiceFlag(fs, "as", "FORMAT", "format of the documents, one of --formats; auto goes by the file name",
 		append([]string{"auto"}, formatNames()...)...)
 	fs.StringVar(&f.encoding, "encoding", "", "`NAME` of the documents' encoding, such as windows-1252 (default: UTF-8, or UTF-16 by its mark)")
-	fs.StringArrayVar(&f.fields, "field", nil, "`NAME` or number of a column or member to read of records; may be repeated")
+	fs.StringArray("field", nil, "`NAME` or number of a column or member to read of records; may be repeated")
 	fs.StringVar(&f.name, "name", standardInput, "`PATH` that standard input goes by; its extension tells the format")
 	f.emit = namedChoiceFlag(fs, "emit", "FORM", "how results are printed: "+orList(report.Names()), report.Names()...)
 	fs.BoolVar(&f.apply, "apply", false, "put the marks right in the files")
 	fs.BoolVar(&f.dryRun, "dry-run", false, "with --apply: print the diff of what it would do")
 	fs.BoolVar(&f.formats, "formats", false, "list the formats of documents")
+	fs.BoolVar(&f.showConfig, "show-config", false, "print the settings that hold for each PATH, and who says so")
 	f.jobs = jobsFlag(fs)
 	f.color = colorFlag(fs)
 	return f.run
 }
 
 func (f *proofFlags) run(c *console, operands []string) (status, error) {
-	if f.formats {
+	switch {
+	case f.formats:
 		return clean, printFormats(c.out, f.emit.value)
+	case f.showConfig:
+		return clean, printSettings(c.out, f.emit.value, f.engine.settings(), operands)
 	}
 	p, err := f.open(c, operands)
 	if err != nil {
@@ -111,12 +115,15 @@ func (f *proofFlags) open(c *console, operands []string) (*proofreader, error) {
 	if err := f.check(); err != nil {
 		return nil, err
 	}
-	e, o, err := f.engine.open()
+	e, found, err := f.engine.openFor()
 	if err != nil {
 		return nil, err
 	}
-	p := &proofreader{engine: e, options: o, flags: f, operands: operands, progress: c.progress}
-	if p.documents, err = f.tree.find(c, operands, search{stdinName: f.name, anyBytes: f.encoding != ""}); err == nil {
+	if f.tree.known == "" && f.tree.writeKnown == "" {
+		f.tree.known = f.engine.here.Get("known")
+	}
+	p := &proofreader{engine: e, settings: found, flags: f, operands: operands, progress: c.progress}
+	if p.documents, err = f.tree.find(c, operands, search{stdinName: f.name, anyBytes: f.engine.here.Get("encoding") != "", format: documentFormat(found)}); err == nil {
 		p.form, err = report.New(f.emit.value, report.Settings{
 			Palette: choosePalette(f.color.value, c.out.terminal),
 			Model:   e.Hash(),

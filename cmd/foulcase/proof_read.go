@@ -9,6 +9,7 @@ import (
 	"os"
 
 	"example.org/foulcase"
+	"example.org/foulcase/internal/house"
 	"example.org/foulcase/internal/report"
 )
 
@@ -16,7 +17,7 @@ import (
 // concurrent use.
 type proofreader struct {
 	engine    *foulcase.Engine
-	options   foulcase.Options
+	settings  *house.Resolver
 	flags     *proofFlags
 	operands  []string // as the user named them
 	documents *documents
@@ -24,28 +25,29 @@ type proofreader struct {
 	progress  *progress
 }
 
-// optionsOf is how the document at path is judged: by the flags first.
-func (p *proofreader) optionsOf(path string) foulcase.Options {
-	f, o := p.flags, p.options
-	if o.Format = f.format.value; o.Format == "auto" {
-		o.Format, _ = foulcase.FormatOf(path)
+// optionsOf is how the document at path is judged: by the settings of its folder, flags
+// among them.
+func (p *proofreader) optionsOf(path string) (foulcase.Options, error) {
+	s, err := p.settings.For(path)
+	if err != nil {
+		return foulcase.Options{}, err
 	}
-	if f.budget > 0 {
-		o.Budget = float64(f.budget)
+	o := s.Options(path)
+	if format := p.flags.format.value; format != "auto" {
+		o.Format = format
 	}
-	if f.encoding != "" {
-		o.Encoding = f.encoding
-	}
-	if len(f.fields) > 0 {
-		o.Fields = f.fields
-	}
-	return o
+	return o, nil
 }
 
 // marks yields the marks of a document that are to be shown. An error, which
 // names the document, ends them.
 func (p *proofreader) marks(ctx context.Context, in input, r io.Reader, o foulcase.Options) iter.Seq2[foulcase.Mark, error] {
 	return func(yield func(foulcase.Mark, error) bool) {
+		settings, err := p.settings.For(in.path)
+		if err != nil {
+			yield(foulcase.Mark{}, err)
+			return
+		}
 		s, err := p.documents.sieve(in)
 		if err != nil {
 			yield(foulcase.Mark{}, err)
@@ -56,7 +58,7 @@ func (p *proofreader) marks(ctx context.Context, in input, r io.Reader, o foulca
 				yield(foulcase.Mark{}, &os.PathError{Op: "read", Path: in.path, Err: cause(err)})
 				return
 			}
-			if s.keep(m) && !yield(m, nil) {
+			if !settings.Stands(in.path, m) && s.keep(m) && !yield(m, nil) {
 				return
 			}
 		}
@@ -92,7 +94,10 @@ func readAtMost(r io.Reader, most int64) ([]byte, error) {
 // page prints the marks of one document in the form asked for and returns their
 // number. Flush is called after each.
 func (p *proofreader) page(ctx context.Context, number int, in input, w io.Writer, flush func() error) (marks int, err error) {
-	d := report.Document{Path: in.path, Number: number, Options: p.optionsOf(in.path)}
+	d := report.Document{Path: in.path, Number: number}
+	if d.Options, err = p.optionsOf(in.path); err != nil {
+		return 0, err
+	}
 	var r io.Reader
 	if p.form.Whole() {
 		if d.Source, err = p.source(in); err != nil {

@@ -7,6 +7,7 @@ import (
 	"strings"
 
 	"example.org/foulcase"
+	"example.org/foulcase/internal/charset"
 )
 
 // A Key is a setting that foulcase.toml may make.
@@ -46,7 +47,7 @@ func Keys() []Key {
 		},
 		{
 			Name: "encoding", Type: "text", About: "encoding of the documents that do not tell it", Default: "utf-8",
-			Example: `encoding = "windows-1252"`, Flag: "encoding",
+			Example: `encoding = "windows-1252"`, Flag: "encoding", check: checkEncoding,
 		},
 		{
 			Name: "formats", Type: "table", About: "format of the documents that match a glob; the first match counts", Default: "by extension",
@@ -62,7 +63,7 @@ func Keys() []Key {
 		},
 		{
 			Name: "stets", Type: "text", About: "file of what was decided about marks", Default: "the user's own",
-			Example: `stets = "stets.jsonl"`, Flag: "stets", paths: true,
+			Example: `stets = "stets.jsonl"`, paths: true,
 		},
 		{
 			Name: "known", Type: "text", About: "file of the marks that are known and not shown again", Default: "none",
@@ -108,6 +109,11 @@ func checkBudget(text string) error {
 		return fmt.Errorf("%q is no number above 0", text)
 	}
 	return nil
+}
+
+func checkEncoding(text string) error {
+	_, err := charset.Find(text)
+	return err
 }
 
 func checkFormat(text string) error {

@@ -27,13 +27,17 @@ type Settings struct {
 	stets  *book
 }
 
-// Load reads the settings of one file, with nothing beside it but the defaults.
-// The path "" stands for a file that sets nothing.
+// Load reads the settings that hold where a project has its file at path, or none when path is
+// "": those of the environment and the user's own among them.
 func Load(path string) (*Settings, error) {
-	if path != "" {
+	r := NewResolver(Sources{})
+	switch {
+	case r.sources.Config == None:
+		path = ""
+	case path != "":
 		path = absolute(path)
 	}
-	return NewResolver(Sources{Config: None, Getenv: func(string) string { return "" }}).load(path)
+	return r.load(path)
 }
 
 // Values lists every value and who says so, with those of the defaults, in the order of
@@ -76,34 +80,26 @@ func (s *Settings) Get(key string) string {
 // Options is how the document at path is to be judged.
 func (s *Settings) Options(path string) foulcase.Options {
 	o := foulcase.Options{
-		Format:   s.format(path),
 		Fields:   s.of("fields"),
 		Encoding: s.Get("encoding"),
 		House:    s.words.get(),
 	}
+	o.Format, _ = s.Format(path)
 	// Both were checked when they were set.
 	o.Variety, _ = foulcase.ParseVariety(cmp.Or(s.Get("variety"), "any"))
 	o.Budget, _ = strconv.ParseFloat(cmp.Or(s.Get("budget"), "0"), 64)
 	return o
 }
 
-// format is that of the first glob that matches, else that of the extension.
-func (s *Settings) format(path string) string {
+// Format is that of the first glob that matches a document's path, else that of its
+// extension; ok is false, and the format plain, when neither is known.
+func (s *Settings) Format(path string) (name string, ok bool) {
 	for _, v := range s.values {
 		if v.Key == "formats" && matches(v.Glob, v.dir, absolute(path)) {
-			return v.Text
+			return v.Text, true
 		}
 	}
-	format, _ := foulcase.FormatOf(path)
-	return format
-}
-
-// HasFormat tells whether a document's format is known, by a glob or by its extension.
-func (s *Settings) HasFormat(path string) bool {
-	_, known := foulcase.FormatOf(path)
-	return known || slices.ContainsFunc(s.values, func(v Value) bool {
-		return v.Key == "formats" && matches(v.Glob, v.dir, absolute(path))
-	})
+	return foulcase.FormatOf(path)
 }
 
 // Ignores tells whether a file is to be passed over when a folder that holds it is read.
@@ -132,7 +128,7 @@ func (s *Settings) AddWord(word string) (file string, err error) { return s.word
 // several programs at once.
 func (s *Settings) Record(d Decision) error {
 	if s.stets.path == "" {
-		return errors.New("there is no file for decisions: name one with --stets, or as stets in " + FileName)
+		return errors.New("there is no file for decisions: name one as stets in " + FileName)
 	}
 	return s.stets.record(d)
 }
