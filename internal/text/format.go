@@ -60,6 +60,10 @@ func registry() []format {
 			name: LaTeX, about: "text and the arguments that are text; not mathematics, code, references and comments",
 			extensions: []string{".tex", ".ltx"}, languages: []string{"latex", "tex"}, read: readLaTeX,
 		},
+		{
+			name: RST, about: "text and the directives that hold text; not code, roles that are code, and comments",
+			extensions: []string{".rst", ".rest"}, languages: []string{"restructuredtext"}, read: readRST,
+		},
 	}, recordFormats(), packedFormats(), sourceFormats())
 }
 
