@@ -67,7 +67,7 @@ func TestReadDiffErrors(t *testing.T) {
 		"@@ -1 +x @@\n":                  `diff:1: the hunk "@@ -1 +x @@" is not of a unified diff`,
 		"@@ -1 +1\n":                     "diff:1: the hunk",
 		"@@ -1 +99999999999 @@\n":        "diff:1: the hunk",
-		"+++ b/a\n@@ -1 +1,3 @@\n-a\n+b": "diff: cut off, 2 lines of a hunk are missing",
+		"+++ b/a\n@@ -1 +1,3 @@\n-a\n+b": "diff:5: cut off, 2 lines of a hunk are missing",
 	} {
 		if _, err := readDiff(strings.NewReader(diff)); err == nil || !strings.HasPrefix(err.Error(), want) {
 			t.Errorf("%q: error %v, want %q", diff, err, want)

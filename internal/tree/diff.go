@@ -28,7 +28,10 @@ func readDiff(r io.Reader) (map[string][]lineRange, error) {
 	for n := 1; ; n++ {
 		line, err := readHeader(in)
 		if err == io.EOF && len(line) == 0 {
-			return changed, endOfDiff(body)
+			if body > 0 {
+				return nil, fmt.Errorf("diff:%d: cut off, %d lines of a hunk are missing", n, body)
+			}
+			return changed, nil
 		}
 		if err != nil && err != io.EOF {
 			return nil, fmt.Errorf("diff:%d: %w", n, err)
@@ -53,14 +56,6 @@ func readDiff(r io.Reader) (map[string][]lineRange, error) {
 			}
 		}
 	}
-}
-
-// endOfDiff tells whether a diff ended in the midst of a hunk.
-func endOfDiff(body int) error {
-	if body > 0 {
-		return fmt.Errorf("diff: cut off, %d lines of a hunk are missing", body)
-	}
-	return nil
 }
 
 // readHeader reads a line without its end; of one too long for a header it returns

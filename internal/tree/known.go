@@ -67,21 +67,24 @@ func isFingerprint(s string) bool {
 	return len(s) == 16 && strings.Trim(s, "0123456789abcdef") == ""
 }
 
-// WriteKnown writes a file of known marks, whole or not at all, in the order of
-// path, form and fingerprint, so that the same marks give the same bytes.
+// WriteKnown writes a file of known marks, whole or not at all.
 func WriteKnown(path string, marks []KnownMark) error {
+	return wholefile.Write(path, func(w io.Writer) error { return printKnown(w, marks) })
+}
+
+// printKnown writes marks in the order of path, form and fingerprint, so that the
+// same marks give the same bytes.
+func printKnown(w io.Writer, marks []KnownMark) error {
 	marks = slices.Clone(marks)
 	slices.SortFunc(marks, func(a, b KnownMark) int {
 		return cmp.Or(strings.Compare(a.Path, b.Path), strings.Compare(a.Observed, b.Observed), strings.Compare(a.Fingerprint, b.Fingerprint))
 	})
-	return wholefile.Write(path, func(w io.Writer) error {
-		out := bufio.NewWriter(w)
-		out.WriteString(knownHead)
-		for _, m := range marks {
-			fmt.Fprintf(out, "%s\t%s\t%s\n", m.Fingerprint, escapeField(m.Path), escapeField(m.Observed))
-		}
-		return out.Flush()
-	})
+	out := bufio.NewWriter(w)
+	out.WriteString(knownHead)
+	for _, m := range marks {
+		fmt.Fprintf(out, "%s\t%s\t%s\n", m.Fingerprint, escapeField(m.Path), escapeField(m.Observed))
+	}
+	return out.Flush()
 }
 
 var (
