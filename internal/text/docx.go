@@ -64,7 +64,7 @@ func docxParts(p *packed) (map[string][]string, error) {
 	return parts, err
 }
 
-// docxStyles reads the languages of the styles; the entry "" is of what has none.
+// docxStyles reads the languages of the styles.
 func docxStyles(p *packed, names []string) (styles, error) {
 	table := styles{}
 	for _, name := range names {
@@ -261,7 +261,7 @@ func (d *docx) closed(e xmlEvent) {
 // the same properties, with nothing else between, nothing is lost.
 func (d *docx) text(e xmlEvent, r *run) {
 	top := d.top()
-	language := cmp.Or(r.language, d.styles.language(d.style), d.styles.language(""))
+	language := cmp.Or(r.language, d.styles.language(d.style), d.styles[""].language)
 	if r.code || !d.options.reads(language) {
 		r.after = 0
 		top.leftOut(e)

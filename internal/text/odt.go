@@ -103,7 +103,7 @@ func (d *odt) opened(e xmlEvent, in odtElement) odtElement {
 		d.begin().heading = e.name == "text:h"
 		in = odtElement{text: true}
 		d.styled(&in, e)
-		in.language = cmp.Or(in.language, d.styles.language(""))
+		in.language = cmp.Or(in.language, d.styles[""].language)
 	case "text:span":
 		d.styled(&in, e)
 	case "text:s", "text:tab", "text:line-break", "text:soft-page-break":

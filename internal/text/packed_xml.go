@@ -90,8 +90,14 @@ func declare(prefixes map[string]string, attributes []xml.Attr) {
 // editions of it, transitional and strict) and OpenDocument 1.3; "" for others.
 func namespacePrefix(uri string) string {
 	if of, ok := strings.CutPrefix(uri, "urn:oasis:names:tc:opendocument:xmlns:"); ok {
-		name, _, _ := strings.Cut(of, ":")
-		return name
+		switch name, _, _ := strings.Cut(of, ":"); name {
+		case "xsl-fo-compatible":
+			return "fo"
+		case "drawing":
+			return "draw"
+		default:
+			return name
+		}
 	}
 	switch {
 	case strings.HasSuffix(uri, "/wordprocessingml/2006/main"), strings.HasSuffix(uri, "/wordprocessingml/main"):
@@ -197,7 +203,8 @@ func escapeXML(words string) (string, bool) {
 }
 
 // styles are the named styles of a document, for their languages: the tag of each
-// (BCP 47; "zxx" where nothing is to be proofread), and the style it is based on.
+// (BCP 47; "zxx" where nothing is to be proofread), and the style it is based on. The
+// entry "" is of what has none.
 type styles map[string]style
 
 type style struct{ language, parent string }
@@ -205,12 +212,11 @@ type style struct{ language, parent string }
 // language is the tag of a style or of those it is based on, "" when none has any.
 func (s styles) language(name string) string {
 	const longest = 32 // styles in a row; bounds circles
-	for range longest {
-		here, ok := s[name]
-		if !ok || here.language != "" {
-			return here.language
+	for i := 0; i < longest && name != ""; i++ {
+		if language := s[name].language; language != "" {
+			return language
 		}
-		name = here.parent
+		name = s[name].parent
 	}
 	return ""
 }
