@@ -158,21 +158,19 @@ func randomText(r *rand.Rand, n int) string {
 	return b.String()
 }
 
-// randomStretch picks part of a text, neither end inside a code point or a \r\n.
+// randomStretch picks part of a text, most often a short one.
 func randomStretch(r *rand.Rand, text string) (start, end int) {
-	pick := func() int {
-		at := r.IntN(len(text) + 1)
-		for at < len(text) && (!utf8.RuneStart(text[at]) || at > 0 && text[at-1:at+1] == "\r\n") {
-			at++
-		}
-		return at
+	start, end = r.IntN(len(text)+1), r.IntN(len(text)+1)
+	if r.IntN(8) > 0 {
+		end = min(start+r.IntN(20), len(text))
 	}
-	start, end = pick(), pick()
-	if r.IntN(3) > 0 { // as often as not a short one
-		end = min(start+r.IntN(8), len(text))
-		for end < len(text) && (!utf8.RuneStart(text[end]) || end > 0 && text[end-1:end+1] == "\r\n") {
-			end++
-		}
+	return whole(text, min(start, end)), whole(text, max(start, end))
+}
+
+// whole moves a place forward out of a code point and a \r\n.
+func whole(text string, at int) int {
+	for at < len(text) && (!utf8.RuneStart(text[at]) || at > 0 && text[at-1:at+1] == "\r\n") {
+		at++
 	}
-	return min(start, end), max(start, end)
+	return at
 }
