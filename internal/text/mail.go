@@ -3,6 +3,7 @@ package text
 import (
 	"bytes"
 	"io"
+	"iter"
 	"mime"
 	"strings"
 )
@@ -13,20 +14,23 @@ const (
 )
 
 // readMail reads a message (RFC 5322): its subject and what its writer wrote in
-// the text parts. Quoted lines, the signature, attachments, parts that are no
-// plain text, parts in base64 and parts in other charsets than US-ASCII and
-// UTF-8 are left out.
+// the text parts; HTML where the same text is not there as plain text. Quoted
+// lines, the signature, attachments, parts in base64 and parts in other charsets
+// than US-ASCII and UTF-8 are left out.
 func readMail(r io.Reader, o Options, yield func(*Block, error) bool) {
 	readRecords(r, o, yield, func(e *emitter) error {
-		m := mail{emitter: e}
-		head, body := m.head(e.at, len(e.source))
-		m.subject(head.subject)
-		m.entity(head, body, len(e.source), 0)
+		m := mail{emitter: e, options: o}
+		message := m.part(e.at, len(e.source))
+		m.subject(message.subject)
+		m.entity(message)
 		return nil
 	})
 }
 
-type mail struct{ *emitter }
+type mail struct {
+	*emitter
+	options Options
+}
 
 // mailHead is what is read of a header.
 type mailHead struct {
@@ -88,18 +92,58 @@ func (m *mail) value(p piece) string {
 	return strings.Join(strings.Fields(string(value)), " ")
 }
 
-// entity reads the body of a message or part.
-func (m *mail) entity(h mailHead, body, end, depth int) {
-	kind, params := mediaType(h.contentType)
+// mailPart is a message or a part of one.
+type mailPart struct {
+	mailHead
+	body, end int // in the source
+	kind      string
+	params    map[string]string // of its Content-Type
+	depth     int               // of the multiparts around it
+	plain     bool              // the same text stands beside it as plain text
+}
+
+// part reads the header of source[from:end], a message or part.
+func (m *mail) part(from, end int) (p mailPart) {
+	p.mailHead, p.body = m.head(from, end)
+	p.kind, p.params = mediaType(p.contentType)
+	p.end = end
+	return p
+}
+
+// entity yields what is read of a part.
+func (m *mail) entity(p mailPart) {
 	switch {
-	case mailWord(h.disposition) == "attachment":
-	case strings.HasPrefix(kind, "multipart/"):
-		if boundary := params["boundary"]; boundary != "" && depth < mostParts {
-			m.parts([]byte("--"+boundary), kind, body, end, depth)
+	case mailWord(p.disposition) == "attachment":
+	case strings.HasPrefix(p.kind, "multipart/") && p.depth < mostParts:
+		m.multipart(p)
+	case p.kind == "text/plain":
+		if b := m.decoded(p); b != nil {
+			t := mailText{emitter: m.emitter, flowed: strings.EqualFold(p.params["format"], "flowed")}
+			t.lines(b)
 		}
-	case kind == "text/plain":
-		t := mailText{emitter: m.emitter, flowed: strings.EqualFold(params["format"], "flowed")}
-		t.read(h.encoding, strings.ToLower(params["charset"]), body, end)
+	case p.kind == "text/html" && !p.plain:
+		if b := m.decoded(p); b != nil {
+			m.html(b)
+		}
+	}
+}
+
+// multipart yields what is read of the parts of p.
+func (m *mail) multipart(p mailPart) {
+	plain := p.plain
+	if p.kind == "multipart/alternative" {
+		for inner := range m.parts(p) {
+			plain = plain || inner.kind == "text/plain"
+		}
+	}
+	for inner := range m.parts(p) {
+		inner.depth, inner.plain = p.depth+1, plain
+		if inner.contentType == "" && p.kind == "multipart/digest" {
+			continue // a message, unless it says otherwise
+		}
+		if m.entity(inner); m.stopped {
+			return
+		}
 	}
 }
 
@@ -122,33 +166,26 @@ func mailWord(value string) string {
 	return strings.ToLower(strings.TrimSpace(word))
 }
 
-// parts reads the parts of a multipart: what stands between lines that begin
-// with the delimiter.
-func (m *mail) parts(delimiter []byte, kind string, pos, end, depth int) {
-	from := -1 // where the part at hand begins
-	for pos < end && !m.stopped {
-		l := lineAt(m.source[:end], pos)
-		rest, delimits := bytes.CutPrefix(m.source[pos:max(pos, l.end)], delimiter)
-		closes := string(rest) == "--"
-		if delimits = delimits && (closes || len(rest) == 0); delimits {
-			m.part(kind, from, pos, depth)
-			from = l.next
+// parts yields the parts of a multipart: what stands between lines that begin
+// with its delimiter.
+func (m *mail) parts(p mailPart) iter.Seq[mailPart] {
+	return func(yield func(mailPart) bool) {
+		delimiter := []byte("--" + p.params["boundary"])
+		from, pos := -1, p.body // where the part at hand begins, and the line
+		for pos < p.end && p.params["boundary"] != "" {
+			l := lineAt(m.source[:p.end], pos)
+			rest, delimits := bytes.CutPrefix(m.source[pos:max(pos, l.end)], delimiter)
+			last := string(rest) == "--"
+			if delimits && (last || len(rest) == 0) {
+				if from >= 0 && !yield(m.part(from, pos)) || last {
+					return
+				}
+				from = l.next
+			}
+			pos = l.next
 		}
-		if pos = l.next; delimits && closes {
-			return
+		if from >= 0 {
+			yield(m.part(from, p.end))
 		}
 	}
-	m.part(kind, from, end, depth)
-}
-
-// part reads source[from:to], a part of a multipart of that kind.
-func (m *mail) part(kind string, from, to, depth int) {
-	if from < 0 || from >= to {
-		return
-	}
-	h, body := m.head(from, to)
-	if h.contentType == "" && kind == "multipart/digest" {
-		return // messages, unless they say otherwise
-	}
-	m.entity(h, body, to, depth+1)
 }

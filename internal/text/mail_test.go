@@ -22,6 +22,8 @@ func TestMail(t *testing.T) {
 		{"no body", "Subject: the fog", []string{"the fog"}},
 		{"no header", "\nthe fog\n", []string{"the fog"}},
 		{"flowed", "Content-Type: text/plain; format=flowed\n\nThe fog \nCame in. \n and\nIce\n> quoted \nbar", []string{"The fog \nCame in. \n and", "Ice", "bar"}},
+		{"HTML alone", "Content-Type: text/html; charset=utf-8\nContent-Transfer-Encoding: quoted-printable\n\n<p class=3D\"a\">The caf=C3=A9 &am=\np; the t=\nug</p>=0A<p>ice", []string{"The café & the tug", "ice"}},
+		{"HTML with images", "Content-Type: multipart/related; boundary=a\n\n--a\nContent-Type: text/html\n\n<p>the <b>fog</b>\n--a\nContent-Type: image/png\n\nx\n--a--", []string{"the fog"}},
 		{"base64", "Content-Transfer-Encoding: BASE64\n\ndGhlIGZvZw==\n", nil},
 		{"charset", "Content-Type: text/plain; charset=iso-8859-1\n\nthe fog\n", nil},
 		{"broken type", "Content-Type: text/plain; charset\n\nthe fog\n", []string{"the fog"}},
@@ -39,6 +41,7 @@ func TestMailSpelling(t *testing.T) {
 		{"Content-Transfer-Encoding: quoted-printable", "the fog", "fog", "é", "-"},
 		{"X: y", "the fog", "fog", "é", "-"},
 		{"X: y", "the fog", "fog", "ice", "ice"},
+		{"Content-Type: text/html; charset=utf-8\nContent-Transfer-Encoding: quoted-printable", "<p>the fog", "fog", "é<", "=C3=A9&lt;"},
 		{"Subject: the tide", "", "tide", "ice", "ice"},
 		{"Subject: the tide", "", "tide", "é", "-"},
 		{"Subject: the tide =?utf-8?q?x?=", "", "tide", "ice", "-"},
@@ -72,5 +75,6 @@ func TestMailDepth(t *testing.T) {
 }
 
 func FuzzMail(f *testing.F) {
-	fuzzFormat(f, text.Mail, mailSample, "Subject: =?utf-8?q?a?= b\n =?utf-8?b?YQ==?=\nContent-Type: text/plain;format=flowed\n\na \n b=\n-- \n")
+	fuzzFormat(f, text.Mail, mailSample, "Subject: =?utf-8?q?a?= b\n =?utf-8?b?YQ==?=\nContent-Type: text/plain;format=flowed\n\na \n b=\n-- \n",
+		"Content-Type: text/html; charset=utf-8\nContent-Transfer-Encoding: quoted-printable\n\n<p a=3D\"b\" title=3Dc>d =C3=A9&am=\np; <b>e</b>=0A=20<img alt=3D'f g'>")
 }

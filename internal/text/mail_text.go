@@ -6,31 +6,6 @@ type mailText struct {
 	flowed bool // a line that ends with a space goes on in the next (RFC 3676)
 }
 
-// read yields what the writer wrote in source[from:to], unless its encoding or
-// charset is one that is left out.
-func (t *mailText) read(encoding, charset string, from, to int) {
-	ascii := charset == "" || charset == "us-ascii" || charset == "ascii"
-	if !ascii && charset != "utf-8" && charset != "utf8" {
-		return
-	}
-	p := prose{source: t.source}
-	spell := func(words string) string { return words }
-	switch encoding {
-	case "", "7bit":
-		ascii = true
-		p.verbatim(from, to)
-	case "8bit", "binary":
-		p.verbatim(from, to)
-	case "quoted-printable":
-		p.quotedPrintable(from, to)
-		spell = quotedSpelled
-	}
-	if b := p.block(); b != nil {
-		b.escape = func(words string) (string, bool) { return spell(words), !ascii || isASCII(words) }
-		t.lines(b)
-	}
-}
-
 // lines yields the paragraphs of a text, but no quoted line and nothing from the
 // line "-- " on, behind which stands the signature.
 func (t *mailText) lines(b *Block) {

@@ -29,7 +29,7 @@ func recordFormats() []format {
 			extensions: []string{".po", ".pot"}, languages: []string{"po"}, read: readPO,
 		},
 		{
-			name: Mail, about: "subject and plain text parts; not quoted lines, signatures, attachments and base64",
+			name: Mail, about: "subject and text parts; not quoted lines, signatures, attachments and base64",
 			extensions: []string{".eml"}, read: readMail,
 		},
 		{

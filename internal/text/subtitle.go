@@ -2,6 +2,7 @@ package text
 
 import (
 	"bytes"
+	"strings"
 	"unicode/utf8"
 )
 
@@ -83,7 +84,7 @@ func (s *subtitles) goesOn(l textLine) bool {
 	before := bytes.TrimRight(s.prose.text, " \t\r\n\"')]\u201D\u2019\u00BB")
 	end, _ := utf8.DecodeLastRune(before)
 	first, _ := utf8.DecodeRune(s.visible(l))
-	return bytes.IndexRune([]byte(".!?:\u2026\u266A"), end) < 0 && isLower(first)
+	return !strings.ContainsRune(".!?:\u2026\u266A", end) && isLower(first)
 }
 
 // speaks reports that a line begins with the dash of a speaker.
