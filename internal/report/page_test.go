@@ -1,9 +1,11 @@
 package report
 
 import (
+	stdhtml "html"
 	"regexp"
 	"strings"
 	"testing"
+	"unicode/utf8"
 
 	"example.org/foulcase"
 )
@@ -47,7 +49,11 @@ func TestPage(t *testing.T) {
 	}
 }
 
-var tags = regexp.MustCompile(`<[^>]*>`)
+var (
+	tags = regexp.MustCompile(`<[^>]*>`)
+	tip  = regexp.MustCompile(`<span class=tip.*?</span>`)
+	ours = regexp.MustCompile(`^(<span class=line>|</span>|</a>|<a class="query" href="#d1m\dl"[^<>]*>)$`)
+)
 
 // The page shows the text of a document and nothing else of it, line by line.
 func TestPageShowsTheText(t *testing.T) {
@@ -69,7 +75,7 @@ func TestPageShowsTheText(t *testing.T) {
 		if err != nil {
 			t.Fatal(err)
 		}
-		text := regexp.MustCompile(`<span class=tip.*?</span>`).ReplaceAllString(string(html), "")
+		text := tip.ReplaceAllString(string(html), "")
 		if got := tags.ReplaceAllString(text, ""); strings.TrimSuffix(got, "\n") != want {
 			t.Errorf("%q shows %q", source, got)
 		}
@@ -77,6 +83,37 @@ func TestPageShowsTheText(t *testing.T) {
 			t.Errorf("%q: %d elements begin and %d end", source, opened, closed)
 		}
 	}
+}
+
+// FuzzHighlighted holds that the page shows every character of a document, in
+// order, wherever marks stand, and lets no markup of it through.
+func FuzzHighlighted(f *testing.F) {
+	f.Add("The <b>tug</b> & her\r\ncrew\x1b\u202e\xff", uint8(4), uint8(9))
+	f.Add("\r\r\n\n", uint8(0), uint8(2))
+	f.Fuzz(func(t *testing.T, source string, start, length uint8) {
+		from := min(int64(start), int64(len(source)))
+		to := min(from+int64(length), int64(len(source)))
+		m := foulcase.Mark{Offset: from, Length: to - from, Corrections: []foulcase.Correction{{Text: "<i>"}}}
+		html, err := highlighted(Document{Source: []byte(source)}, []item{{m, "d1", 1}, {m, "d1", 2}})
+		if err != nil {
+			t.Fatal(err)
+		}
+		text := tip.ReplaceAllString(string(html), "")
+		for _, tag := range tags.FindAllString(text, -1) {
+			if !ours.MatchString(tag) {
+				t.Fatalf("%q comes out as the tag %s", source, tag)
+			}
+		}
+		if from == to || !utf8.ValidString(source[:from]) || !utf8.ValidString(source[from:to]) {
+			return // the second mark shows nothing new, or a character is cut
+		}
+		shown := stdhtml.UnescapeString(tags.ReplaceAllString(text, ""))
+		want := strings.Map(seen, strings.NewReplacer("\r\n", "\x00", "\n", "\x00", "\r", "\x00").Replace(source))
+		shown = strings.ReplaceAll(shown, "\n", "\u2400")
+		if shown != want {
+			t.Fatalf("%q shows %q, want %q", source, shown, want)
+		}
+	})
 }
 
 func TestPageOfNothing(t *testing.T) {
