@@ -123,7 +123,7 @@ func (d *rst) element(i, bound, indent int) int {
 	case simpleBorder(line):
 		return d.simpleTable(i, bound)
 	case bytes.HasPrefix(line, []byte("| ")):
-		d.emit(false, d.inline, [2]int{d.lines[i].start + 2, d.lines[i].end})
+		d.emit(false, [2]int{d.lines[i].start + 2, d.lines[i].end})
 		return i + 1
 	}
 	if n := fieldMark(line); n > 0 {
@@ -168,7 +168,7 @@ func (d *rst) title(i, bound int) int {
 }
 
 func (d *rst) heading(i int) {
-	d.emit(true, d.inline, [2]int{d.lines[i].start, d.lines[i].end})
+	d.emit(true, [2]int{d.lines[i].start, d.lines[i].end})
 }
 
 // adornment returns the length of a line of one repeated sign, 0 for others.
@@ -243,7 +243,7 @@ func (d *rst) text(i, bound, indent int) int {
 		if n := bytes.Index(d.line(i), []byte(" : ")); n >= 0 {
 			l.end = l.start + n
 		}
-		d.emit(false, d.inline, [2]int{l.start, l.end})
+		d.emit(false, [2]int{l.start, l.end})
 		return end
 	}
 	d.paragraph(i, end)
@@ -265,7 +265,7 @@ func (d *rst) paragraph(i, end int) {
 			to--
 		}
 	}
-	d.emit(false, d.inline, [2]int{d.lines[i].start, to})
+	d.emit(false, [2]int{d.lines[i].start, to})
 }
 
 // literal passes over the literal block from line i on: the indented lines, or
@@ -288,17 +288,9 @@ func (d *rst) literal(i, bound, indent int) int {
 	return first
 }
 
-// emit makes a block of stretches of the source, read by inline. Where there are
-// several, other text stands between them.
-func (d *rst) emit(heading bool, inline func(p *prose, from, to int), stretches ...[2]int) {
-	p := prose{source: d.source}
-	for n, s := range stretches {
-		if n > 0 && len(p.text) > 0 && s[0] > p.end {
-			p.standIn("\n", p.end, p.end+1)
-		}
-		inline(&p, s[0], s[1])
-	}
-	if b := p.block(); b != nil {
+// emit makes a block of stretches of the source.
+func (d *rst) emit(heading bool, stretches ...[2]int) {
+	if b := stretchesBlock(d.source, d.inline, stretches...); b != nil {
 		b.Heading, b.escape = heading, escapeRST
 		d.blocks = append(d.blocks, b)
 	}

@@ -117,7 +117,7 @@ func (d *rst) withoutOptions(i, end int) int {
 func (d *rst) alternative(i, end int) {
 	for ; i < end && fieldMark(d.line(i)) > 0; i++ {
 		if bytes.HasPrefix(d.line(i), []byte(":alt: ")) {
-			d.emit(false, d.inline, [2]int{d.lines[i].start + len(":alt: "), d.lines[i].end})
+			d.emit(false, [2]int{d.lines[i].start + len(":alt: "), d.lines[i].end})
 		}
 	}
 }

@@ -69,7 +69,7 @@ func (d *rst) paragraphOfCell(lines [][2]int) {
 	if n := bulletMark(d.source[first[0]:first[1]]); n > 0 {
 		lines[0][0] += n
 	}
-	d.emit(false, d.inline, lines...)
+	d.emit(false, lines...)
 }
 
 // simpleTable reads a table whose columns are shown by its borders, and returns

@@ -25,17 +25,17 @@ func (e *element) read() bool { return !e.foreign && !e.hidden }
 
 // tagged gathers the blocks of a document with tags.
 type tagged struct {
-	source   []byte
-	language string // primary subtag
-	blocks   []*Block
-	prose    prose
-	open     []element // open[0] is the document
-	gap      int       // where in the running sentence something was left out, or -1
-	literal  bool      // the running block has text of a CDATA section
+	source  []byte
+	options Options
+	blocks  []*Block
+	prose   prose
+	open    []element // open[0] is the document
+	gap     int       // where in the running sentence something was left out, or -1
+	literal bool      // the running block has text of a CDATA section
 }
 
 func newTagged(source []byte, o Options) tagged {
-	t := tagged{source: source, language: cmp.Or(o.Language, "en"), open: []element{{}}}
+	t := tagged{source: source, options: o, open: []element{{}}}
 	t.begin(bomLen(source))
 	return t
 }
@@ -116,11 +116,10 @@ func (t *tagged) foreign(at tag, inherited bool) bool {
 	if translate == "no" {
 		return true
 	}
-	primary, _, _ := strings.Cut(strings.TrimSpace(language), "-")
-	if primary == "" {
+	if strings.TrimSpace(language) == "" {
 		return inherited
 	}
-	return !strings.EqualFold(primary, t.language)
+	return !t.options.reads(language)
 }
 
 // find returns the depth of the innermost open element that is wanted, or 0 when
