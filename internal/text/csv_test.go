@@ -1,6 +1,8 @@
 package text_test
 
 import (
+	"encoding/csv"
+	"math/rand/v2"
 	"strings"
 	"testing"
 
@@ -66,3 +68,37 @@ func TestCSVSpelling(t *testing.T) {
 
 func FuzzCSV(f *testing.F) { fuzzFormat(f, text.CSV, csvSample) }
 func FuzzTSV(f *testing.F) { fuzzFormat(f, text.TSV, strings.ReplaceAll(csvSample, ",", "\t")) }
+
+// TestCSVLikeTheStandardLibrary: what encoding/csv writes is read cell by cell.
+func TestCSVLikeTheStandardLibrary(t *testing.T) {
+	random := rand.New(rand.NewPCG(4, 17))
+	pieces := []string{"fog", "the tide", `"`, `""`, ",", ";", "\t", "é", "x"}
+	for _, f := range []text.Format{text.CSV, text.TSV} {
+		var written strings.Builder
+		w := csv.NewWriter(&written)
+		if f == text.TSV {
+			w.Comma = '\t'
+		}
+		record := []string{"one", "two", "three"}
+		var want []string
+		for range 300 {
+			if err := w.Write(record); err != nil {
+				t.Fatal(err)
+			}
+			for i := range record {
+				record[i] = ""
+				for range 1 + random.IntN(5) {
+					record[i] += pieces[random.IntN(len(pieces))]
+				}
+				if cell := strings.TrimSpace(record[i]); cell != "" {
+					want = append(want, cell)
+				}
+			}
+		}
+		if err := w.Write(record); err != nil {
+			t.Fatal(err)
+		}
+		w.Flush()
+		checkOptions(t, f, text.Options{Fields: []string{"one", "two", "3"}}, []reading{{"random cells", written.String(), want}})
+	}
+}

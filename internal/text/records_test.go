@@ -75,3 +75,27 @@ func TestRecordsBounds(t *testing.T) {
 		}
 	}
 }
+
+// BenchmarkRecords measures the readers of records and messages, each with a
+// megabyte of its format.
+func BenchmarkRecords(b *testing.B) {
+	for f, sample := range map[text.Format]string{
+		text.SRT: srtSample, text.VTT: vttSample + "\n\n", text.PO: poSample, text.Mail: mailSample,
+		text.CSV: csvSample, text.JSONLines: strings.ReplaceAll(jsonSample, "\n", "") + "\n",
+	} {
+		source := strings.Repeat(sample, 1<<20/len(sample))
+		if f == text.Mail {
+			source = strings.Replace(sample, "The pilot", strings.Repeat("The pilot left the caf=C3=A9 at n=\r\noon.\r\n\r\n", 1<<20/48)+"The pilot", 1)
+		}
+		b.Run(string(f), func(b *testing.B) {
+			b.SetBytes(int64(len(source)))
+			for b.Loop() {
+				for _, err := range text.Blocks(strings.NewReader(source), f, text.Options{}) {
+					if err != nil {
+						b.Fatal(err)
+					}
+				}
+			}
+		})
+	}
+}
