@@ -21,14 +21,14 @@ func goPieces(source []byte, take func(codePiece)) {
 	file := files.AddFile("", files.Base(), len(source))
 	var s scanner.Scanner
 	s.Init(file, source, nil, scanner.ScanComments)
-	inside := 0 // where the last piece or token ended
+	inside := 0 // where the last piece or token ended, or a byte of it
 	for {
 		pos, kind, literal := s.Scan()
 		if kind == token.EOF {
 			return
 		}
 		at := file.Offset(pos)
-		first := bytes.ContainsAny(source[inside:at], "\r\n") || inside == 0
+		first := bytes.ContainsAny(source[min(inside, at):at], "\r\n") || inside == 0
 		switch kind {
 		case token.COMMENT:
 			inside = goCommentAt(source, at, first, take)
@@ -36,7 +36,7 @@ func goPieces(source []byte, take func(codePiece)) {
 			inside = goStringAt(source, at, len(literal), take)
 		case token.SEMICOLON: // may stand for a line end
 		default:
-			inside = at + max(1, len(literal))
+			inside = at + 1
 		}
 	}
 }

@@ -207,6 +207,7 @@ func FuzzSource(f *testing.F) {
 	for _, s := range sourceSamples {
 		f.Add([]byte(s.source))
 	}
+	f.Add([]byte("0\x83"))
 	formats := sourceFormats()
 	f.Fuzz(func(t *testing.T, source []byte) {
 		for _, format := range formats {
