@@ -64,6 +64,10 @@ func registry() []format {
 			name: RST, about: "text and the directives that hold text; not code, roles that are code, and comments",
 			extensions: []string{".rst", ".rest"}, languages: []string{"restructuredtext"}, read: readRST,
 		},
+		{
+			name: AsciiDoc, about: "text, titles and tables; not listings, attributes, macros and comments",
+			extensions: []string{".adoc", ".asciidoc", ".asc"}, languages: []string{"asciidoc"}, read: readAsciiDoc,
+		},
 	}, recordFormats(), packedFormats(), sourceFormats())
 }
 
