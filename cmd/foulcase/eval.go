@@ -6,7 +6,6 @@ import (
 	"fmt"
 	"io"
 	"runtime"
-	"runtime/debug"
 	"slices"
 	"strings"
 
@@ -92,25 +91,6 @@ func (f *measureFlags) typed() (args []string, options map[string]string) {
 	})
 	slices.Sort(args)
 	return args, options
-}
-
-// programVersion is the version of foulcase and, where it is known, the
-// revision that it was built from.
-func programVersion() string {
-	info, ok := debug.ReadBuildInfo()
-	if !ok {
-		return "unknown"
-	}
-	version := info.Main.Version
-	for _, s := range info.Settings {
-		switch {
-		case s.Key == "vcs.revision":
-			version += " " + s.Value
-		case s.Key == "vcs.modified" && s.Value == "true":
-			version += " modified"
-		}
-	}
-	return version
 }
 
 // finish reports what was measured and says whether the gate was passed.

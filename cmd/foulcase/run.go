@@ -40,11 +40,7 @@ func dispatch(c *console, args []string) (status, error) {
 	if !ok {
 		return notAVerb(c, args)
 	}
-	fs := pflag.NewFlagSet(v.name, pflag.ContinueOnError)
-	fs.SortFlags = false
-	fs.SetOutput(io.Discard)
-	fs.Usage = func() {}
-	act := v.declare(fs)
+	fs, act := v.flagSet()
 	switch err := fs.Parse(rest); {
 	case errors.Is(err, pflag.ErrHelp):
 		printHelp(c.out, v, fs)
@@ -69,6 +65,8 @@ func notAVerb(c *console, args []string) (status, error) {
 	case first == "help" || first == "--help" || first == "-h":
 		printOverview(c.out, "")
 		return clean, nil
+	case first == "--version":
+		return clean, printVersion(c.out)
 	case isFamily(first) && len(args) == 1:
 		printOverview(c.err, first)
 		return trouble, nil

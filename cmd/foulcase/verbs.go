@@ -36,6 +36,7 @@ func verbs() []verb {
 		proofVerb(),
 		rankVerb(),
 		ledgerVerb(),
+		stetVerb(),
 		editorVerb(),
 		lmTrainVerb(),
 		lmMeasureVerb(),
@@ -48,7 +49,18 @@ func verbs() []verb {
 		evalNoiseVerb(),
 		evalPageVerb(),
 		evalCompareVerb(),
+		manualVerb(),
+		completionVerb(),
 	}
+}
+
+// flagSet declares the verb's flags on a new set.
+func (v verb) flagSet() (*pflag.FlagSet, action) {
+	fs := pflag.NewFlagSet(v.name, pflag.ContinueOnError)
+	fs.SortFlags = false
+	fs.SetOutput(io.Discard)
+	fs.Usage = func() {}
+	return fs, v.declare(fs)
 }
 
 // findVerb splits args into the verb they begin with and what follows it.
@@ -83,7 +95,8 @@ func printOverview(w io.Writer, family string) {
 			fmt.Fprintf(w, "  %-13s %s\n", v.name, v.summary)
 		}
 	}
-	fmt.Fprint(w, "\n`foulcase VERB --help` tells the flags of a verb and shows an example.\n"+
+	fmt.Fprint(w, "\n`foulcase VERB --help` tells the flags of a verb and shows an example;\n"+
+		"`foulcase --version` tells the version and the model inside.\n"+
 		"Exit codes: 0 nothing marked, 1 something marked, 2 trouble.\n")
 }
 
