@@ -99,3 +99,14 @@ func BenchmarkRecords(b *testing.B) {
 		})
 	}
 }
+
+// TestRecordsEdits holds fuller documents than those in testdata to the rules for
+// edits.
+func TestRecordsEdits(t *testing.T) {
+	for f, source := range map[text.Format]string{
+		text.SRT: srtSample, text.VTT: vttSample, text.PO: poSample, text.Mail: mailSample, text.CSV: csvSample,
+		text.TSV: strings.ReplaceAll(csvSample, ",", "\t"), text.JSON: jsonSample, text.JSONLines: strings.ReplaceAll(jsonSample, "\n", ""),
+	} {
+		t.Run(string(f), func(t *testing.T) { checkEdits(t, f, []byte(source)) })
+	}
+}
