@@ -112,7 +112,7 @@ func revise(source []byte, o foulcase.Options, marks []foulcase.Mark) (foulcase.
 
 // rewrite puts revised in the place of what was read at path.
 func (p *proofreader) rewrite(path string, source, revised []byte) error {
-	target, err := rewritable(path, p.operands)
+	target, err := rewritable(path, p.folders)
 	if err != nil {
 		return err
 	}

@@ -7,15 +7,15 @@ import (
 )
 
 // rewritable returns the file that stands behind path, when that may be written:
-// when no link leads out of the folder that the user named, or, for a file named
-// by itself, out of the current one (out of the file's own, for a path that leads
-// elsewhere in plain words).
-func rewritable(path string, operands []string) (string, error) {
+// when no link leads out of the folder, one of those that the user named, that it
+// was found in; or, for a file named by itself, out of the current one (out of the
+// file's own, for a path that leads elsewhere in plain words).
+func rewritable(path string, folders []string) (string, error) {
 	target, err := filepath.EvalSymlinks(path)
 	if err != nil {
 		return "", err
 	}
-	root := namedRoot(path, operands)
+	root := namedRoot(path, folders)
 	real, err := filepath.EvalSymlinks(root)
 	if err != nil {
 		return "", err
@@ -27,11 +27,22 @@ func rewritable(path string, operands []string) (string, error) {
 	return target, nil
 }
 
-// namedRoot is the folder that a file was named under.
-func namedRoot(path string, operands []string) string {
+// foldersAmong are the operands that are folders.
+func foldersAmong(operands []string) []string {
+	var folders []string
 	for _, operand := range operands {
-		if info, err := os.Stat(operand); err == nil && info.IsDir() && below(absolute(operand), absolute(path)) {
-			return operand
+		if info, err := os.Stat(operand); err == nil && info.IsDir() {
+			folders = append(folders, operand)
+		}
+	}
+	return folders
+}
+
+// namedRoot is the folder that a file was named under.
+func namedRoot(path string, folders []string) string {
+	for _, folder := range folders {
+		if below(absolute(folder), absolute(path)) {
+			return folder
 		}
 	}
 	if below(absolute("."), absolute(path)) {

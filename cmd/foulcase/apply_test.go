@@ -126,7 +126,7 @@ func TestRewritable(t *testing.T) {
 		{"tree", filepath.Join(root, "beside", "b.txt"), filepath.Join(root, "beside", "b.txt"), "beside/b.txt"},
 	} {
 		t.Chdir(filepath.Join(root, test.dir))
-		got, err := rewritable(test.path, []string{test.operand})
+		got, err := rewritable(test.path, foldersAmong([]string{test.operand}))
 		if (err == nil) != (test.want != "") {
 			t.Errorf("in %s, %s of %s: %q, %v", test.dir, test.path, test.operand, got, err)
 			continue

@@ -122,7 +122,7 @@ func (f *proofFlags) open(c *console, operands []string) (*proofreader, error) {
 	if f.tree.known == "" && f.tree.writeKnown == "" {
 		f.tree.known = f.engine.here.Get("known")
 	}
-	p := &proofreader{engine: e, settings: found, flags: f, operands: operands, progress: c.progress}
+	p := &proofreader{engine: e, settings: found, flags: f, folders: foldersAmong(operands), progress: c.progress}
 	if p.documents, err = f.tree.find(c, operands, search{stdinName: f.name, anyBytes: f.engine.here.Get("encoding") != "", format: documentFormat(found)}); err == nil {
 		p.form, err = report.New(f.emit.value, report.Settings{
 			Palette: choosePalette(f.color.value, c.out.terminal),

@@ -19,7 +19,7 @@ type proofreader struct {
 	engine    *foulcase.Engine
 	settings  *house.Resolver
 	flags     *proofFlags
-	operands  []string // as the user named them
+	folders   []string // that the user named
 	documents *documents
 	form      report.Form
 	progress  *progress

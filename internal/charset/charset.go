@@ -100,13 +100,6 @@ func (e *Encoding) Name() string { return e.name }
 // IsUTF8 tells that text of the encoding needs no decoding.
 func (e *Encoding) IsUTF8() bool { return e.codec == nil }
 
-// IsWide tells that characters of ASCII take several bytes, so that tools that
-// go by lines of bytes cannot read it.
-func (e *Encoding) IsWide() bool {
-	_, wide := e.codec.(units)
-	return wide
-}
-
 // ErrNotEncodable is wrapped by errors of Encode.
 var ErrNotEncodable = errors.New("not in this encoding")
 
