@@ -37,6 +37,7 @@ func verbs() []verb {
 		rankVerb(),
 		ledgerVerb(),
 		stetVerb(),
+		stetVerb(),
 		editorVerb(),
 		lmTrainVerb(),
 		lmMeasureVerb(),
