@@ -51,6 +51,11 @@ func (r *commentReader) line(l stretch, first bool) {
 		return
 	}
 	r.code = false
+	if namesFollow(line) {
+		r.finish()
+		r.members = true
+		return
+	}
 	if directive(line, from == l.from) || codeLine(line) {
 		r.finish()
 		return
@@ -64,7 +69,6 @@ func (r *commentReader) line(l stretch, first bool) {
 	if skipped > 0 || listMark(line) {
 		r.finish()
 	}
-	r.members = r.members || namesFollow(line)
 	r.inline(from+skipped, to)
 	r.prose.lineBreak(l.to)
 }

@@ -13,6 +13,7 @@ import (
 //   - A directive is meant for a tool; see directive.
 //   - A line of code has a sign of code, and at least half of what stands between
 //     its blanks is no plain word; or it begins with an assignment.
+//   - The head of a list of names with what they mean ("Args:") is no prose.
 //   - A tag names what the words behind it are about; see docTag.
 //   - A string is prose when it has two plain words or more, these are two thirds
 //     of what has letters or digits between its blanks, and it is no query or
