@@ -37,7 +37,6 @@ func verbs() []verb {
 		rankVerb(),
 		ledgerVerb(),
 		stetVerb(),
-		stetVerb(),
 		editorVerb(),
 		lmTrainVerb(),
 		lmMeasureVerb(),
