@@ -46,11 +46,8 @@ func (m *mail) head(pos, end int) (h mailHead, body int) {
 		if l.blank() {
 			return h, l.next
 		}
-		if pos = l.next; m.folds(l.start) {
-			continue
-		}
 		name, _, ok := bytes.Cut(m.source[l.start:l.end], []byte(":"))
-		if !ok {
+		if !ok || m.folds(l.start) {
 			continue
 		}
 		value := piece{l.start + len(name) + 1, l.end}
