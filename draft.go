@@ -20,10 +20,11 @@ type Draft struct {
 	format  text.Format
 	source  []byte
 	blocks  []*draftBlock
-	near    vicinity // around edits not read yet
-	unread  bool     // the blocks are not those of source
-	fault   error    // of reading source
-	drifted bool     // there were edits since everything was judged together
+	near    vicinity   // around edits not read yet
+	unread  bool       // the blocks are not those of source
+	fault   error      // of reading source
+	named   text.Names // outside the prose, when the whole was read last
+	drifted bool       // there were edits since everything was judged together
 }
 
 // NewDraft begins a draft with a copy of source, UTF-8. Its format must not be a

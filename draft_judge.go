@@ -236,6 +236,7 @@ func (d *Draft) judgeBlock(ctx context.Context, b *draftBlock, worst draftState)
 		return 0, nil
 	}
 	places := b.Places()
+	d.names = d.named
 	i := -1
 	for sentence := range d.segmenter.Sentences(b.Text) {
 		i++

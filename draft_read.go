@@ -129,7 +129,10 @@ func (d *Draft) read() {
 	}
 	if d.unread || d.near.open {
 		blocks, err := d.blocksOf(d.source)
-		d.fault = err
+		d.fault, d.named = err, nil
+		if len(blocks) > 0 {
+			d.named = blocks[0].Names
+		}
 		d.replace(0, len(d.blocks), blocks)
 		d.unread, d.near = false, vicinity{}
 	}

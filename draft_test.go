@@ -215,6 +215,29 @@ func TestDraftTakesOptions(t *testing.T) {
 	}
 }
 
+// TestNamesOfCodeStand: a form that the document's code has is a name there, in proofs
+// and in drafts; a common word is looked at all the same.
+func TestNamesOfCodeStand(t *testing.T) {
+	document := "// The bufr is emptied befor the the pump is strated.\nvar bufr, the, strated int\n"
+	o := foulcase.Options{Format: "go"}
+	var got []string
+	for _, m := range proof(t, document, o) {
+		got = append(got, m.Observed)
+	}
+	if want := []string{"befor", "the the"}; !slices.Equal(got, want) {
+		t.Errorf("marked %q, want %q", got, want)
+	}
+	d := draft(t, document, o)
+	sameMarks(t, "draft", now(t, d, nil), proof(t, document, o))
+	at := strings.Index(document, "pump")
+	if err := d.Edit(at, at, []byte("bufr ")); err != nil {
+		t.Fatal(err)
+	}
+	if marks := now(t, d, nil); len(marks) != 2 {
+		t.Errorf("after an edit: %+v", marks)
+	}
+}
+
 // TestDraftHeedsTheHouse: what the writer lets stand, and what the house has written
 // otherwise, count in a draft as in Proof.
 func TestDraftHeedsTheHouse(t *testing.T) {

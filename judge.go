@@ -26,6 +26,7 @@ type judge struct {
 	house   *House
 	variety Variety
 	without Evidence
+	names   text.Names // of the document at hand
 
 	segmenter text.Segmenter
 	finder    finder
@@ -91,6 +92,7 @@ func (e *Engine) take(o Options) *judge {
 	j.variety = o.Variety
 	j.house = o.House
 	j.without = o.Without
+	j.names = nil
 	j.finder.hold(o.Variety, o.House)
 	j.recurring.reset()
 	return j
@@ -133,7 +135,7 @@ func (j *judge) classify(sl *slot) {
 	e, form := j.e, sl.token.Norm
 	first := j.ids[sl.from]
 	switch {
-	case j.house.has(form):
+	case j.house.has(form), j.names.Has(form) && e.seldom(first):
 		sl.status = closed
 	case int(first) >= e.lexicon.Len():
 		sl.status = unknown
@@ -150,6 +152,15 @@ func (j *judge) classify(sl *slot) {
 			sl.score = e.judgement.Recurrence * j.recurring.word(first, e.lexicon, 1)
 		}
 	}
+}
+
+// seldomWord is the log relative frequency, nats, under which a word that the document
+// has outside its prose too is taken for a name there (guessed; six in a million words).
+const seldomWord = -12
+
+// seldom reports a word that the lexicon lacks or that is seldom met.
+func (e *Engine) seldom(id uint32) bool {
+	return int(id) >= e.lexicon.Len() || e.lexicon.Prior(id) < seldomWord
 }
 
 // oftener is how much oftener than expected the document has a word that may have

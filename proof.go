@@ -98,6 +98,7 @@ func (d *document) weigh(ctx context.Context, blocks []*text.Block) error {
 			return ctx.Err()
 		}
 		places := b.Places()
+		d.names = b.Names
 		for s := range d.segmenter.Sentences(b.Text) {
 			found, err := d.findings(s, b.Text)
 			if err != nil {

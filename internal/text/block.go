@@ -13,6 +13,7 @@ type Block struct {
 	Text    []byte // the prose; line breaks inside are white space
 	Heading bool   // the format says that it is a heading
 	Part    string // the part of a packed document that it stands in; "" elsewhere
+	Names   Names  // what the document names outside its prose, shared by its blocks; nil where its format does not tell
 
 	source []byte                      // what the text came from: from its first source byte to its last
 	offset int64                       // of source in the whole

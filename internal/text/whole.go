@@ -9,8 +9,8 @@ import (
 const defaultMaxBytes = 16 << 20
 
 // readWhole is the reader of a format whose documents are read as a whole: parse
-// finds the blocks, in the order of the source, and readWhole their places. An
-// error of parse comes after the blocks it found.
+// finds the blocks, in the order of the source, and readWhole their places and the names outside
+// them. An error of parse comes after the blocks it found.
 func readWhole(r io.Reader, o Options, yield func(*Block, error) bool, parse func(source []byte) ([]*Block, error)) {
 	source, err := readAll(r, o)
 	if err != nil {
@@ -18,6 +18,10 @@ func readWhole(r io.Reader, o Options, yield func(*Block, error) bool, parse fun
 		return
 	}
 	blocks, err := parse(source)
+	names := namesOf(source, blocks)
+	for _, b := range blocks {
+		b.Names = names
+	}
 	if placeBlocks(source, blocks, yield) && err != nil {
 		yield(nil, err)
 	}
