@@ -120,13 +120,13 @@ type docx struct {
 	options Options
 	styles  styles
 	depth   int
-	skip    int // the depth of an element that is left out, 0 for none
-	runs    []run
-	style   string // of the paragraph
+	skip    int   // the depth of an element that is left out, 0 for none
+	runs    []run // the one at hand of each open paragraph
 }
 
 // run is a run of text with the same properties.
 type run struct {
+	style         string // of the paragraph
 	properties    []byte // the source of them
 	from          int    // where they begin, while they are read
 	language      string
@@ -190,7 +190,7 @@ func (d *docx) opened(e xmlEvent) {
 		d.skip = d.depth
 	case "w:p":
 		d.begin()
-		d.runs, d.style = append(d.runs, run{}), ""
+		d.runs = append(d.runs, run{})
 	}
 	top, r := d.top(), d.run()
 	if top == nil {
@@ -198,10 +198,10 @@ func (d *docx) opened(e xmlEvent) {
 	}
 	switch e.name {
 	case "w:pStyle":
-		d.style = e.attributes["w:val"]
-		top.heading = strings.HasPrefix(d.style, "Heading") || d.style == "Title"
+		r.style = e.attributes["w:val"]
+		top.heading = strings.HasPrefix(r.style, "Heading") || r.style == "Title"
 	case "w:r":
-		r.properties, r.language, r.code = nil, "", isCodeStyle(d.style)
+		r.properties, r.language, r.code = nil, "", isCodeStyle(r.style)
 	case "w:rPr":
 		r.from = e.end
 	case "w:rStyle":
@@ -261,7 +261,7 @@ func (d *docx) closed(e xmlEvent) {
 // the same properties, with nothing else between, nothing is lost.
 func (d *docx) text(e xmlEvent, r *run) {
 	top := d.top()
-	language := cmp.Or(r.language, d.styles.language(d.style), d.styles[""].language)
+	language := cmp.Or(r.language, d.styles.language(r.style), d.styles[""].language)
 	if r.code || !d.options.reads(language) {
 		r.after = 0
 		top.leftOut(e)

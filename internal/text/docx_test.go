@@ -109,3 +109,14 @@ func TestDocxRuns(t *testing.T) {
 		}
 	}
 }
+
+// TestDocxNested: a text box has its own style, and the paragraph around it keeps its.
+func TestDocxNested(t *testing.T) {
+	body := "<w:document " + docxSpace + "><w:p><w:pPr><w:pStyle w:val='SourceCode'/></w:pPr><w:r><w:t>code</w:t></w:r>" +
+		"<w:r><w:txbxContent><w:p><w:r><w:t>boxed</w:t></w:r></w:p></w:txbxContent></w:r><w:r><w:t>more code</w:t></w:r></w:p></w:document>"
+	source := pack(t, part{"[Content_Types].xml", "<Types/>"}, part{"word/document.xml", body})
+	const want = "document 1:1 \uFFFC\ndocument 2:1 boxed\ndocument 1:2 \uFFFC"
+	if got := showPacked(t, source, "docx"); got != want {
+		t.Errorf("got %q, want %q", got, want)
+	}
+}

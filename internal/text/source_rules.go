@@ -28,7 +28,7 @@ func ruled(line []byte) bool {
 }
 
 // directive reports lines that are meant for tools, attached to the comment's
-// leader or not: "go:build x", "-*- mode -*-", "vim: set", "check: off",
+// leader or not: "go:build x", "-*- mode -*-", "vim: set", "check: word",
 // "check-disable x", "check disable=x", "!/bin/sh", "+build", "#pragma", a single
 // word that is attached or no plain one; licence identifiers and copyright lines,
 // which are names.
@@ -48,6 +48,9 @@ func directive(line []byte, attached bool) bool {
 		return true
 	}
 	tool := isLower(rune(head[0])) && bytes.ContainsAny(head, ":-")
+	if len(fields) == 2 && tool && head[len(head)-1] == ':' {
+		return true
+	}
 	return tool && switches(head) || (tool || bytes.IndexByte(fields[1], '=') > 0) && switches(fields[1]) ||
 		head[len(head)-1] == ':' && (string(fields[1]) == "set" || bytes.IndexByte(fields[1], '=') > 0)
 }
@@ -159,7 +162,7 @@ func commandTag(line []byte) (n int, whole bool) {
 		}
 	}
 	switch name {
-	case "param", "arg", "argument", "property", "prop", "tparam", "typeparam", "template", "throws", "throw", "exception", "raises", "retval", "field":
+	case "param", "arg", "argument", "property", "prop", "tparam", "typeparam", "template", "throws", "throw", "exception", "raises", "retval", "field", "defgroup", "addtogroup", "page", "section", "anchor":
 		for n < len(line) && !isSpaceByte(line[n]) {
 			n++
 		}
