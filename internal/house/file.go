@@ -27,7 +27,7 @@ type Value struct {
 	Text   string `json:"value"`
 	Origin string `json:"origin"` // "FILE:LINE", "FOULCASE_...", "--flag" or "default"
 
-	dir string // that globs are relative to
+	dir string // that globs are relative to; "" is the root of the file system
 }
 
 // readFile reads the values of a file of settings. Errors name the file, the line

@@ -22,8 +22,11 @@ func checkGlob(glob string) error {
 // a slash before its end it is held against the names of the file and of the folders that it
 // is in, with one against the path from that folder on; there ** stands for any
 // folders. A glob covers what is in a folder that it matches, and one that ends in a
-// slash nothing but that.
+// slash nothing but that. The folder "" is the root of the file system.
 func matches(glob, dir, file string) bool {
+	if dir == "" {
+		dir = filepath.VolumeName(file) + string(filepath.Separator)
+	}
 	rel, err := filepath.Rel(dir, file)
 	if err != nil || rel == ".." || strings.HasPrefix(rel, ".."+string(filepath.Separator)) {
 		return false

@@ -121,6 +121,9 @@ func (r *Resolver) load(project string) (*Settings, error) {
 			if absent(err) {
 				err = nil
 			}
+			for i := range values { // the user's globs are for documents anywhere
+				values[i].dir = ""
+			}
 			return values, err
 		})
 	}

@@ -19,6 +19,7 @@ const maxList = 64 << 20
 // vocabulary is the house words of some lists. It is safe for concurrent use.
 type vocabulary struct {
 	paths  []string // of the lists; the user's own is the last
+	own    string   // the user's own, which may be missing; "" when there is none
 	target string   // the list that takes new words; "" when none can
 
 	mu    sync.Mutex
@@ -28,7 +29,7 @@ type vocabulary struct {
 // openVocabulary reads lists, and the user's own at the path own, if it is there. Words are
 // added to the last of the lists that were named, else to the user's own.
 func openVocabulary(named []string, own string) (*vocabulary, error) {
-	v := &vocabulary{target: own}
+	v := &vocabulary{own: own, target: own}
 	if len(named) > 0 {
 		v.target = named[len(named)-1]
 	}
@@ -37,16 +38,16 @@ func openVocabulary(named []string, own string) (*vocabulary, error) {
 		v.paths = append(v.paths, own)
 	}
 	var err error
-	v.house, err = v.read(own)
+	v.house, err = v.read()
 	return v, err
 }
 
-// read reads the lists, of which one may be missing, with more entries behind the last.
-func (v *vocabulary) read(mayMiss string, more ...string) (*foulcase.House, error) {
+// read reads the lists, with more entries behind the last.
+func (v *vocabulary) read(more ...string) (*foulcase.House, error) {
 	var lists []foulcase.HouseList
 	for _, path := range v.paths {
 		data, err := readBounded(path)
-		if absent(err) && path == mayMiss {
+		if absent(err) && path == v.own {
 			continue
 		}
 		if err != nil {
@@ -94,7 +95,7 @@ func (v *vocabulary) add(entry string) (file string, err error) {
 	}
 	v.mu.Lock()
 	defer v.mu.Unlock()
-	house, err := v.read(v.target, entry)
+	house, err := v.read(entry)
 	if err != nil {
 		return "", err
 	}
