@@ -134,11 +134,11 @@ func TestTagsBounds(t *testing.T) {
 	}
 }
 
-// checkBounds reads 300 kB of each unit, with and without a word before.
+// checkBounds reads 100 kB of each unit, with and without a word before.
 func checkBounds(t *testing.T, f text.Format, units ...string) {
 	t.Helper()
 	for _, unit := range units {
-		source := "fog and ice\n\n" + strings.Repeat(unit, 300_000/len(unit))
+		source := "fog and ice\n\n" + strings.Repeat(unit, 100_000/len(unit))
 		if !strings.HasPrefix(strings.Join(texts(t, source, f), " "), "fog and ice") {
 			t.Errorf("%s: %q repeated hides what stands before it", f, unit)
 		}

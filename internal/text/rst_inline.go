@@ -38,6 +38,10 @@ func (d *rst) construct(p *prose, i, to int) int {
 	switch c := rest[0]; {
 	case c == '\\':
 		return d.escaped(p, i, to)
+	case c == '`' && wordByte(before): // markup begins behind white space or a sign
+		n := len(rest) - len(bytes.TrimLeft(rest, "`"))
+		p.verbatim(i, i+n)
+		return i + n
 	case c == '`':
 		return d.quoted(p, i, to, "")
 	case c == ':':
@@ -48,7 +52,7 @@ func (d *rst) construct(p *prose, i, to int) int {
 		return i + 1
 	case c == '_' && !wordByte(after) && (wordByte(before) || before == '_'), c == '_' && after == '`':
 		return i + 1
-	case c == '|' && !isSpaceByte(after):
+	case c == '|' && !isSpaceByte(after) && !wordByte(before):
 		if n := bytes.IndexByte(rest[1:min(len(rest), farInline)], '|'); n > 0 && !isSpaceByte(rest[n]) {
 			p.standIn(placeholder, i, i+n+2)
 			return i + n + 2
