@@ -48,6 +48,11 @@ func BenchmarkBlocks(b *testing.B) {
 	source := prose(b)
 	for _, f := range text.Formats() {
 		b.Run(string(f), func(b *testing.B) {
+			for _, err := range text.Blocks(strings.NewReader(source), f, text.Options{}) {
+				if err != nil {
+					b.Skipf("the prose is no document of this format: %v", err)
+				}
+			}
 			b.SetBytes(int64(len(source)))
 			b.ReportAllocs()
 			for b.Loop() {

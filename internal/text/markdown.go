@@ -54,7 +54,7 @@ func (m *markdown) parse() (err error) {
 // container takes the blocks inside a block.
 func (m *markdown) container(n ast.Node) {
 	if c := n.FirstChild(); c != nil && c.Type() == ast.TypeInline {
-		m.prose = prose{source: m.source}
+		m.prose = prose{source: m.source, leaders: ">"}
 		m.inlines(n)
 		m.finish(n)
 		return
@@ -70,7 +70,7 @@ func (m *markdown) finish(n ast.Node) {
 		b.Heading = n.Kind() == ast.KindHeading
 		m.blocks = append(m.blocks, b)
 	}
-	m.prose = prose{source: m.source, end: m.prose.end}
+	m.prose = prose{source: m.source, leaders: ">", end: m.prose.end}
 }
 
 // inlines takes the prose of the inline nodes of n.

@@ -129,3 +129,23 @@ func TestMarkdownBounds(t *testing.T) {
 		}
 	}
 }
+
+// TestMarkdownInterrupted: a stretch over a line end can be replaced where a quotation goes on
+// in the next line, and cannot where emphasis begins there.
+func TestMarkdownInterrupted(t *testing.T) {
+	for source, want := range map[string]bool{
+		"over the\nthe bar":            false,
+		"> over the\n> the bar":        false,
+		"- over the\n  the bar":        false,
+		"over the\n**the** bar":        true,
+		"over *the*\nthe bar":          true,
+		"> over the\n> *the* bar":      true,
+		"over the [the](http://x) bar": true,
+	} {
+		b := blocks(t, source, text.Markdown)[0]
+		at := strings.Index(string(b.Text), "the")
+		if got := b.Interrupted(at, at+len("the the")); got != want {
+			t.Errorf("%q: %v", source, got)
+		}
+	}
+}

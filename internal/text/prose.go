@@ -3,6 +3,7 @@ package text
 import (
 	"bytes"
 	"html"
+	"strings"
 )
 
 // placeholder stands in the text for code inside a sentence.
@@ -17,6 +18,9 @@ type prose struct {
 	spans  []span // absolute source offsets
 	end    int    // where the source of the last piece ends
 	broken bool   // a line break waits for the next piece
+	// leaders are what may stand between blanks before the text of a line and
+	// belongs to the line break: a quotation's marks. Empty means anything.
+	leaders string
 }
 
 // verbatim takes source[from:to] as it is.
@@ -50,9 +54,21 @@ func (p *prose) follow(from, to int) bool {
 	}
 	if p.broken && from > p.end {
 		p.broken = false
-		p.add([]byte("\n"), p.end, from)
+		p.add([]byte("\n"), p.end, p.led(p.end, from))
 	}
 	return true
+}
+
+// led returns where what belongs to the line break at source[from:to] ends.
+func (p *prose) led(from, to int) int {
+	if p.leaders == "" {
+		return to
+	}
+	end := from
+	for end < to && (isSpaceByte(p.source[end]) || strings.IndexByte(p.leaders, p.source[end]) >= 0) {
+		end++
+	}
+	return max(end, from+1)
 }
 
 func (p *prose) add(text []byte, from, to int) {
