@@ -19,6 +19,7 @@ import (
 type console struct {
 	in       io.Reader
 	out      *output
+	raw      io.Writer // standard output for who writes whole messages himself
 	err      io.Writer
 	progress *progress
 	troubled bool // something was reported by complain
@@ -28,6 +29,7 @@ func newConsole(stdin io.Reader, stdout, stderr io.Writer) *console {
 	p := newProgress(stderr, isTerminal(stderr))
 	return &console{
 		in:       stdin,
+		raw:      stdout,
 		out:      &output{buf: bufio.NewWriterSize(stdout, 64<<10), progress: p, terminal: isTerminal(stdout)},
 		err:      &message{w: stderr, progress: p},
 		progress: p,

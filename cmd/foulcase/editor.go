@@ -3,10 +3,8 @@ package main
 import (
 	"context"
 	"errors"
-	"path/filepath"
 
 	"example.org/foulcase/internal/editor"
-	"example.org/foulcase/internal/house"
 	"github.com/spf13/pflag"
 )
 
@@ -33,13 +31,13 @@ The exit code is 0 when the editor asked for the end, 1 when it just went away,
 
 // editorFlags are what the user asked of editor.
 type editorFlags struct {
-	model string
-	stdio bool
+	engine engineFlags
+	stdio  bool
 }
 
 func declareEditor(fs *pflag.FlagSet) action {
 	f := &editorFlags{}
-	modelFlag(fs, &f.model)
+	f.engine.declare(fs)
 	fs.BoolVar(&f.stdio, "stdio", true, "speak on standard input and output; there is no other way,\nbut some editors say so")
 	return f.run
 }
@@ -52,38 +50,20 @@ func (f *editorFlags) run(c *console, operands []string) (status, error) {
 	if len(operands) > 0 {
 		return trouble, misusef("editor takes no operands; an editor names its documents itself")
 	}
-	e, err := openEngine(f.model)
+	e, _, err := f.engine.openFor()
 	if err != nil {
 		return trouble, err
 	}
 	defer e.Close()
-	err = editor.Serve(context.Background(), c.in, unbuffered{c.out}, editor.Config{
-		Engine:   e,
-		Settings: settingsFor,
+	err = editor.Serve(context.Background(), c.in, c.raw, editor.Config{
+		Engine:  e,
+		Version: programVersion(),
+		// A new resolver reads every file anew.
+		Settings: func(path string) (editor.Settings, error) { return f.engine.settings().For(path) },
 		Alive:    isAlive,
 	})
 	if errors.Is(err, editor.ErrNoShutdown) {
 		return abandoned, nil
 	}
 	return clean, err
-}
-
-// settingsFor reads the settings that hold for a document.
-func settingsFor(path string) (editor.Settings, error) {
-	file, err := house.Locate(filepath.Dir(path))
-	if err != nil {
-		return nil, err
-	}
-	return house.Load(file)
-}
-
-// unbuffered hands on at once what is written.
-type unbuffered struct{ out *output }
-
-func (u unbuffered) Write(p []byte) (int, error) {
-	n, err := u.out.Write(p)
-	if err == nil {
-		err = u.out.Flush()
-	}
-	return n, err
 }

@@ -104,7 +104,7 @@ func (d *document) actionsOn(m foulcase.Mark, diagnostics []json.RawMessage) []c
 		all = append(all, a)
 	}
 	form := quote(m.Observed)
-	if m.Kind == foulcase.Nonword || m.Kind == foulcase.Runon {
+	if m.Rule == "" && (m.Kind == foulcase.Nonword || m.Kind == foulcase.Runon) {
 		order("Add "+form+" to house words", addWordCommand, houseWord{d.uri, m.Observed})
 	}
 	order("Let "+form+" stand here", letStandCommand, stet{d.uri, house.DecisionOn(d.path, m, house.Stet, house.Here)})

@@ -4,6 +4,8 @@ import (
 	"context"
 	"encoding/json"
 	"fmt"
+	"maps"
+	"slices"
 	"sync"
 )
 
@@ -73,6 +75,16 @@ func (s *Server) cancelCall(id json.RawMessage) {
 	s.calls.mu.Unlock()
 	if c != nil {
 		c.reply(nil, failf(requestCancelled, "cancelled"))
+	}
+}
+
+// abandonCalls answers what nobody works on any more.
+func (s *Server) abandonCalls() {
+	s.calls.mu.Lock()
+	left := slices.Collect(maps.Values(s.calls.from))
+	s.calls.mu.Unlock()
+	for _, c := range left {
+		c.reply(nil, failf(serverCancelled, "the session ends"))
 	}
 }
 

@@ -27,16 +27,18 @@ type document struct {
 	version  int
 	draft    *foulcase.Draft // nil: too large, or no such format
 	format   string          // of the draft
+	fields   []string        // likewise
 	lines    lines
 	settings Settings // nil: none
 	asked    preferences
 	stands   map[mark]bool // what settings said of marks
 	closed   bool
 
-	stale  bool // the draft changed since marks were found
-	settle bool // far evidence is to be read anew too
-	judged bool // once
-	took   time.Duration
+	stale   bool          // the draft changed since marks were found
+	settle  bool          // far evidence is to be read anew too
+	judged  bool          // once
+	took    time.Duration // to judge an edit, the last time
+	opening *progress     // of the first judgement; nil when that is not under way
 
 	marks    []foulcase.Mark // of the draft, if it is not stale
 	items    []byte          // diagnostics of the marks, a JSON array
@@ -62,9 +64,18 @@ func (d *document) run() {
 			d.judge(d.s.ctx)
 		}
 	}
+	d.opened()
 	if d.draft != nil {
 		d.draft.Close()
 	}
+}
+
+// opened ends what is shown of the first judgement.
+func (d *document) opened() {
+	if d.opening != nil {
+		d.opening.end()
+	}
+	d.opening = nil
 }
 
 // wait waits for a task; it reports whether timeout came before.
@@ -137,7 +148,7 @@ func (d *document) begin(source []byte) {
 	if d.report(err); err != nil {
 		return
 	}
-	d.draft, d.format = draft, o.Format
+	d.draft, d.format, d.fields = draft, o.Format, o.Fields
 	d.lines.reset(source)
 }
 
@@ -202,8 +213,11 @@ func (d *document) judge(ctx context.Context) *failure {
 	case ended:
 		return failf(requestCancelled, "cancelled")
 	}
-	d.took = time.Since(begun)
+	if d.judged && !d.settle {
+		d.took = time.Since(begun)
+	}
 	d.stale, d.settle, d.judged = false, false, true
+	d.opened()
 	d.report(err)
 	d.keep(marks)
 	d.publish()
@@ -217,9 +231,10 @@ func (d *document) look(ctx context.Context) ([]foulcase.Mark, error) {
 	}
 	var progress func(done, total int)
 	if !d.judged {
-		p := d.s.progress(nameOf(d.uri), len(d.draft.Source()))
-		defer p.end()
-		progress = p.report
+		if d.opening == nil {
+			d.opening = d.s.progress(nameOf(d.uri), len(d.draft.Source()))
+		}
+		progress = d.opening.report
 	}
 	if d.settle {
 		return d.draft.Settle(ctx, progress)

@@ -62,7 +62,7 @@ func (s *Server) didSave(params json.RawMessage) *failure {
 		s.reload(true)
 	}
 	return s.to(p.TextDocument.URI, func(d *document) {
-		d.inbox.put(task{changes: true, run: func() { d.stale, d.settle = true, true }})
+		d.inbox.put(task{run: func() { d.stale, d.settle = true, true }})
 	})
 }
 

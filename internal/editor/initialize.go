@@ -38,7 +38,7 @@ type clientCapabilities struct {
 		} `json:"diagnostics"`
 	} `json:"workspace"`
 	TextDocument struct {
-		Diagnostic *struct{} `json:"diagnostic"` // it pulls diagnostics
+		Diagnostic json.RawMessage `json:"diagnostic"` // if any, it pulls diagnostics
 		CodeAction struct {
 			DataSupport    bool `json:"dataSupport"`
 			ResolveSupport struct {
@@ -48,7 +48,9 @@ type clientCapabilities struct {
 	} `json:"textDocument"`
 }
 
-func (c *clientCapabilities) pulls() bool { return c.TextDocument.Diagnostic != nil }
+func (c *clientCapabilities) pulls() bool {
+	return len(c.TextDocument.Diagnostic) > 0 && string(c.TextDocument.Diagnostic) != "null"
+}
 
 // resolvesEdits says that the edit of a code action may be left out until it is asked
 // for.

@@ -38,10 +38,9 @@ type documentParams struct {
 	TextDocument textDocument `json:"textDocument"`
 }
 
+// didChangeConfigurationParams has any JSON for settings, by the names of servers.
 type didChangeConfigurationParams struct {
-	Settings struct {
-		Foulcase json.RawMessage `json:"foulcase"`
-	} `json:"settings"`
+	Settings json.RawMessage `json:"settings"`
 }
 
 type didChangeWorkspaceFoldersParams struct {

@@ -106,6 +106,7 @@ func (s *Server) Close() error {
 	s.closed = true
 	s.mu.Unlock()
 	s.work.Wait()
+	s.abandonCalls()
 	s.out.close()
 	select {
 	case <-s.out.closed:

@@ -50,11 +50,12 @@ func (p preferences) clone() preferences {
 	return p
 }
 
-// set reads settings, a JSON object; null and nothing change nothing. What cannot be
-// read is told to complain and left as it was.
+// set reads settings, a JSON object; null, nothing and [], which some clients write for
+// no settings, change nothing. What cannot be read is told to complain and left as it
+// was.
 func (p *preferences) set(raw json.RawMessage, complain func(string)) {
 	var all map[string]json.RawMessage
-	if len(raw) == 0 || string(raw) == "null" {
+	if s := string(raw); s == "" || s == "null" || s == "[]" {
 		return
 	}
 	if json.Unmarshal(raw, &all) != nil {
@@ -144,6 +145,7 @@ func (d *document) options() foulcase.Options {
 	var o foulcase.Options
 	if d.settings != nil {
 		o = d.settings.Options(d.path)
+		o.Encoding = "" // of the file; the client sends UTF-8
 	}
 	byName, named := foulcase.FormatOf(d.path)
 	if o.Format == "" || o.Format == byName { // no settings say otherwise
@@ -183,7 +185,7 @@ func (d *document) restart(all bool) {
 		return
 	}
 	o := d.options()
-	if o.Format != d.format {
+	if o.Format != d.format || !slices.Equal(o.Fields, d.fields) {
 		old := d.draft
 		d.begin(old.Source())
 		old.Close()

@@ -84,9 +84,12 @@ func (s *Server) didChangeConfiguration(params json.RawMessage) *failure {
 	if f := decode(params, &p); f != nil {
 		return f
 	}
-	s.mu.Lock()
-	s.defaults.set(p.Settings.Foulcase, s.reportSetting)
-	s.mu.Unlock()
+	var all map[string]json.RawMessage
+	if json.Unmarshal(p.Settings, &all) == nil {
+		s.mu.Lock()
+		s.defaults.set(all[source], s.reportSetting)
+		s.mu.Unlock()
+	}
 	s.each(func(d *document) {
 		if !s.configure(d) {
 			s.prefer(d, nil)

@@ -20,6 +20,9 @@ func wording(m foulcase.Mark) string {
 	for _, c := range m.Corrections {
 		forms = append(forms, quote(c.Text))
 	}
+	if m.Rule == foulcase.RuleHouse {
+		return fmt.Sprintf("%s is written %s in this house", quote(m.Observed), anyOf(forms))
+	}
 	return fmt.Sprintf("%s %s: %s? (p %.2f)", quote(m.Observed), about, anyOf(forms), min(m.P, .99))
 }
 
