@@ -1,6 +1,7 @@
 package main
 
 import (
+	"errors"
 	"fmt"
 	"os"
 	"path/filepath"
@@ -24,12 +25,38 @@ type treeFlags struct {
 }
 
 func (f *treeFlags) declare(fs *pflag.FlagSet) {
-	fs.StringVar(&f.filesFrom, "files-from", "", "read the documents that `FILE` lists too, a path a line; - is standard input")
+	filled(fs, &f.filesFrom, "files-from", "read the documents that `FILE` lists too, a path a line; - is standard input")
 	fs.BoolVar(&f.null, "null", false, "paths in --files-from end with a NUL byte")
 	fs.BoolVar(&f.noIgnore, "no-ignore", false, "read what git ignores, too")
-	fs.StringVar(&f.changed, "changed", "", "only marks that touch lines changed since the git revision `BASE`")
-	fs.StringVar(&f.known, "known", "", "do not show the marks that stand in `FILE`")
-	fs.StringVar(&f.writeKnown, "write-known", "", "write all marks to `FILE` instead of showing them; with --known, only known ones that are still there")
+	filled(fs, &f.changed, "changed", "only marks that touch lines changed since the git revision `BASE`")
+	filled(fs, &f.known, "known", "do not show the marks that stand in `FILE`")
+	filled(fs, &f.writeKnown, "write-known", "write all marks to `FILE` instead of showing them; with --known, only known ones that are still there")
+}
+
+// filledValue is a text flag that may not be set to nothing, as a variable that is
+// empty would.
+type filledValue struct{ text *string }
+
+func (v filledValue) String() string {
+	if v.text == nil {
+		return ""
+	}
+	return *v.text
+}
+
+func (v filledValue) Type() string { return "TEXT" }
+
+func (v filledValue) Set(s string) error {
+	if s == "" {
+		return errors.New("it is empty, as an unset variable is")
+	}
+	*v.text = s
+	return nil
+}
+
+// filled declares a text flag that may be left out, but not be empty.
+func filled(fs *pflag.FlagSet, text *string, name, usage string) {
+	fs.Var(filledValue{text}, name, usage)
 }
 
 // search says how documents are looked for.
