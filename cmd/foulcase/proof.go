@@ -126,6 +126,7 @@ func (f *proofFlags) open(c *console, operands []string) (*proofreader, error) {
 	if p.documents, err = f.tree.find(c, operands, search{stdinName: f.name, anyBytes: f.engine.here.Get("encoding") != "", format: documentFormat(found)}); err == nil {
 		p.form, err = report.New(f.emit.value, report.Settings{
 			Palette: choosePalette(f.color.value, c.out.terminal),
+			Version: programVersion(),
 			Model:   e.Hash(),
 		})
 	}
