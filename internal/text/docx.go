@@ -286,7 +286,7 @@ func (p *prose) bridge(from, to int) {
 // isCodeStyle tells styles for code by their names.
 func isCodeStyle(name string) bool {
 	name = strings.ToLower(name)
-	for _, part := range []string{"code", "verbatim", "preformatted", "sourcetext", "source_20_text"} {
+	for _, part := range []string{"code", "verbatim", "preformatted", "source_text", "source_20_text"} {
 		if strings.Contains(name, part) {
 			return true
 		}

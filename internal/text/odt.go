@@ -10,7 +10,8 @@ import (
 
 // parseOdt reads a text of OpenDocument (ISO/IEC 26300): the content, notes and
 // comments in it, then the headers and footers, which are styles. What was deleted,
-// text in another language by its style, and in a style for code is left out.
+// text in another language by its style, in a style for code, and fields are left
+// out.
 func parseOdt(p *packed, o Options) ([]*Block, error) {
 	const want = "application/vnd.oasis.opendocument.text"
 	kind, err := p.part("mimetype")
@@ -117,6 +118,9 @@ func (d *odt) opened(e xmlEvent, in odtElement) odtElement {
 		if language := e.attributes["fo:language"]; language != "" {
 			d.styles[d.style] = style{language: language, parent: d.styles[d.style].parent}
 		}
+	case "text:page-number", "text:page-count", "text:date", "text:time", "text:sequence", "text:file-name", "text:author-name",
+		"text:chapter", "text:title", "text:variable-get", "text:user-field-get", "text:database-display": // filled in by programs
+		in.code = true
 	default:
 		in.text = in.text && strings.HasPrefix(e.name, "text:")
 	}
