@@ -4,9 +4,12 @@ import (
 	"archive/zip"
 	"bytes"
 	"io"
+	"io/fs"
 	"os"
+	"os/exec"
 	"path/filepath"
 	"runtime"
+	"strings"
 	"testing"
 )
 
@@ -84,6 +87,51 @@ func TestApplyRepacks(t *testing.T) {
 		if err != nil || !bytes.Contains(got, []byte(want)) {
 			t.Errorf("%s holds %q, %v; want %q in it", name, got, err, want)
 		}
+	}
+}
+
+// What a dry run prints is what patch makes of the papers, and what --apply does.
+func TestDryRunIsWhatApplyDoes(t *testing.T) {
+	patch, err := exec.LookPath("patch")
+	if err != nil {
+		t.Skip("no patch here")
+	}
+	t.Setenv("FOULCASE_CONFIG", "none")
+	papers := os.DirFS(filepath.Join(projectRoot(t), "testdata", "pilots", "papers"))
+	root := t.TempDir()
+	t.Chdir(root)
+	for _, dir := range []string{"papers", "patched/papers"} {
+		if err := os.CopyFS(dir, papers); err != nil {
+			t.Fatal(err)
+		}
+	}
+	diff := mustRun(t, "proof", "--apply", "--dry-run", "papers")
+	cmd := exec.Command(patch, "-p1", "--binary", "-s")
+	cmd.Dir, cmd.Stdin = "patched", strings.NewReader(diff)
+	if out, err := cmd.CombinedOutput(); err != nil {
+		t.Fatalf("patch: %v\n%s\n%s", err, out, diff)
+	}
+	mustRun(t, "proof", "--apply", "papers")
+	names, err := fs.Glob(papers, "*")
+	if err != nil || len(names) == 0 {
+		t.Fatalf("no papers: %v", err)
+	}
+	changed := 0
+	for _, name := range names {
+		before, _ := fs.ReadFile(papers, name)
+		now, err := os.ReadFile(filepath.Join("papers", name))
+		if err != nil {
+			t.Fatal(err)
+		}
+		if patched, err := os.ReadFile(filepath.Join("patched", "papers", name)); err != nil || !bytes.Equal(now, patched) {
+			t.Errorf("%s: --apply gives\n%s\npatch gives\n%s", name, now, patched)
+		}
+		if !bytes.Equal(before, now) {
+			changed++
+		}
+	}
+	if changed == 0 {
+		t.Error("no paper was changed")
 	}
 }
 
