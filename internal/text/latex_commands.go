@@ -22,6 +22,8 @@ func (l *latex) command() {
 	case "par":
 		l.pos = end
 		l.flush()
+	case "def", "gdef", "edef", "xdef":
+		l.definition(end)
 	case "begin":
 		l.environment(end)
 	case "end":
@@ -48,6 +50,14 @@ func (l *latex) lineBreak(end int) {
 		l.flush()
 	case len(l.prose.text) > 0:
 		l.broken = at
+	}
+}
+
+// definition leaves out a definition of TeX: a name, its parameters and a group.
+func (l *latex) definition(end int) {
+	l.pos = end
+	if i := bytes.IndexAny(l.source[end:min(end+farArgument, len(l.source))], "{\n"); i >= 0 && l.source[end+i] == '{' {
+		l.pos = l.argument(end + i)
 	}
 }
 

@@ -96,7 +96,7 @@ func latexSilent(name string) (arguments int, ok bool) {
 		}
 		return 1, true
 	case "setlength", "addtolength", "setcounter", "addtocounter", "newcommand", "renewcommand", "providecommand", "newtheorem",
-		"DeclareMathOperator", "rule", "definecolor", "newglossaryentry", "let", "def", "gdef", "edef", "fontsize",
+		"DeclareMathOperator", "rule", "definecolor", "newglossaryentry", "let", "fontsize",
 		"DeclareRobustCommand", "setmainfont", "NewDocumentCommand", "inputminted", "settowidth", "colorlet", "addcontentsline":
 		return latexLong(name), true
 	case "newenvironment", "renewenvironment", "newacronym":

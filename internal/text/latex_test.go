@@ -27,7 +27,7 @@ func TestLaTeXBlocks(t *testing.T) {
 		{"table", "\\begin{tabular}{l|r}\n\\hline fog & ice\\\\[2pt] sea & \\multicolumn{2}{c}{bar} \\\\ \\end{tabular}\nend", []string{"fog", "ice", "sea", "bar", "end"}},
 		{"figure", "\\begin{figure}[ht]\\includegraphics[width=2cm]{a.png}\\caption[Short]{The bar}\\label{f}\\end{figure}", []string{"\uFFFC", "The bar"}},
 		{"line breaks", "Harbour Office\\\\Skarrow\\\\*[2mm]\nSound and\\newline the way", []string{"Harbour Office", "Skarrow", "Sound and\nthe way"}},
-		{"settings", "\\setlength{\\parskip}{1em}\\newcommand{\\ssp}[1]{Sound Pilots #1}\\vspace*{2mm}Fog", []string{"Fog"}},
+		{"settings", "\\setlength{\\parskip}{1em}\\newcommand{\\ssp}[1]{Sound Pilots #1}\\vspace*{2mm}Fog\\def\\x#1#2{two words #1} ice", []string{"Fog ice"}},
 		{"own commands", `The \ssp{} at \berth{b-3} and \note{the fog comes}`, []string{"The \uFFFC at \uFFFC and the fog comes"}},
 		{"hyphenation", `har\-bour`, []string{"harbour"}},
 		{"language", `He is \foreignlanguage{german}{ein Lotse} here`, []string{"He is \uFFFC here"}},

@@ -32,6 +32,7 @@ func TestRSTBlocks(t *testing.T) {
 		{"versions", ".. versionadded:: 1.2 The fog\n   signal.", []string{"The fog\nsignal."}},
 		{"substitutions", ".. |ssp| replace:: Skarrow *Sound*\n.. |img| image:: x.png", []string{"Skarrow Sound"}},
 		{"domains", ".. py:function:: berth(x)\n   :module: m\n\n   Gives the berth.\n\n.. unknown:: a b\n\n   c d", []string{"Gives the berth."}},
+		{"list table", ".. list-table:: The *tides*\n   :header-rows: 1\n\n   * - hour\n     - height of\n       water\n   * - one\n     - ``x``", []string{"The tides", "hour", "height of\nwater", "one", "\uFFFC"}},
 		{"line block", "| The tide is out\n| the moon", []string{"The tide is out", "the moon"}},
 		{"grid table", "+------+--------+\n| hour | *tide* |\n+======+========+\n| one  | low    |\n+------+--------+\n| a b  | high   |\n| more | water  |\n+------+--------+\n\nend", []string{"hour", "tide", "one", "low", "a b\nmore", "high\nwater", "end"}},
 		{"simple table", "=====  ======\nhour   tide\n=====  ======\none    low\n       water\ntwo    high and long\n=====  ======\n\nend", []string{"hour", "tide", "one", "low\nwater", "two", "high and long", "end"}},
