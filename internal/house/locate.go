@@ -38,23 +38,13 @@ func Locate(dir string) (path string, err error) {
 }
 
 // Name is what a document is called whoever looks at it: its path, with slashes,
-// from the root of its repository; where it is in none, from the folder of its
-// FileName; where it has none either, from the working directory.
+// from the root of its project; where it is in none, from the working directory.
 func Name(path string) string {
 	abs, err := filepath.Abs(path)
 	if err != nil {
 		return filepath.ToSlash(filepath.Clean(path))
 	}
-	root := ""
-	for folder := range upwards(filepath.Dir(abs)) {
-		if exists(filepath.Join(folder, repositoryMark)) {
-			root = folder
-			break
-		}
-		if root == "" && exists(filepath.Join(folder, FileName)) {
-			root = folder
-		}
-	}
+	root := projectOf(filepath.Dir(abs))
 	if root == "" {
 		root, _ = os.Getwd()
 	}
@@ -63,6 +53,35 @@ func Name(path string) string {
 		name = abs
 	}
 	return filepath.ToSlash(name)
+}
+
+// projectOf is the root of the project that a folder belongs to: that of its repository,
+// else the folder of its FileName, else "".
+func projectOf(dir string) string {
+	root := ""
+	for folder := range upwards(dir) {
+		if exists(filepath.Join(folder, repositoryMark)) {
+			return folder
+		}
+		if root == "" && exists(filepath.Join(folder, FileName)) {
+			root = folder
+		}
+	}
+	return root
+}
+
+// within tells whether a file lies, or would lie, below a folder, links followed.
+func within(dir, path string) bool {
+	real, err := filepath.EvalSymlinks(path)
+	if err != nil { // it is not there yet: the folder it would be made in counts
+		parent := filepath.Dir(path)
+		return !exists(path) && parent != path && within(dir, parent)
+	}
+	if dir, err = filepath.EvalSymlinks(dir); err != nil {
+		return false
+	}
+	rel, err := filepath.Rel(dir, real)
+	return err == nil && filepath.IsLocal(rel)
 }
 
 // upwards yields a folder, given by its absolute path, and those that hold it.

@@ -188,3 +188,37 @@ func TestFilesToWatch(t *testing.T) {
 		t.Errorf("%s", got)
 	}
 }
+
+func TestProjectsWriteInsideAlone(t *testing.T) {
+	own(t)
+	dir := t.TempDir()
+	write(t, dir, "words.txt", "")
+	write(t, dir, "p/.git/HEAD", "")
+	write(t, dir, "p/inner.txt", "")
+	if err := os.Symlink(filepath.Join(dir, "words.txt"), filepath.Join(dir, "p", "link.txt")); err != nil {
+		t.Skipf("no symbolic links here: %v", err)
+	}
+	for _, tt := range []struct {
+		house, stets string
+		ok           bool
+	}{
+		{"../inner.txt", "../new/stets.jsonl", true},
+		{"../../words.txt", "../../stets.jsonl", false},
+		{"../link.txt", "../link.txt", false},
+	} {
+		file := write(t, dir, "p/q/"+FileName, "house = ['"+tt.house+"']\nstets = '"+tt.stets+"'")
+		s, err := Load(file)
+		if err != nil {
+			t.Fatal(err)
+		}
+		if _, err := s.AddWord("Tolva"); (err == nil) != tt.ok {
+			t.Errorf("%s: %v", tt.house, err)
+		}
+		if err := s.Record(Decision{Decision: Stet, Scope: Everywhere, Observed: "Tolva"}); (err == nil) != tt.ok {
+			t.Errorf("%s: %v", tt.stets, err)
+		}
+	}
+	if got, _ := os.ReadFile(filepath.Join(dir, "words.txt")); len(got) > 0 {
+		t.Errorf("written outside: %q", got)
+	}
+}

@@ -11,6 +11,7 @@ package house
 import (
 	"cmp"
 	"errors"
+	"fmt"
 	"path/filepath"
 	"slices"
 	"strconv"
@@ -122,7 +123,12 @@ func (s *Settings) Stands(path string, m foulcase.Mark) bool { return s.stets.st
 // AddWord adds a house word, or an entry of another kind, to the list that was named last, or
 // to the user's own where none was named. It returns that list, and an error when the entry
 // contradicts another or cannot be written. From then on Options heeds the word.
-func (s *Settings) AddWord(word string) (file string, err error) { return s.words.add(word) }
+func (s *Settings) AddWord(word string) (file string, err error) {
+	if err := s.writable("house", s.words.target); err != nil {
+		return "", err
+	}
+	return s.words.add(word)
+}
 
 // Record keeps a decision, and from then on Stands heeds it. Decisions may be recorded by
 // several programs at once.
@@ -130,7 +136,21 @@ func (s *Settings) Record(d Decision) error {
 	if s.stets.path == "" {
 		return errors.New("there is no file for decisions: name one as stets in " + FileName)
 	}
+	if err := s.writable("stets", s.stets.path); err != nil {
+		return err
+	}
 	return s.stets.record(d)
+}
+
+// writable refuses a file outside of the project whose settings name it: documents may
+// come from strangers, and their settings with them.
+func (s *Settings) writable(key, path string) error {
+	for _, v := range s.values {
+		if v.Key == key && v.Text == path && v.dir != "" && !within(cmp.Or(projectOf(v.dir), v.dir), path) {
+			return fmt.Errorf("%s: named by %s, but outside of its project; write there by hand, or name a file inside", path, v.Origin)
+		}
+	}
+	return nil
 }
 
 // Decisions lists what was decided, each once, in order.
