@@ -181,20 +181,6 @@ func realPath(path string) (string, error) {
 	return filepath.EvalSymlinks(absolute)
 }
 
-// Within tells whether path, its symbolic links followed, lies in the folder root
-// or below it.
-func Within(root, path string) (bool, error) {
-	realRoot, err := realPath(root)
-	if err != nil {
-		return false, err
-	}
-	real, err := realPath(path)
-	if err != nil {
-		return false, err
-	}
-	return below(realRoot, real), nil
-}
-
 // below tells whether a real path is a real folder or lies below it.
 func below(root, path string) bool {
 	inside, err := filepath.Rel(root, path)

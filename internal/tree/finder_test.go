@@ -153,21 +153,6 @@ func TestFinderLinks(t *testing.T) {
 	}
 }
 
-func TestWithin(t *testing.T) {
-	root := writeFiles(t, map[string]string{"tree/a.txt": holds, "tree2/b.txt": holds})
-	at := func(name string) string { return filepath.Join(root, filepath.FromSlash(name)) }
-	makeLink(t, at("tree2/b.txt"), at("tree/out.txt"))
-	makeLink(t, at("tree/a.txt"), at("tree2/in.txt"))
-	for path, want := range map[string]bool{"tree/a.txt": true, "tree": true, "tree2/b.txt": false, "tree/out.txt": false, "tree2/in.txt": true} {
-		if got, err := Within(at("tree"), at(path)); got != want || err != nil {
-			t.Errorf("%s is within: %v, %v; want %v", path, got, err, want)
-		}
-	}
-	if _, err := Within(at("tree"), at("gone")); err == nil {
-		t.Error("no error for what does not exist")
-	}
-}
-
 func TestFinderPassesOverPipes(t *testing.T) {
 	root := writeFiles(t, map[string]string{"a.txt": holds})
 	makePipe(t, filepath.Join(root, "pipe.txt"))
