@@ -33,6 +33,7 @@ func TestHousePreferences(t *testing.T) {
 		{"The pilotboat left.", `runon "pilotboat" -> "pilot boat"`},
 		{"Pilot-boat Hesper left.", `runon "Pilot-boat" -> "Pilot boat"`},
 		{"THE PILOTBOAT IS LATE TODAY.", `runon "PILOTBOAT" -> "PILOT BOAT"`},
+		{"The tug towed the ship to the pier at high water before dawn, with\nout the pilot.", `split "with\nout" -> "without"`},
 		{"The Sound is wide.", `nonword "Sound" -> "Skarrow Sound"`},
 		{"The Skarrow Sound is wide.", ""},
 		{"Her eta is noon, her ETA was ten.", `nonword "eta" -> "ETA"`},
