@@ -51,3 +51,12 @@ func TestLaTeXBounds(t *testing.T) {
 func FuzzLaTeX(f *testing.F) {
 	fuzzFormat(f, text.LaTeX, `\begin{document}a\'e {\"o}\footnote{b $x$} \verb|y| % c`+"\n"+`\section[d]{e}\item[f] g\\h \begin{tabular}{l}i&j\\\end{tabular}\[k\]`)
 }
+
+// TestFootnoteIsNoCode: what stands inside another block is prose, and no name that
+// the document has in its code.
+func TestFootnoteIsNoCode(t *testing.T) {
+	all := blocks(t, `The bar\footnote{The log.} is \verb|closed|.`, text.LaTeX)
+	if len(all) != 2 || all[0].Names.Has([]byte("log")) || !all[0].Names.Has([]byte("closed")) {
+		t.Errorf("%d blocks, with the names %v", len(all), all[0].Names)
+	}
+}

@@ -2,7 +2,8 @@ package text
 
 import (
 	"bytes"
-	"iter"
+	"cmp"
+	"slices"
 )
 
 // mostNames bounds what is remembered of a document; names after that are not.
@@ -34,32 +35,33 @@ func (n Names) Has(form []byte) bool {
 func namesOf(source []byte, blocks []*Block) Names {
 	names := Names{}
 	at := 0
-	for from, to := range proseOf(blocks) {
-		if from > at {
-			names.read(source[at:from])
+	for _, s := range proseOf(blocks) {
+		if s[0] > at {
+			names.read(source[at:s[0]])
 		}
-		at = max(at, to)
+		at = max(at, s[1])
 	}
 	names.read(source[min(at, len(source)):])
 	return names
 }
 
-// proseOf yields the stretches of the source that are the blocks' text, code inside a
-// sentence aside. Blocks that stand inside others come after what of those stands before.
-func proseOf(blocks []*Block) iter.Seq2[int, int] {
-	return func(yield func(int, int) bool) {
-		for _, b := range blocks {
-			base := int(b.offset)
-			if b.spans == nil && !yield(base, base+len(b.source)) {
-				return
-			}
-			for _, s := range b.spans {
-				if string(b.Text[s.text:s.textEnd]) != placeholder && !yield(base+s.source, base+s.sourceEnd) {
-					return
-				}
+// proseOf returns the stretches of the source that are the blocks' text, code inside
+// a sentence aside, in order: a block may stand inside another (a footnote).
+func proseOf(blocks []*Block) [][2]int {
+	var all [][2]int
+	for _, b := range blocks {
+		base := int(b.offset)
+		if b.spans == nil {
+			all = append(all, [2]int{base, base + len(b.source)})
+		}
+		for _, s := range b.spans {
+			if string(b.Text[s.text:s.textEnd]) != placeholder {
+				all = append(all, [2]int{base + s.source, base + s.sourceEnd})
 			}
 		}
 	}
+	slices.SortFunc(all, func(a, b [2]int) int { return cmp.Compare(a[0], b[0]) })
+	return all
 }
 
 // read takes the words of a stretch: runs of ASCII letters. Comments of markup hold
