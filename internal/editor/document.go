@@ -34,11 +34,11 @@ type document struct {
 	stands   map[mark]bool // what settings said of marks
 	closed   bool
 
-	stale   bool          // the draft changed since marks were found
-	settle  bool          // far evidence is to be read anew too
-	judged  bool          // once
-	took    time.Duration // to judge an edit, the last time
-	opening *progress     // of the first judgement; nil when that is not under way
+	stale     bool          // the draft changed since marks were found
+	unsettled bool          // everything is to be judged anew some time
+	judged    bool          // once
+	took      time.Duration // to judge an edit, the last time
+	opening   *progress     // of the first judgement; nil when that is not under way
 
 	marks    []foulcase.Mark // of the draft, if it is not stale
 	items    []byte          // diagnostics of the marks, a JSON array
@@ -56,12 +56,20 @@ type mark struct {
 func (d *document) run() {
 	defer d.s.work.Done()
 	for !d.closed && d.s.ctx.Err() == nil {
-		if t, ok := d.inbox.take(); ok {
+		t, ok := d.inbox.take()
+		switch {
+		case ok:
 			t.run()
-		} else if !d.stale {
+		case d.stale:
+			if pause := d.pause(); pause == 0 || d.wait(time.After(pause)) {
+				d.judge(d.s.ctx)
+			}
+		case d.unsettled:
+			if d.wait(time.After(settlePause)) {
+				d.rejudge()
+			}
+		default:
 			d.wait(nil)
-		} else if pause := d.pause(); pause == 0 || d.wait(time.After(pause)) {
-			d.judge(d.s.ctx)
 		}
 	}
 	d.opened()
@@ -94,6 +102,9 @@ const (
 	quick = 10 * time.Millisecond
 	// longestPause is the most that is waited.
 	longestPause = 250 * time.Millisecond
+	// settlePause is how long nothing must have been done before everything is read
+	// anew, during which an edit has to wait.
+	settlePause = 500 * time.Millisecond
 )
 
 // pause is how long the writer must not have typed before the document is judged: as
@@ -199,24 +210,46 @@ func (d *document) judge(ctx context.Context) *failure {
 	if !d.stale {
 		return nil
 	}
+	begun, edit := time.Now(), d.judged
+	f := d.look(ctx, (*foulcase.Draft).Marks)
+	if f == nil && edit {
+		d.took = time.Since(begun)
+	}
+	return f
+}
+
+// rejudge judges everything anew, so that what was edited bears on the evidence for
+// what was not.
+func (d *document) rejudge() {
+	before := d.resultID
+	if d.look(d.s.ctx, (*foulcase.Draft).Settle) != nil {
+		return
+	}
+	d.unsettled = false
+	if d.resultID != before {
+		d.s.refresh()
+	}
+}
+
+// look has the draft find its marks, in one way or the other.
+func (d *document) look(ctx context.Context, find func(*foulcase.Draft, context.Context, func(done, total int)) ([]foulcase.Mark, error)) *failure {
 	ctx, ok := d.inbox.begin(ctx)
 	if !ok {
 		return failf(contentModified, "the document changes")
 	}
-	begun := time.Now()
-	marks, err := d.look(ctx)
+	var marks []foulcase.Mark
+	var err error
+	if d.draft != nil {
+		marks, err = find(d.draft, ctx, d.showing())
+	}
 	ended := ctx.Err() != nil
-	changing := d.inbox.end()
-	switch {
+	switch changing := d.inbox.end(); {
 	case ended && changing:
 		return failf(contentModified, "the document changes")
 	case ended:
 		return failf(requestCancelled, "cancelled")
 	}
-	if d.judged && !d.settle {
-		d.took = time.Since(begun)
-	}
-	d.stale, d.settle, d.judged = false, false, true
+	d.stale, d.judged = false, true
 	d.opened()
 	d.report(err)
 	d.keep(marks)
@@ -224,22 +257,15 @@ func (d *document) judge(ctx context.Context) *failure {
 	return nil
 }
 
-// look asks the draft for its marks.
-func (d *document) look(ctx context.Context) ([]foulcase.Mark, error) {
-	if d.draft == nil {
-		return nil, nil
+// showing is what a judgement is to tell of its progress: the first one, that is.
+func (d *document) showing() func(done, total int) {
+	if d.judged {
+		return nil
 	}
-	var progress func(done, total int)
-	if !d.judged {
-		if d.opening == nil {
-			d.opening = d.s.progress(nameOf(d.uri), len(d.draft.Source()))
-		}
-		progress = d.opening.report
+	if d.opening == nil {
+		d.opening = d.s.progress(nameOf(d.uri), len(d.draft.Source()))
 	}
-	if d.settle {
-		return d.draft.Settle(ctx, progress)
-	}
-	return d.draft.Marks(ctx, progress)
+	return d.opening.report
 }
 
 // report tells of what hinders a judgement, once.

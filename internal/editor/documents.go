@@ -52,7 +52,7 @@ func (s *Server) didChange(params json.RawMessage) *failure {
 	})
 }
 
-// didSave reads everything anew that a keystroke leaves alone.
+// didSave has everything judged anew that a keystroke leaves alone.
 func (s *Server) didSave(params json.RawMessage) *failure {
 	var p documentParams
 	if f := decode(params, &p); f != nil {
@@ -62,7 +62,7 @@ func (s *Server) didSave(params json.RawMessage) *failure {
 		s.reload(true)
 	}
 	return s.to(p.TextDocument.URI, func(d *document) {
-		d.inbox.put(task{run: func() { d.stale, d.settle = true, true }})
+		d.inbox.put(task{run: func() { d.unsettled = true }})
 	})
 }
 

@@ -178,8 +178,8 @@ func (d *document) load() {
 	d.s.watch(settings.Files())
 }
 
-// restart has the document judged under what holds for it now: where it has marks, or
-// all of it.
+// restart has the document judged under what holds for it now: where it has marks, and
+// later all of it if so wanted.
 func (d *document) restart(all bool) {
 	if d.draft == nil {
 		return
@@ -192,5 +192,5 @@ func (d *document) restart(all bool) {
 		return
 	}
 	d.draft.SetOptions(o)
-	d.stale, d.settle = true, d.settle || all
+	d.stale, d.unsettled = true, d.unsettled || all
 }

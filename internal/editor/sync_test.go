@@ -156,6 +156,9 @@ func TestPause(t *testing.T) {
 }
 
 func TestProgress(t *testing.T) {
+	if testing.Short() {
+		t.Skip("judges a long document")
+	}
 	k := start(t, Config{}, `{"window":{"workDoneProgress":true}}`)
 	k.open(note, "plaintext", longText(t, 60_000))
 	a := k.asked("window/workDoneProgress/create", "null")

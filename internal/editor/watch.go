@@ -2,6 +2,7 @@ package editor
 
 import (
 	"encoding/json"
+	"fmt"
 	"path/filepath"
 	"slices"
 
@@ -42,7 +43,7 @@ func (s *Server) watch(files []string) {
 	}
 	s.mu.Unlock()
 	if s.watches() && len(options.Watchers) > 0 {
-		s.register("workspace/didChangeWatchedFiles", "foulcase.file."+files[0], options)
+		s.register("workspace/didChangeWatchedFiles", fmt.Sprintf("foulcase.files/%d", s.counter.Add(1)), options)
 	}
 }
 
@@ -66,7 +67,7 @@ func (s *Server) didChangeWatchedFiles(json.RawMessage) *failure {
 }
 
 // reload has every document's settings read anew and its marks found again, where it
-// has some or everywhere.
+// has some and, if all is wanted, everywhere.
 func (s *Server) reload(all bool) {
 	s.each(func(d *document) {
 		d.inbox.put(task{changes: true, run: func() {
