@@ -2,6 +2,7 @@ package foulcase
 
 import (
 	"bytes"
+	"cmp"
 	"context"
 	"iter"
 	"slices"
@@ -296,5 +297,6 @@ func (d *Draft) decided() []Mark {
 			}
 		}
 	}
+	slices.SortStableFunc(marks, func(a, b Mark) int { return cmp.Compare(a.Offset, b.Offset) })
 	return marks
 }

@@ -1,6 +1,7 @@
 package foulcase
 
 import (
+	"cmp"
 	"context"
 	"io"
 	"iter"
@@ -108,9 +109,23 @@ func (d *document) weigh(ctx context.Context, blocks []*text.Block) error {
 			d.words += wordsIn(s.Tokens)
 		}
 	}
+	inOrder(d.pending)
 	d.rate.settle(d.words, d.odds)
 	d.floor = d.floorOf(d.words, d.pending)
 	return nil
+}
+
+// inOrder puts findings in the order of the source, part by part: a block that stands inside
+// another, such as a footnote, comes after all of that one.
+func inOrder(found []pending) {
+	for len(found) > 0 {
+		n := 1
+		for n < len(found) && found[n].mark.Part == found[0].mark.Part {
+			n++
+		}
+		slices.SortStableFunc(found[:n], func(a, b pending) int { return cmp.Compare(a.mark.Offset, b.mark.Offset) })
+		found = found[n:]
+	}
 }
 
 // shortcutSize is how many bytes of prose make the language model's shortcut worth
@@ -329,7 +344,8 @@ func (m *Mark) place(b *text.Block, places *text.Places, start, end int) {
 // spaces.
 func contextOf(block []byte, start, end int) string {
 	lo, hi := max(0, start-contextWidth), min(len(block), end+contextWidth)
-	before, after := string(block[lo:start]), string(block[end:hi])
+	spaces := strings.NewReplacer("\n", " ") // wherever lines break, the same is quoted
+	before, after := spaces.Replace(string(block[lo:start])), spaces.Replace(string(block[end:hi]))
 	if lo > 0 {
 		_, before, _ = strings.Cut(before, " ")
 	}
