@@ -123,18 +123,30 @@ func (f *proofFlags) open(c *console, operands []string) (*proofreader, error) {
 		f.tree.known = f.engine.here.Get("known")
 	}
 	p := &proofreader{engine: e, settings: found, flags: f, folders: foldersAmong(operands), progress: c.progress}
-	if p.documents, err = f.tree.find(c, operands, search{stdinName: f.name, anyBytes: f.engine.here.Get("encoding") != "", format: documentFormat(found)}); err == nil {
-		p.form, err = report.New(f.emit.value, report.Settings{
-			Palette: choosePalette(f.color.value, c.out.terminal),
-			Version: programVersion(),
-			Model:   e.Hash(),
-		})
-	}
-	if err != nil {
+	if err := p.prepare(c, operands); err != nil {
 		e.Close()
 		return nil, err
 	}
 	return p, nil
+}
+
+// prepare finds the documents and chooses the form of output.
+func (p *proofreader) prepare(c *console, operands []string) (err error) {
+	f := p.flags
+	p.documents, err = f.tree.find(c, operands, search{
+		stdinName: f.name,
+		anyBytes:  f.engine.here.Get("encoding") != "",
+		format:    documentFormat(p.settings),
+	})
+	if err != nil {
+		return err
+	}
+	p.form, err = report.New(f.emit.value, report.Settings{
+		Palette: choosePalette(f.color.value, c.out.terminal),
+		Version: programVersion(),
+		Model:   p.engine.Hash(),
+	})
+	return err
 }
 
 // check refuses flags that do not go together, and makes a dry run a diff.

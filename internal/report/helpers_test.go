@@ -3,6 +3,7 @@ package report
 import (
 	"bytes"
 	"context"
+	"strings"
 	"sync"
 	"testing"
 
@@ -11,19 +12,17 @@ import (
 )
 
 // engine is the embedded English model, opened once for all tests.
-var engine = sync.OnceValue(func() *foulcase.Engine {
-	e, err := foulcase.Open(english.Model())
-	if err != nil {
-		panic(err)
-	}
-	return e
-})
+var engine = sync.OnceValues(func() (*foulcase.Engine, error) { return foulcase.Open(english.Model()) })
 
 // marksOf proofreads a document.
 func marksOf(t testing.TB, source string, o foulcase.Options) []foulcase.Mark {
 	t.Helper()
+	e, err := engine()
+	if err != nil {
+		t.Fatal(err)
+	}
 	var marks []foulcase.Mark
-	for m, err := range engine().Proof(context.Background(), bytes.NewReader([]byte(source)), o) {
+	for m, err := range e.Proof(context.Background(), strings.NewReader(source), o) {
 		if err != nil {
 			t.Fatal(err)
 		}
