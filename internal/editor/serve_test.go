@@ -56,7 +56,7 @@ func TestServe(t *testing.T) {
 	if err != nil || len(got) != 2 || got[0].Error != nil || string(got[1].Result) != "null" {
 		t.Errorf("%+v, error %v", got, err)
 	}
-	if got, err = serve(t, strings.NewReader(framed(hello, goodbye))); err != nil {
+	if _, err = serve(t, strings.NewReader(framed(hello, goodbye))); err != nil {
 		t.Errorf("the end after shutdown: %v", err)
 	}
 	for _, sent := range []string{"", framed(hello), framed(hello, exit), framed(exit)} {
