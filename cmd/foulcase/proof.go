@@ -26,9 +26,12 @@ probability that this is an error.
 
 --emit jsonl prints an object a finding: path, line, column, offset and length
 (bytes of the file), observed, kind, grade, p, corrections ({text, p}, best
-first) and context. --emit sarif is SARIF 2.1.0; diff is a unified diff that
-puts the marks right, for git apply or patch -p1; annotations are the workflow
-commands of hosted CI; html is a page of the documents with their marks.
+first, and source, as the file must spell it, where that differs), context, and
+by_hand where no program should write the correction. In DOCX and ODT, offset
+and length are of the part that it names, and line is the paragraph of that.
+--emit sarif is SARIF 2.1.0; diff is a unified diff that puts the marks right,
+for git apply or patch -p1; annotations are the workflow commands of hosted CI;
+html is a page of the documents with their marks.
 
 --apply puts the first correction of each mark into the files and tells so;
 queries, and marks with markup inside, are left to do by hand and printed. A
