@@ -17,7 +17,7 @@ export async function loadModel(progress) {
   if (!(await isSound(bytes, wanted))) {
     throw new Error(`the model arrived damaged (${bytes.byteLength} of ${wanted.bytes} bytes)`);
   }
-  if (cache) await keep(cache, wanted, bytes);
+  if (cache) keep(cache, wanted, new Response(bytes)); // which has a copy; nobody waits for it
   return bytes;
 }
 
@@ -38,10 +38,10 @@ async function openCache() {
 }
 
 // keep stores a model in place of all others. A full disk is no reason to stop.
-async function keep(cache, wanted, bytes) {
+async function keep(cache, wanted, response) {
   try {
     for (const other of await cache.keys()) await cache.delete(other);
-    await cache.put(wanted.file, new Response(bytes));
+    await cache.put(wanted.file, response);
   } catch (err) {
     console.warn("the model is not kept:", err);
   }

@@ -3,7 +3,7 @@
 import { brotliCompressSync, constants, gzipSync } from "node:zlib";
 import { readFile } from "node:fs/promises";
 import { join } from "node:path";
-import { isReady, launch, openPage } from "./browser.mjs";
+import { launch, openPage } from "./browser.mjs";
 import { serve } from "./serve.mjs";
 
 const dist = process.argv[2];
@@ -21,34 +21,43 @@ for (const name of ["foulcase.wasm", "page.js", file]) {
 
 // sinceStart is the time from the begin of loading the page to its first marks.
 const sinceStart = async (page) => {
-  await isReady(page);
-  return page.evaluate(() => performance.now());
+  const ready = () => document.getElementById("state")?.dataset.state === "ready" && performance.now();
+  return (await page.waitForFunction(ready, null, { polling: "raf", timeout: 60_000 })).jsonValue();
 };
 
 // toUnderline types a letter that makes a word of the last line a slip, and takes the
 // time from the key to the frame that shows the line under it; then takes it back.
 async function toUnderline(page) {
   await page.keyboard.press("Control+End");
-  await page.keyboard.type("Before the bo");
-  await page.waitForTimeout(1000); // for the page to be at rest, nothing waits for it
-  const took = page.evaluate(
-    () =>
-      new Promise((resolve) => {
-        const root = document.getElementById("text").shadowRoot;
-        let start;
-        document.addEventListener("keydown", () => (start = performance.now()), { capture: true, once: true });
-        const look = () => {
-          const marks = root.querySelectorAll(".cm-line:last-child .mark, .cm-line:last-child .query");
-          if (start && marks.length > 0) resolve(performance.now() - start);
-          else requestAnimationFrame(look);
-        };
-        look();
-      }),
-  );
-  await page.keyboard.type("q");
-  const ms = await took;
-  for (let i = 0; i < "Before the boq".length; i++) await page.keyboard.press("Backspace");
+  await page.keyboard.type("They waited until");
+  await page.waitForTimeout(1000); // for the page to be at rest; a wrong guess only blurs the measure
+  await page.evaluate(() => {
+    const root = document.getElementById("text").shadowRoot;
+    let start;
+    document.addEventListener("keydown", () => (start = performance.now()), { capture: true, once: true });
+    window.underlined = new Promise((resolve) => {
+      const look = () => {
+        if (start && root.querySelector(".cm-line:last-child .mark")) resolve(performance.now() - start);
+        else requestAnimationFrame(look);
+      };
+      look();
+    });
+  });
+  await page.keyboard.type("l");
+  const ms = await page.evaluate(() => window.underlined);
+  for (let i = 0; i < "They waited untill".length; i++) await page.keyboard.press("Backspace");
   return ms;
+}
+
+// rendererMemory is what the processes of pages have in memory now, and had at most, in
+// MB, as Linux tells it.
+async function rendererMemory(browser) {
+  const cdp = await browser.newBrowserCDPSession();
+  const { processInfo } = await cdp.send("SystemInfo.getProcessInfo");
+  const pids = processInfo.filter(({ type }) => type === "renderer").map(({ id }) => id);
+  const all = await Promise.all(pids.map((pid) => readFile(`/proc/${pid}/status`, "utf8")));
+  const megabytes = (status, field) => Number(status.match(`${field}:\\s*(\\d+) kB`)[1]) / 1024;
+  return ["VmRSS", "VmHWM"].map((field) => Math.max(...all.map((status) => megabytes(status, field))));
 }
 
 const site = await serve(dist);
@@ -57,6 +66,8 @@ const troubles = [];
 const cold = [];
 const kept = [];
 const keys = [];
+const resident = [];
+const peak = [];
 for (let i = 0; i < runs; i++) {
   const page = await openPage(browser, site.url, troubles);
   cold.push(await sinceStart(page));
@@ -65,11 +76,16 @@ for (let i = 0; i < runs; i++) {
   kept.push(await sinceStart(page));
   await page.click(".cm-content");
   keys.push(await toUnderline(page));
+  const [now, most] = await rendererMemory(browser);
+  resident.push(now);
+  peak.push(most);
   await page.context().close();
 }
 say("ready, first load", cold, "ms");
 say("ready, model kept", kept, "ms");
 say("key to underline", keys, "ms");
+say("memory of the page's process", resident, "MB");
+say("memory of it at most", peak, "MB");
 troubles.forEach((trouble) => console.log(trouble));
 await browser.close();
 await site.close();

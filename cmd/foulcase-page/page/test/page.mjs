@@ -29,6 +29,10 @@ const underlined = (page, word) =>
     { timeout },
   );
 
+// modelKept waits until the browser has put the model away.
+const modelKept = (page) =>
+  page.waitForFunction(async () => (await (await caches.open("foulcase-model")).keys()).length === 1, null, { timeout, polling: 100 });
+
 async function step(name, run) {
   await run();
   assert.deepEqual(troubles, [], name);
@@ -107,6 +111,7 @@ try {
   });
 
   await step("a reload takes the model from the browser's store", async () => {
+    await modelKept(page);
     await page.reload();
     await isReady(page);
     assert.equal(modelFetches(), 1);
@@ -122,6 +127,7 @@ try {
     });
     await page.reload();
     await isReady(page);
+    await modelKept(page);
     assert.equal(modelFetches(), 2);
   });
 
@@ -135,6 +141,7 @@ try {
   });
 
   await step("the page works without its server", async () => {
+    await modelKept(page);
     await page.evaluate(() => navigator.serviceWorker.ready);
     await site.close();
     await page.reload();
