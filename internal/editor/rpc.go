@@ -30,8 +30,6 @@ type failure struct {
 	Data    any    `json:"data,omitempty"`
 }
 
-func (f *failure) Error() string { return f.Message }
-
 func failf(c code, format string, args ...any) *failure {
 	return &failure{Code: c, Message: fmt.Sprintf(format, args...)}
 }

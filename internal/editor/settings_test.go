@@ -149,3 +149,41 @@ func TestURI(t *testing.T) {
 		}
 	}
 }
+
+// TestFolders: a document that is no file has the settings of the workspace.
+func TestFolders(t *testing.T) {
+	asked := make(chan string, 1)
+	k := newClient(t, Config{Settings: func(path string) (Settings, error) {
+		asked <- filepath.ToSlash(path)
+		return &memory{}, nil
+	}})
+	check := func(uri, want string) {
+		t.Helper()
+		k.open(uri, "plaintext", "All is well.")
+		if got := <-asked; got != want {
+			t.Errorf("%s: settings of %q, want %q", uri, got, want)
+		}
+	}
+	k.request("initialize", `{"processId":null,"rootUri":"file:///root","capabilities":{},"workspaceFolders":[{"uri":"file:///papers","name":"papers"}]}`)
+	check("untitled:Untitled-1", "/papers/Untitled-1")
+	check("file:///elsewhere/a.txt", "/elsewhere/a.txt")
+	k.notify("workspace/didChangeWorkspaceFolders", `{"event":{"added":[{"uri":"file:///logs","name":"logs"}],"removed":[{"uri":"file:///papers","name":"papers"}]}}`)
+	check("untitled:Untitled-2", "/logs/Untitled-2")
+	k.notify("workspace/didChangeWorkspaceFolders", `{"event":{"added":[],"removed":[{"uri":"file:///logs","name":"logs"}]}}`)
+	check("untitled:b%20c", "b c")
+}
+
+// TestRefresh: a client that pulls is told when settings change what it would get.
+func TestRefresh(t *testing.T) {
+	m := &memory{}
+	k := start(t, Config{Settings: m.load}, pulling)
+	k.open("untitled:note", "plaintext", "A ``reef'' and the *ancher*.")
+	first := k.pull("untitled:note", "")
+	checkDiagnostics(t, first.Items, "0:20-0:26 nonword anchor")
+	m.words, m.format = []string{"ancher"}, "markdown"
+	k.notify("workspace/didChangeWatchedFiles", `{"changes":[]}`)
+	k.asked("workspace/diagnostic/refresh", "null")
+	if second := k.pull("untitled:note", first.ResultID); second.Kind != "full" || len(second.Items) > 0 {
+		t.Errorf("%+v", second)
+	}
+}

@@ -48,10 +48,14 @@ func uriOf(name string) string {
 // nameOf is the last part of any URI: what a user calls the document, and whose
 // ending tells of its format.
 func nameOf(uri string) string {
-	if name, ok := unescape(path.Base(uri)); ok {
+	last := path.Base(uri)
+	if _, opaque, ok := strings.Cut(uri, ":"); ok && !strings.Contains(uri, "/") {
+		last = opaque
+	}
+	if name, ok := unescape(last); ok {
 		return name
 	}
-	return path.Base(uri)
+	return last
 }
 
 const hexDigits = "0123456789ABCDEF"
