@@ -1,10 +1,16 @@
 package main
 
 import (
+	"io/fs"
 	"os"
 	"os/exec"
 	"path/filepath"
 	"testing"
+
+	// What build.sh builds: a result that `go test` remembers is of these.
+	_ "example.org/foulcase"
+	_ "example.org/foulcase/internal/editor"
+	_ "example.org/foulcase/lm/english"
 )
 
 // TestPage builds the page and tries it in a browser, see page/test/page.mjs. With
@@ -24,9 +30,25 @@ func TestPage(t *testing.T) {
 			t.Skipf("%v: the page cannot be tried", err)
 		}
 	}
+	touch(t)
 	dist, work := filepath.Join(t.TempDir(), "dist"), filepath.Join(t.TempDir(), "work")
 	run(t, "bash", "build.sh", dist, work)
 	run(t, "node", filepath.Join(work, "test", "page.mjs"), dist)
+}
+
+// touch opens every file here, so that `go test` knows that the result depends on them.
+func touch(t *testing.T) {
+	t.Helper()
+	err := filepath.WalkDir(".", func(name string, d fs.DirEntry, err error) error {
+		if err != nil || d.IsDir() {
+			return err
+		}
+		_, err = os.ReadFile(name)
+		return err
+	})
+	if err != nil {
+		t.Fatal(err)
+	}
 }
 
 // run runs a program and logs what it says.
