@@ -63,6 +63,7 @@ func (p project) command(t *testing.T, program string, args ...string) *exec.Cmd
 		"MARKS="+strconv.Itoa(len(demoSlips)),
 		"CORRECT="+demoSlips[0].observed,
 		"HOUSE="+demoHouseWord,
+		"RETYPED="+demoRetyped.observed, "MEANT="+demoRetyped.corrected,
 		"REPORT="+filepath.Join(p.dir, reportName))
 	return cmd
 }

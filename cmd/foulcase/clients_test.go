@@ -4,6 +4,7 @@ import (
 	"os"
 	"os/exec"
 	"path/filepath"
+	"regexp"
 	"slices"
 	"strings"
 	"testing"
@@ -21,12 +22,15 @@ var demoSlips = []slip{
 	{"hydralic", "hydraulic"},
 	{"maintainance", "maintenance"},
 	{"the the", "the"},
-	{"alot", "a lot"},
+	demoRetyped,
 	{demoHouseWord, "lookout"},
 }
 
 // demoHouseWord is a form of the demo document that is made a house word.
 const demoHouseWord = "lookoute"
+
+// demoRetyped is corrected by hand.
+var demoRetyped = slip{"alot", "a lot"}
 
 // shown is what an editor shows at some moment.
 type shown struct {
@@ -42,8 +46,9 @@ type shownMark struct {
 }
 
 // session is what an editor reports: what it shows when the document is open, when the
-// first slip is corrected, and when demoHouseWord is a house word besides.
-type session struct{ Opened, Corrected, Housed shown }
+// first slip is corrected, when demoHouseWord is a house word besides, and when a hand
+// has changed every line and retyped a slip, which a session need not do.
+type session struct{ Opened, Corrected, Housed, Typed shown }
 
 // TestNeovim: a session of neovim, whose columns are bytes, set up as the README says.
 func TestNeovim(t *testing.T) {
@@ -53,7 +58,7 @@ func TestNeovim(t *testing.T) {
 			p := newProject(t, "watch-note.md", lineEnd)
 			s := p.run(t, nvim, "--headless", "-i", "NONE", "-n",
 				"-u", clientFile(t, "neovim.lua"), "-S", clientFile(t, "neovim-session.lua"))
-			text := s.check(t, func(before string) int { return len(before) })
+			text := s.checkTyped(t, func(before string) int { return len(before) })
 			p.checkFiles(t, text, lineEnd)
 		})
 	}
@@ -69,7 +74,7 @@ func TestEmacs(t *testing.T) {
 		missing(t, "emacs has no eglot: %v\n%s", err, out)
 	}
 	s := p.run(t, emacs, "--batch", "-q", "--no-site-file", "--eval", load, "-l", clientFile(t, "emacs.el"), "-l", clientFile(t, "emacs-session.el"))
-	text := s.check(t, utf8.RuneCountInString)
+	text := s.checkTyped(t, utf8.RuneCountInString)
 	p.checkFiles(t, text, "\n")
 }
 
@@ -139,17 +144,32 @@ func copyFile(t *testing.T, from, to string) {
 }
 
 // check compares what an editor showed with the demo document, whose columns width
-// counts, and returns the text at the end.
-func (s session) check(t *testing.T, width func(before string) int) string {
+// counts. It returns the text when the house word is one, and the slips left.
+func (s session) check(t *testing.T, width func(before string) int) (string, []slip) {
 	t.Helper()
 	text := demoText(t)
 	s.Opened.check(t, "opened", text, demoSlips, width)
-	first := demoSlips[0]
-	text = strings.Replace(text, first.observed, first.corrected, 1)
+	text = demoSlips[0].correct(text)
 	s.Corrected.check(t, "corrected", text, demoSlips[1:], width)
 	left := slices.DeleteFunc(slices.Clone(demoSlips[1:]), func(s slip) bool { return s.observed == demoHouseWord })
 	s.Housed.check(t, "with a house word", text, left, width)
+	return text, left
+}
+
+// checkTyped is check for a session in which a hand changed the text at last. It returns
+// the text at the end.
+func (s session) checkTyped(t *testing.T, width func(before string) int) string {
+	t.Helper()
+	text, left := s.check(t, width)
+	text = demoRetyped.correct(regexp.MustCompile("(?m)^.").ReplaceAllString(text, "🪢 $0"))
+	left = slices.DeleteFunc(left, func(s slip) bool { return s == demoRetyped })
+	s.Typed.check(t, "typed", text, left, width)
 	return text
+}
+
+// correct corrects the slip where it stands first.
+func (s slip) correct(text string) string {
+	return strings.Replace(text, s.observed, s.corrected, 1)
 }
 
 // check compares what is shown with a text, whose lines end with LF, and its slips.

@@ -92,7 +92,7 @@ func printOverview(w io.Writer, family string) {
 	fmt.Fprint(w, "Usage: foulcase VERB [flags] [operands]\n\n")
 	for _, v := range verbs() {
 		if family == "" || strings.HasPrefix(v.name, family+" ") {
-			fmt.Fprintf(w, "  %-13s %s\n", v.name, v.summary)
+			fmt.Fprintf(w, "  %-15s %s\n", v.name, v.summary)
 		}
 	}
 	fmt.Fprint(w, "\n`foulcase VERB --help` tells the flags of a verb and shows an example;\n"+

@@ -109,17 +109,6 @@ func TestParseSurvivesDepth(t *testing.T) {
 	}
 }
 
-func TestDistance(t *testing.T) {
-	for _, tt := range []struct {
-		a, b string
-		want int
-	}{{"house", "house", 0}, {"", "ab", 2}, {"ab", "", 2}, {"hose", "house", 1}, {"hosue", "house", 2}, {"stet", "stets", 1}} {
-		if got := distance(tt.a, tt.b); got != tt.want {
-			t.Errorf("%q, %q: %d, want %d", tt.a, tt.b, got, tt.want)
-		}
-	}
-}
-
 func TestMatches(t *testing.T) {
 	for _, tt := range []struct {
 		glob, file string

@@ -8,6 +8,7 @@ import (
 
 	"example.org/foulcase"
 	"example.org/foulcase/internal/charset"
+	"github.com/agnivade/levenshtein"
 )
 
 // A Key is a setting that foulcase.toml may make.
@@ -133,7 +134,7 @@ func unknownKey(name string) error {
 	var names []string
 	for _, k := range Keys() {
 		names = append(names, k.Name)
-		if d := distance(strings.ToLower(name), k.Name); d < least {
+		if d := levenshtein.ComputeDistance(strings.ToLower(name), k.Name); d < least {
 			best, least = k.Name, d
 		}
 	}
@@ -141,29 +142,4 @@ func unknownKey(name string) error {
 		return fmt.Errorf("there is no key %q: did you mean %q?", name, best)
 	}
 	return fmt.Errorf("there is no key %q: there are %s", name, strings.Join(names, ", "))
-}
-
-// distance is how many letters must be put in, taken out or changed to make b of a.
-// Names that are too long to be a slip of b are far from it.
-func distance(a, b string) int {
-	if len(a) > 2*len(b) {
-		return len(a)
-	}
-	row := make([]int, len(b)+1)
-	for k := range row {
-		row[k] = k
-	}
-	for i := range len(a) {
-		diagonal := row[0]
-		row[0] = i + 1
-		for k := range len(b) {
-			change := diagonal
-			if a[i] != b[k] {
-				change++
-			}
-			diagonal = row[k+1]
-			row[k+1] = min(change, row[k]+1, diagonal+1)
-		}
-	}
-	return row[len(b)]
 }

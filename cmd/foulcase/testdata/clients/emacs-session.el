@@ -1,8 +1,8 @@
 ;;; A session of emacs with foulcase, for clients_test.go  -*- lexical-binding: t -*-
 
 ;; Opens $DOCUMENT, waits for $MARKS marks, corrects $CORRECT and makes $HOUSE a
-;; house word by code actions, and writes what the editor shows after each step to
-;; $REPORT, as JSON.
+;; house word by code actions, puts "🪢 " before each line that has text and $MEANT
+;; for $RETYPED, and writes what the editor shows after each step to $REPORT, as JSON.
 
 (require 'cl-lib)
 (require 'json)
@@ -58,12 +58,18 @@
                      (error "No code action begins with %s among %S" title (mapcar #'car items))))))
       (eglot-code-actions (flymake-diagnostic-beg mark) (flymake-diagnostic-end mark) nil t))))
 
+(defun retype (pattern replacement)
+  "Put REPLACEMENT for what matches PATTERN, all over the text."
+  (goto-char (point-min))
+  (while (re-search-forward pattern nil t)
+    (replace-match replacement t)))     ; letters as they are
+
 (defun session ()
   (find-file (getenv "DOCUMENT"))
   (unless (derived-mode-p 'text-mode)
     (text-mode))
   (let ((count (string-to-number (getenv "MARKS")))
-        opened corrected housed)
+        opened corrected housed typed)
     (run-hooks 'post-command-hook)      ; as after a command; batch mode has none
     (await "a server" #'eglot-current-server)
     (await-marks count "the document opened")
@@ -78,9 +84,15 @@
     (await-marks (- count 2) "one a house word")
     (setq housed (shown))
 
+    (retype "^\\([^\n]\\)" "🪢 \\1")
+    (retype (getenv "RETYPED") (getenv "MEANT"))
+    (save-buffer)
+    (await-marks (- count 3) "lines changed and one retyped")
+    (setq typed (shown))
+
     (eglot-shutdown (eglot-current-server))
     (let ((coding-system-for-write 'utf-8-unix))
-      (write-region (json-encode (list (cons 'opened opened) (cons 'corrected corrected) (cons 'housed housed)))
+      (write-region (json-encode `((opened . ,opened) (corrected . ,corrected) (housed . ,housed) (typed . ,typed)))
                     nil (getenv "REPORT")))))
 
 (setq debug-on-error nil)

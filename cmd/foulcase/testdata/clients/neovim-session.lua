@@ -1,6 +1,7 @@
 -- A session of neovim with foulcase, for clients_test.go: opens $DOCUMENT, waits for
--- $MARKS marks, corrects $CORRECT and makes $HOUSE a house word by code actions, and
--- writes what the editor shows after each step to $REPORT, as JSON.
+-- $MARKS marks, corrects $CORRECT and makes $HOUSE a house word by code actions, puts
+-- "🪢 " before each line that has text and $MEANT for $RETYPED, and writes what the
+-- editor shows after each step to $REPORT, as JSON.
 
 local patience = 30000 -- milliseconds for each step
 
@@ -70,6 +71,13 @@ local function session()
   act(vim.env.HOUSE, "Add ")
   await_marks(count - 2, "one a house word")
   report.housed = shown()
+
+  vim.cmd([[silent %s/^\ze./🪢 /]])
+  vim.cmd("undo")
+  vim.cmd("redo")
+  vim.cmd("silent %s/" .. vim.env.RETYPED .. "/" .. vim.env.MEANT .. "/")
+  await_marks(count - 3, "lines changed and one retyped")
+  report.typed = shown()
 
   vim.cmd("write")
   vim.lsp.stop_client(vim.lsp.get_active_clients())
