@@ -17,9 +17,19 @@
         (error "%s is waited for in vain; shown are %S" what (shown)))
       (accept-process-output nil 0.05))))
 
+(defvar judged nil "The version of the text that diagnostics came for last.")
+
+(advice-add 'eglot-handle-notification :after
+            (lambda (_server method &rest about)
+              (when (eq method 'textDocument/publishDiagnostics)
+                (setq judged (plist-get about :version)))))
+
 (defun await-marks (count when)
+  "Wait for COUNT marks that are of the text as it is."
   (await (format "%d marks, %s" count when)
-         (lambda () (= count (length (flymake-diagnostics))))))
+         (lambda ()
+           (and (eql judged eglot--versioned-identifier)
+                (= count (length (flymake-diagnostics)))))))
 
 (defun covered (mark)
   "The text under MARK."
