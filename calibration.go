@@ -4,6 +4,7 @@ import (
 	"bytes"
 	"encoding/json"
 	"fmt"
+	"math"
 
 	"example.org/foulcase/internal/additive"
 )
@@ -103,6 +104,8 @@ type slipRate struct {
 	words float64 // read so far
 	found float64 // sum of probabilities in earlier windows
 	shift float64 // what is added to findings' log-odds, nats
+	// against is scratch: the odds that each of a window's findings is none.
+	against []float64
 }
 
 // newSlipRate begins a document whose findings' log-odds hold for text of the
@@ -134,14 +137,22 @@ func (r *slipRate) settle(words int, odds []float64) {
 		return
 	}
 	r.words += float64(words)
+	r.against = r.against[:0]
+	for _, o := range odds {
+		r.against = append(r.against, math.Exp(-o))
+	}
 	found := 0.0
 	for range slipRounds {
 		found = 0
-		for _, o := range odds {
-			found += logistic(o + r.shift)
+		shift := math.Exp(-r.shift)
+		for _, a := range r.against {
+			found += 1 / (1 + a*shift) // logistic(o + r.shift)
 		}
 		rate := (r.found + found + r.Strength*r.Prior) / (r.words + r.Strength)
-		r.shift = logit(min(max(rate, r.Least), r.Most)) - r.base
+		before := r.shift
+		if r.shift = logit(min(max(rate, r.Least), r.Most)) - r.base; r.shift == before {
+			break
+		}
 	}
 	r.found += found
 }

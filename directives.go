@@ -41,8 +41,10 @@ func newDirectives() *directives {
 // directivesOf reads the directives of a document that is at hand.
 func directivesOf(source []byte) *directives {
 	d := newDirectives()
-	d.scanner.Write(source)
-	d.scanner.Close()
+	if text.MayDirect(source) {
+		d.scanner.Write(source)
+		d.scanner.Close()
+	}
 	return d
 }
 

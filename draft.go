@@ -72,11 +72,7 @@ func (d *Draft) SetOptions(o Options) {
 	fresh.recurring, d.recurring = d.recurring, fresh.recurring
 	d.e.give(d.judge)
 	d.document, d.asked, d.drifted = fresh, o, true
-	for s := range d.sentences() {
-		if len(s.kept) > 0 {
-			s.state = unjudged
-		}
-	}
+	d.distrust(unjudged, func(s *draftSentence) bool { return len(s.kept) > 0 })
 }
 
 // Marks returns the marks of the document as it stands, in order. If ctx ends

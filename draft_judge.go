@@ -14,6 +14,23 @@ import (
 type draftBlock struct {
 	*text.Block
 	sentences []draftSentence
+	// Of all sentences together, as of the last sum:
+	state draftState // the worst
+	words int
+	odds  []float64
+	kept  int
+}
+
+// sum adds up what is known of the block's sentences.
+func (b *draftBlock) sum() {
+	b.state, b.words, b.odds, b.kept = judged, 0, b.odds[:0], 0
+	for i := range b.sentences {
+		s := &b.sentences[i]
+		b.state = min(b.state, s.state)
+		b.words += s.words.count()
+		b.odds = append(b.odds, s.odds...)
+		b.kept += len(s.kept)
+	}
 }
 
 // draftSentence is what is remembered of a sentence.
@@ -48,19 +65,6 @@ const (
 	judged
 )
 
-// sentences yields every sentence of the draft.
-func (d *Draft) sentences() iter.Seq[*draftSentence] {
-	return func(yield func(*draftSentence) bool) {
-		for _, b := range d.blocks {
-			for i := range b.sentences {
-				if !yield(&b.sentences[i]) {
-					return
-				}
-			}
-		}
-	}
-}
-
 // replace puts fresh blocks in the place of blocks [first, last). What is known of
 // sentences that stand in both is kept, and the counts of the document follow.
 func (d *Draft) replace(first, last int, fresh []*text.Block) {
@@ -82,6 +86,7 @@ func (d *Draft) replace(first, last int, fresh []*text.Block) {
 	}
 	keepSentences(dropped, added)
 	for _, b := range added { // before any is dropped: no count passes through 0
+		b.sum()
 		d.countBlock(b, 1)
 	}
 	for _, b := range dropped {
@@ -191,8 +196,18 @@ func (d *Draft) recount() {
 		d.countBlock(b, 1)
 	}
 	d.recurring.settle(d.e.lexicon)
-	for s := range d.sentences() {
-		s.state = min(s.state, drifted)
+	d.distrust(drifted, func(*draftSentence) bool { return true })
+}
+
+// distrust lowers to a state what the judgements of some sentences are worth.
+func (d *Draft) distrust(state draftState, which func(*draftSentence) bool) {
+	for _, b := range d.blocks {
+		for i := range b.sentences {
+			if s := &b.sentences[i]; which(s) {
+				s.state = min(s.state, state)
+			}
+		}
+		b.sum()
 	}
 }
 
@@ -200,8 +215,11 @@ func (d *Draft) recount() {
 func (d *Draft) judgeAll(ctx context.Context, worst draftState, progress func(done, total int)) error {
 	total, size := 0, 0
 	for _, b := range d.blocks {
-		for _, s := range b.sentences {
-			if s.state <= worst {
+		if b.state > worst {
+			continue
+		}
+		for i := range b.sentences {
+			if s := &b.sentences[i]; s.state <= worst {
 				total++
 				size += s.end - s.start
 			}
@@ -213,6 +231,9 @@ func (d *Draft) judgeAll(ctx context.Context, worst draftState, progress func(do
 	d.hasten(size)
 	done := 0
 	for _, b := range d.blocks {
+		if b.state > worst {
+			continue
+		}
 		n, err := d.judgeBlock(ctx, b, worst)
 		if err != nil {
 			return err
@@ -227,25 +248,14 @@ func (d *Draft) judgeAll(ctx context.Context, worst draftState, progress func(do
 // judgeBlock judges the sentences of a block whose state is at most worst, and
 // returns how many.
 func (d *Draft) judgeBlock(ctx context.Context, b *draftBlock, worst draftState) (n int, err error) {
-	left := 0
-	for i := range b.sentences {
-		if b.sentences[i].state <= worst {
-			left++
-		}
-	}
-	if left == 0 {
-		return 0, nil
-	}
+	defer b.sum()
 	places := b.Places()
 	d.names = d.named
 	i := -1
 	for sentence := range d.segmenter.Sentences(b.Text) {
 		i++
 		s := &b.sentences[i]
-		switch {
-		case n == left:
-			return n, nil
-		case s.state > worst:
+		if s.state > worst {
 			continue
 		}
 		if err := ctx.Err(); err != nil {
@@ -269,34 +279,59 @@ func (d *Draft) judgeBlock(ctx context.Context, b *draftBlock, worst draftState)
 // decided returns what passes the limits, in order.
 func (d *Draft) decided() []Mark {
 	words := 0
-	d.odds, d.pending = d.odds[:0], d.pending[:0]
-	for s := range d.sentences() {
-		words += s.words.count()
-		d.odds = append(d.odds, s.odds...)
-		d.pending = append(d.pending, s.kept...)
+	d.odds = d.odds[:0]
+	for _, b := range d.blocks {
+		words += b.words
+		d.odds = append(d.odds, b.odds...)
 	}
 	d.rate = d.e.slipRate(d.asked)
 	d.rate.settle(words, d.odds)
-	d.floor = d.floorOf(words, d.pending)
+	d.floor = d.floorOf(words, d.kept())
 	d.said = directivesOf(d.source)
 
 	var marks []Mark
 	for _, b := range d.blocks {
-		places := b.Places()
-		for i := range b.sentences {
-			s := &b.sentences[i]
-			for _, c := range s.kept {
-				m, ok := d.passed(c)
-				if !ok {
-					continue
-				}
-				m.place(b.Block, &places, s.start+c.start, s.start+c.end)
-				if !d.said.stand(m.Offset, m.Offset+m.Length, m.Observed) {
-					marks = append(marks, m)
+		if b.kept > 0 {
+			marks = d.appendMarks(marks, b)
+		}
+	}
+	slices.SortStableFunc(marks, func(a, b Mark) int { return cmp.Compare(a.Offset, b.Offset) })
+	return marks
+}
+
+// kept yields every finding that may be reported.
+func (d *Draft) kept() iter.Seq[*pending] {
+	return func(yield func(*pending) bool) {
+		for _, b := range d.blocks {
+			if b.kept == 0 {
+				continue
+			}
+			for i := range b.sentences {
+				for c := range pointers(b.sentences[i].kept) {
+					if !yield(c) {
+						return
+					}
 				}
 			}
 		}
 	}
-	slices.SortStableFunc(marks, func(a, b Mark) int { return cmp.Compare(a.Offset, b.Offset) })
+}
+
+// appendMarks appends the marks of a block that pass the limits.
+func (d *Draft) appendMarks(marks []Mark, b *draftBlock) []Mark {
+	places := b.Places()
+	for i := range b.sentences {
+		s := &b.sentences[i]
+		for c := range pointers(s.kept) {
+			m, ok := d.passed(c)
+			if !ok {
+				continue
+			}
+			m.place(b.Block, &places, s.start+c.start, s.start+c.end)
+			if !d.said.stand(m.Offset, m.Offset+m.Length, m.Observed) {
+				marks = append(marks, m)
+			}
+		}
+	}
 	return marks
 }

@@ -111,7 +111,7 @@ func (d *document) weigh(ctx context.Context, blocks []*text.Block) error {
 	}
 	inOrder(d.pending)
 	d.rate.settle(d.words, d.odds)
-	d.floor = d.floorOf(d.words, d.pending)
+	d.floor = d.floorOf(d.words, pointers(d.pending))
 	return nil
 }
 
@@ -150,9 +150,9 @@ func sizeOf(blocks []*text.Block) int {
 
 // floorOf is the least probability that the budget grants the findings of so many words
 // together.
-func (d *document) floorOf(words int, all []pending) float64 {
+func (d *document) floorOf(words int, all iter.Seq[*pending]) float64 {
 	var p []float64
-	for _, c := range all {
+	for c := range all {
 		if c.mark.Rule != "" {
 			continue
 		}
@@ -196,7 +196,7 @@ func (d *document) least(k Kind) float64 {
 // decide yields what passes the limits now that the window is known.
 func (d *document) decide() iter.Seq[Mark] {
 	return func(yield func(Mark) bool) {
-		for _, c := range d.pending {
+		for c := range pointers(d.pending) {
 			m, ok := d.passed(c)
 			if ok && !d.said.stand(m.Offset, m.Offset+m.Length, m.Observed) && !yield(m) {
 				return
@@ -206,24 +206,35 @@ func (d *document) decide() iter.Seq[Mark] {
 }
 
 // passed returns a finding as a mark, if the limits let it pass.
-func (d *document) passed(c pending) (Mark, bool) {
-	m := c.mark
-	if m.Rule != "" {
-		m.P, m.Grade = preferredP, GradeMark
-	} else {
-		m.P = logistic(c.odds + d.rate.shift)
-		if m.Grade = d.limits.grade(m.Kind, m.P); m.P < d.floor {
-			m.Grade = GradeDoubt
+func (d *document) passed(c *pending) (Mark, bool) {
+	p, grade := preferredP, GradeMark
+	if kind := c.mark.Kind; c.mark.Rule == "" {
+		p = logistic(c.odds + d.rate.shift)
+		if grade = d.limits.grade(kind, p); p < d.floor {
+			grade = GradeDoubt
 		}
-		if m.P < d.least(m.Kind) || m.Grade == GradeDoubt && !d.doubts {
-			return m, false
+		if p < d.least(kind) || grade == GradeDoubt && !d.doubts {
+			return Mark{}, false
 		}
 	}
+	m := c.mark
+	m.P, m.Grade = p, grade
 	m.Corrections = slices.Clone(m.Corrections)
 	for i := range m.Corrections {
-		m.Corrections[i].P *= m.P
+		m.Corrections[i].P *= p
 	}
 	return m, true
+}
+
+// pointers yields a pointer to each element.
+func pointers[T any](all []T) iter.Seq[*T] {
+	return func(yield func(*T) bool) {
+		for i := range all {
+			if !yield(&all[i]) {
+				return
+			}
+		}
+	}
 }
 
 func wordsIn(tokens []text.Token) int {
