@@ -17,6 +17,7 @@ package main
 import (
 	"encoding/json"
 	"syscall/js"
+	"time"
 
 	"example.org/foulcase"
 	"example.org/foulcase/internal/editor"
@@ -43,7 +44,8 @@ func takeModel(host js.Value) []byte {
 
 // serve holds a session with the editor until that ends it.
 func serve(host js.Value, engine *foulcase.Engine) {
-	server := editor.New(editor.Config{Engine: engine}, func(m json.RawMessage) error {
+	config := editor.Config{Engine: engine, Pause: pauses()}
+	server := editor.New(config, func(m json.RawMessage) error {
 		host.Call("send", string(m))
 		return nil
 	})
@@ -56,4 +58,25 @@ func serve(host js.Value, engine *foulcase.Engine) {
 	host.Call("started", receive)
 	<-server.Done()
 	server.Close() // the worker ends with its page; how the session ended is nobody's concern
+}
+
+const (
+	// longestTurn is how long a judgement keeps the worker from its messages, about.
+	longestTurn = 40 * time.Millisecond
+	// shortestPause is the least that timers of browsers know. Waiting for less, Go may
+	// not let go of the thread.
+	shortestPause = time.Millisecond
+)
+
+// pauses returns a function that lets the worker handle the messages that wait, when
+// it did not for a while: Go hands the worker's only thread back while all its
+// goroutines wait.
+func pauses() func() {
+	last := time.Now()
+	return func() {
+		if time.Since(last) > longestTurn {
+			time.Sleep(shortestPause)
+			last = time.Now()
+		}
+	}
 }

@@ -165,15 +165,25 @@ func (d *document) look(ctx context.Context, find func(*foulcase.Draft, context.
 	return nil
 }
 
-// showing is what a judgement is to tell of its progress: the first one, that is.
+// showing is what a judgement is to tell of its progress: the first one, that is. All
+// of them pause now and then.
 func (d *document) showing() func(done, total int) {
-	if d.judged {
+	pause := d.s.config.Pause
+	if d.judged && pause == nil {
 		return nil
 	}
-	if d.opening == nil {
+	if !d.judged && d.opening == nil {
 		d.opening = d.s.progress(nameOf(d.uri), len(d.draft.Source()))
 	}
-	return d.opening.report
+	opening := d.opening
+	return func(done, total int) {
+		if opening != nil {
+			opening.report(done, total)
+		}
+		if pause != nil {
+			pause()
+		}
+	}
 }
 
 // report tells of what hinders a judgement, once.

@@ -5,12 +5,14 @@
 "use strict";
 importScripts("wasm_exec.js");
 
-self.onmessage = async ({ data: { module, model } }) => {
-  const failed = (why) => postMessage({ failed: String(why) });
+const failed = (why) => postMessage({ failed: String(why) });
+
+// Nothing here holds on to the model: the program copies it and deletes this one.
+self.onmessage = ({ data }) => {
   const waiting = [];
   self.onmessage = ({ data }) => waiting.push(data);
   self.foulcase = {
-    model: new Uint8Array(model),
+    model: new Uint8Array(data.model),
     send: (text) => postMessage(text),
     started(receive) {
       self.onmessage = ({ data }) => receive(data);
@@ -19,11 +21,10 @@ self.onmessage = async ({ data: { module, model } }) => {
     },
     failed,
   };
-  try {
-    const go = new Go();
-    await go.run(await WebAssembly.instantiate(module, go.importObject));
-    failed("the server has ended");
-  } catch (err) {
-    failed(err);
-  }
+  run(data.module).then(() => failed("the server has ended"), failed);
 };
+
+async function run(module) {
+  const go = new Go();
+  await go.run(await WebAssembly.instantiate(module, go.importObject));
+}

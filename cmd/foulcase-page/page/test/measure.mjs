@@ -49,15 +49,14 @@ async function toUnderline(page) {
   return ms;
 }
 
-// rendererMemory is what the processes of pages have in memory now, and had at most, in
-// MB, as Linux tells it.
+// rendererMemory is what the page's process has in memory, in MiB, the files that it shares
+// with other processes left out, as Linux tells it.
 async function rendererMemory(browser) {
   const cdp = await browser.newBrowserCDPSession();
   const { processInfo } = await cdp.send("SystemInfo.getProcessInfo");
   const pids = processInfo.filter(({ type }) => type === "renderer").map(({ id }) => id);
   const all = await Promise.all(pids.map((pid) => readFile(`/proc/${pid}/status`, "utf8")));
-  const megabytes = (status, field) => Number(status.match(`${field}:\\s*(\\d+) kB`)[1]) / 1024;
-  return ["VmRSS", "VmHWM"].map((field) => Math.max(...all.map((status) => megabytes(status, field))));
+  return Math.max(...all.map((status) => Number(status.match(/RssAnon:\s*(\d+) kB/)[1]) / 1024));
 }
 
 const site = await serve(dist);
@@ -66,8 +65,7 @@ const troubles = [];
 const cold = [];
 const kept = [];
 const keys = [];
-const resident = [];
-const peak = [];
+const memory = [];
 for (let i = 0; i < runs; i++) {
   const page = await openPage(browser, site.url, troubles);
   cold.push(await sinceStart(page));
@@ -76,16 +74,13 @@ for (let i = 0; i < runs; i++) {
   kept.push(await sinceStart(page));
   await page.click(".cm-content");
   keys.push(await toUnderline(page));
-  const [now, most] = await rendererMemory(browser);
-  resident.push(now);
-  peak.push(most);
+  memory.push(await rendererMemory(browser));
   await page.context().close();
 }
 say("ready, first load", cold, "ms");
 say("ready, model kept", kept, "ms");
 say("key to underline", keys, "ms");
-say("memory of the page's process", resident, "MB");
-say("memory of it at most", peak, "MB");
+say("memory of the page's process", memory, "MiB");
 troubles.forEach((trouble) => console.log(trouble));
 await browser.close();
 await site.close();
