@@ -27,12 +27,16 @@ type Draft struct {
 	drifted bool       // there were edits since everything was judged together
 }
 
-// NewDraft begins a draft with a copy of source, UTF-8. Its format must not be a
-// packed one. An unknown format is an error. Close the draft when done.
+// NewDraft begins a draft with a copy of source, UTF-8. Errors are ErrFormat, and
+// ErrUnreadable for a packed format, whose documents are no text. Close the draft
+// when done.
 func (e *Engine) NewDraft(source []byte, o Options) (*Draft, error) {
 	format, err := text.ParseFormat(o.formatName())
 	if err != nil {
 		return nil, err
+	}
+	if format.Packed() {
+		return nil, fmt.Errorf("a %s is packed and cannot be judged while it is edited; proofread its file: %w", format, ErrUnreadable)
 	}
 	return &Draft{
 		document: e.newDocument(o),

@@ -272,6 +272,9 @@ func TestDraftRefuses(t *testing.T) {
 	if _, err := engine().NewDraft(nil, foulcase.Options{Format: "parchment"}); err == nil {
 		t.Error("a draft of an unknown format")
 	}
+	if _, err := engine().NewDraft(nil, foulcase.Options{Format: "docx"}); !errors.Is(err, foulcase.ErrUnreadable) {
+		t.Errorf("a draft of a packed document: %v", err)
+	}
 	d := draft(t, "fog", foulcase.Options{})
 	for _, e := range [][2]int{{-1, 0}, {2, 1}, {0, 4}, {4, 4}} {
 		if err := d.Edit(e[0], e[1], []byte("x")); err == nil || string(d.Source()) != "fog" {

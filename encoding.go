@@ -3,7 +3,6 @@ package foulcase
 import (
 	"bufio"
 	"bytes"
-	"fmt"
 	"io"
 
 	"example.org/foulcase/internal/charset"
@@ -35,7 +34,7 @@ func decode(r io.Reader, format text.Format, label string) (io.Reader, origin, e
 		return nil, origin{}, err
 	}
 	if len(source) > maxDecoded {
-		return nil, origin{}, fmt.Errorf("the document is %s and has more than %d bytes, the most that are decoded; convert it to UTF-8 or split it", encoding.Name(), maxDecoded)
+		return nil, origin{}, text.TooLarge("the document is %s and has more than %d bytes, the most that are decoded; convert it to UTF-8 or split it", encoding.Name(), maxDecoded)
 	}
 	t := encoding.Decode(source)
 	return bytes.NewReader(t.Bytes()), origin{t}, nil

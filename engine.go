@@ -21,6 +21,7 @@ import (
 	"example.org/foulcase/candidates"
 	"example.org/foulcase/candidates/lexicon"
 	"example.org/foulcase/channel"
+	"example.org/foulcase/internal/charset"
 	"example.org/foulcase/internal/modelfile"
 	"example.org/foulcase/internal/text"
 	"example.org/foulcase/lm"
@@ -31,6 +32,14 @@ var (
 	ErrForeign = modelfile.ErrForeign // not a model file
 	ErrNewer   = modelfile.ErrNewer   // made for a later version of foulcase
 	ErrDamaged = modelfile.ErrDamaged // cut or altered
+)
+
+// Errors of reading a document, for errors.Is; others are those of its reader.
+var (
+	ErrFormat     = text.ErrFormat     // Options.Format names none
+	ErrEncoding   = charset.ErrUnknown // Options.Encoding names none that is read
+	ErrUnreadable = text.ErrUnreadable // not a document of its format
+	ErrTooLarge   = text.ErrTooLarge   // beyond what is read of the format
 )
 
 // Names of the sections of a model file.

@@ -24,7 +24,9 @@ const (
 // Proof reads a document and yields its marks, queries among them, in the
 // order of the text. Reading stops at the first error, which is yielded with a
 // zero Mark. Plain text streams: memory is bounded however long the document
-// or its lines. The same document gives the same marks on every run.
+// or its lines. The same document gives the same marks on every run. Errors of the
+// document are ErrFormat, ErrEncoding, ErrUnreadable and ErrTooLarge; others are
+// those of r and of ctx.
 func (e *Engine) Proof(ctx context.Context, r io.Reader, o Options) iter.Seq2[Mark, error] {
 	return func(yield func(Mark, error) bool) {
 		format, err := text.ParseFormat(o.formatName())

@@ -37,7 +37,7 @@ var utf8Encoding = &Encoding{name: "utf-8"}
 
 // Find returns the encoding that a label of the WHATWG's Encoding Standard stands
 // for ("latin1", "windows-1251", "shift_jis"), or utf-16le, utf-16be, utf-32le,
-// utf-32be; "" is UTF-8.
+// utf-32be; "" is UTF-8. All others are errors that are ErrUnknown.
 func Find(label string) (*Encoding, error) {
 	switch label {
 	case "":
@@ -49,11 +49,11 @@ func Find(label string) (*Encoding, error) {
 	}
 	found, err := htmlindex.Get(label)
 	if err != nil {
-		return nil, fmt.Errorf("no encoding %q: give a name such as utf-16le, windows-1252, iso-8859-2 or shift_jis", label)
+		return nil, unknown("no encoding %q: give a name such as utf-16le, windows-1252, iso-8859-2 or shift_jis", label)
 	}
 	name, err := htmlindex.Name(found)
 	if err != nil {
-		return nil, fmt.Errorf("encoding %q: %w", label, err)
+		return nil, unknown("encoding %q: %w", label, err)
 	}
 	switch {
 	case name == "utf-8":
@@ -63,7 +63,7 @@ func Find(label string) (*Encoding, error) {
 	case name == "utf-16be":
 		return utf16BE, nil
 	case found == japanese.ISO2022JP || found == encoding.Replacement:
-		return nil, fmt.Errorf("encoding %s changes its meaning on the way, so no place in it can be corrected by itself; convert the document to UTF-8 first", label)
+		return nil, unknown("encoding %s changes its meaning on the way, so no place in it can be corrected by itself; convert the document to UTF-8 first", label)
 	}
 	return &Encoding{name, table{found}}, nil
 }
@@ -99,6 +99,19 @@ func (e *Encoding) Name() string { return e.name }
 
 // IsUTF8 tells that text of the encoding needs no decoding.
 func (e *Encoding) IsUTF8() bool { return e.codec == nil }
+
+// ErrUnknown says that there is no such encoding, or that it is none of those which are
+// read.
+var ErrUnknown = errors.New("no encoding that is read")
+
+// unknownError is an ErrUnknown that says more.
+type unknownError struct{ error }
+
+func (e unknownError) Unwrap() []error { return []error{e.error, ErrUnknown} }
+
+func unknown(format string, args ...any) error {
+	return unknownError{fmt.Errorf(format, args...)}
+}
 
 // ErrNotEncodable is wrapped by errors of Encode.
 var ErrNotEncodable = errors.New("not in this encoding")

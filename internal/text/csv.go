@@ -2,7 +2,6 @@ package text
 
 import (
 	"bytes"
-	"fmt"
 	"io"
 	"slices"
 	"strconv"
@@ -115,7 +114,7 @@ func (c *csvScan) choose(fields, header []string) (byName bool, err error) {
 			column = n - 1
 		}
 		if column < 0 || column >= len(header) {
-			return false, fmt.Errorf("line 1: there is no column %q; there are %s, or their numbers from 1 to %d", f, listed(header), len(header))
+			return false, unreadable("line 1: there is no column %q; there are %s, or their numbers from 1 to %d", f, listed(header), len(header))
 		}
 		c.columns[column] = true
 	}

@@ -151,7 +151,7 @@ func (f Format) entry() (format, error) {
 	if i := slices.IndexFunc(all, func(e format) bool { return e.name == f }); i >= 0 {
 		return all[i], nil
 	}
-	return format{}, fmt.Errorf("no format %q: there are %v", string(f), Formats())
+	return format{}, refusal{fmt.Errorf("no format %q: there are %v", string(f), Formats()), ErrFormat}
 }
 
 // Blocks reads a document and yields its prose, block by block in the order of

@@ -47,7 +47,7 @@ func (j *jsonScan) document(rule string) error {
 // fault is an error at the place where the scan stands.
 func (j *jsonScan) fault(format string, args ...any) error {
 	at := j.position(j.pos)
-	return fmt.Errorf("line %d, column %d: %s; correct the JSON there", at.Line, at.Column, fmt.Sprintf(format, args...))
+	return unreadable("line %d, column %d: %s; correct the JSON there", at.Line, at.Column, fmt.Sprintf(format, args...))
 }
 
 // peek returns the next byte, 0 at the end.

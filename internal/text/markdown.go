@@ -3,7 +3,6 @@ package text
 import (
 	"bytes"
 	"cmp"
-	"fmt"
 	"io"
 	"slices"
 
@@ -39,7 +38,7 @@ type markdown struct {
 func (m *markdown) parse() (err error) {
 	defer func() {
 		if fault := recover(); fault != nil {
-			err = fmt.Errorf("the document cannot be read as Markdown (%v); read it as plain text", fault)
+			err = unreadable("the document cannot be read as Markdown (%v); read it as plain text", fault)
 		}
 	}()
 	m.base = bomLen(m.source)

@@ -3,7 +3,6 @@ package text
 import (
 	"bytes"
 	"cmp"
-	"fmt"
 	"strconv"
 	"strings"
 )
@@ -19,10 +18,10 @@ func parseOdt(p *packed, o Options) ([]*Block, error) {
 		return nil, err
 	}
 	if !bytes.HasPrefix(kind, []byte(want)) {
-		return nil, fmt.Errorf("is no ODT: it says that it is %.80q", kind)
+		return nil, unreadable("is no ODT: it says that it is %.80q", kind)
 	}
 	if manifest, err := p.part("META-INF/manifest.xml"); err == nil && bytes.Contains(manifest, []byte("encryption-data")) {
-		return nil, fmt.Errorf("the document is encrypted; save it without a password")
+		return nil, unreadable("the document is encrypted; save it without a password")
 	}
 	table := styles{}
 	read := func(name string) ([]*Block, error) {

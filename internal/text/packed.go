@@ -36,19 +36,19 @@ type packed struct {
 // bytes as the options allow a document.
 func openPacked(source []byte, kind string, o Options) (*packed, error) {
 	if bytes.HasPrefix(source, []byte("\xD0\xCF\x11\xE0\xA1\xB1\x1A\xE1")) { // OLE 2 compound file
-		return nil, fmt.Errorf("is no %s: it is encrypted or in a binary format of older programs; save it as %s without a password", kind, kind)
+		return nil, unreadable("is no %s: it is encrypted or in a binary format of older programs; save it as %s without a password", kind, kind)
 	}
 	archive, err := zip.NewReader(bytes.NewReader(source), int64(len(source)))
 	if err != nil {
-		return nil, fmt.Errorf("is no %s: %w; save it anew as %s, or say with --as what it is", kind, err, kind)
+		return nil, unreadable("is no %s: %w; save it anew as %s, or say with --as what it is", kind, err, kind)
 	}
 	if n := len(archive.File); n > mostEntries {
-		return nil, fmt.Errorf("is no %s that is read: it packs %d files, more than %d", kind, n, mostEntries)
+		return nil, TooLarge("is no %s that is read: it packs %d files, more than %d", kind, n, mostEntries)
 	}
 	p := &packed{kind: kind, archive: archive, entries: make(map[string]*zip.File, len(archive.File)), left: cmp.Or(o.MaxBytes, packedMaxBytes)}
 	for _, f := range archive.File {
 		if p.entries[f.Name] != nil {
-			return nil, fmt.Errorf("is no %s: it packs %q twice", kind, f.Name)
+			return nil, unreadable("is no %s: it packs %q twice", kind, f.Name)
 		}
 		p.entries[f.Name] = f
 	}
@@ -62,25 +62,25 @@ var errNoPart = errors.New("is not in it")
 func (p *packed) part(name string) ([]byte, error) {
 	f := p.entries[name]
 	if f == nil {
-		return nil, fmt.Errorf("is no %s: the part %q %w", p.kind, name, errNoPart)
+		return nil, unreadable("is no %s: the part %q %w", p.kind, name, errNoPart)
 	}
 	size := f.UncompressedSize64
 	switch {
 	case f.Flags&1 != 0:
-		return nil, fmt.Errorf("the part %q is encrypted; save the document without a password", name)
+		return nil, unreadable("the part %q is encrypted; save the document without a password", name)
 	case size > ratioFrom && size/mostRatio > f.CompressedSize64:
-		return nil, fmt.Errorf("the part %q unpacks %d bytes to %d, more than documents do; it is not read", name, f.CompressedSize64, size)
+		return nil, TooLarge("the part %q unpacks %d bytes to %d, more than documents do; it is not read", name, f.CompressedSize64, size)
 	case size > uint64(p.left):
-		return nil, fmt.Errorf("the part %q would unpack to %d bytes, which is beyond the most that is read of a document; split it", name, size)
+		return nil, TooLarge("the part %q would unpack to %d bytes, which is beyond the most that is read of a document; split it", name, size)
 	}
 	r, err := f.Open()
 	if err != nil {
-		return nil, fmt.Errorf("the part %q: %w", name, err)
+		return nil, unreadable("the part %q: %w", name, err)
 	}
 	defer r.Close()
 	content, err := io.ReadAll(io.LimitReader(r, int64(size)+1)) // one more, so that the checksum is looked at
 	if err != nil {
-		return nil, fmt.Errorf("the part %q: %w", name, err)
+		return nil, unreadable("the part %q: %w", name, err)
 	}
 	p.left -= int64(len(content))
 	return content, nil

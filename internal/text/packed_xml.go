@@ -3,7 +3,6 @@ package text
 import (
 	"bytes"
 	"encoding/xml"
-	"fmt"
 	"html"
 	"io"
 	"strings"
@@ -43,10 +42,10 @@ func eachXML(part string, source []byte, take func(xmlEvent)) error {
 			return nil
 		}
 		if err == nil && depth >= mostDepth {
-			err = fmt.Errorf("more than %d elements in each other", mostDepth)
+			err = TooLarge("more than %d elements in each other", mostDepth)
 		}
 		if err != nil {
-			return fmt.Errorf("the part %q cannot be read: %w", part, err)
+			return unreadable("the part %q cannot be read: %w", part, err)
 		}
 		e := xmlEvent{kind: xmlOther, start: start, end: int(d.InputOffset())}
 		switch t := t.(type) {
@@ -64,7 +63,7 @@ func eachXML(part string, source []byte, take func(xmlEvent)) error {
 			e.kind = xmlText
 		}
 		if depth < 0 {
-			return fmt.Errorf("the part %q cannot be read: </%s> closes nothing", part, e.name)
+			return unreadable("the part %q cannot be read: </%s> closes nothing", part, e.name)
 		}
 		take(e)
 	}

@@ -2,7 +2,6 @@ package text
 
 import (
 	"bytes"
-	"fmt"
 	"io"
 )
 
@@ -35,7 +34,7 @@ func readAll(r io.Reader, o Options) ([]byte, error) {
 	}
 	source, err := io.ReadAll(io.LimitReader(r, most+1))
 	if err == nil && int64(len(source)) > most {
-		err = fmt.Errorf("the document has more than %d bytes, the most that its format is read with; split it or read it as plain text", most)
+		err = TooLarge("the document has more than %d bytes, the most that its format is read with; split it or read it as plain text", most)
 	}
 	return source, err
 }
