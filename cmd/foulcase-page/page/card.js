@@ -6,7 +6,8 @@ import { EditorView, hoverTooltip, keymap, showTooltip } from "@codemirror/view"
 import { element } from "./element.js";
 import { actionsOn, certainty, markAt, marksOf } from "./marks.js";
 
-// open opens the card of a mark, or closes it when that is null.
+// open opens the card of a mark, or closes it when that is null. The first button of a
+// card whose mark says takesFocus has the focus.
 const open = StateEffect.define();
 
 // opened is the mark whose card is open at the cursor.
@@ -71,14 +72,9 @@ function step(view, by) {
 function enter(view) {
   const mark = view.state.field(opened) ?? markAt(view.state, view.state.selection.main.head);
   if (!mark) return false;
-  entering = true;
-  view.dispatch({ effects: [open.of(null)] });
-  view.dispatch({ effects: [open.of(mark)] });
+  view.dispatch({ effects: open.of({ ...mark, takesFocus: true }) });
   return true;
 }
-
-// entering says that the next card takes the focus when its buttons are there.
-let entering = false;
 
 function close(view) {
   if (!view.state.field(opened)) return false;
@@ -94,39 +90,44 @@ const tooltip = (mark) => ({
 });
 
 function card(view, mark) {
-  const takesFocus = entering;
-  entering = false;
   const choices = element("div", { class: "choices" });
-  const dom = element("div", { class: `card ${mark.grade}-card`, role: "dialog", "aria-label": `${mark.grade}: ${mark.observed}` }, [
+  const parts = [
     element("p", {}, [element("b", {}, mark.grade), ` "${mark.observed}": ${mark.kind} `, element("span", { class: "p" }, certainty(mark))]),
     choices,
-  ]);
+  ];
+  if (!/\s/.test(mark.observed)) parts.push(standing(view, mark));
+  const dom = element("div", { class: `card ${mark.grade}-card`, role: "dialog", "aria-label": `${mark.grade}: ${mark.observed}` }, parts);
   dom.addEventListener("keydown", (event) => {
     if (event.key === "Escape") close(view);
   });
   fill(view, mark, choices)
-    .then(() => takesFocus && choices.querySelector("button").focus())
+    .then(() => mark.takesFocus && dom.querySelector("button").focus())
     .catch((err) => choices.append(err.message));
   return dom;
 }
 
-// fill puts a button into the card for each thing that can be done.
+// fill puts a button into the card for each correction.
 async function fill(view, mark, choices) {
   const actions = await actionsOn(view, mark.from, mark.to, { only: ["quickfix"], diagnostics: [mark.raw] });
-  const button = (label, preferred, act) => {
-    const b = element("button", { type: "button", class: preferred ? "preferred" : "" }, label);
-    b.onclick = () => {
-      act();
-      view.focus();
-    };
-    choices.append(b);
-  };
-  for (const action of actions) button(action.title, action.isPreferred, action.apply);
-  if (!/\s/.test(mark.observed)) {
-    button(`Let "${mark.observed}" stand`, false, () => {
-      close(view);
-      view.state.field(letStanding)(mark.observed);
-    });
+  for (const { title, isPreferred, apply } of actions) {
+    choices.append(button(view, title, isPreferred ? "preferred" : "", apply));
   }
   view.requestMeasure();
+}
+
+function standing(view, mark) {
+  return button(view, `Let "${mark.observed}" stand`, "stand", () => {
+    close(view);
+    view.state.field(letStanding)(mark.observed);
+  });
+}
+
+// button is one that acts and gives the focus back to the text.
+function button(view, label, name, act) {
+  const b = element("button", { type: "button", class: name }, label);
+  b.onclick = () => {
+    act();
+    view.focus();
+  };
+  return b;
 }

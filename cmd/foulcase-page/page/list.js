@@ -2,7 +2,7 @@
 
 import { show } from "./card.js";
 import { element } from "./element.js";
-import { certainty, marksOf, take, takeAll } from "./marks.js";
+import { certainty, marksOf, still, take, takeAll } from "./marks.js";
 
 const byId = (id) => document.getElementById(id);
 
@@ -32,10 +32,14 @@ function item(view, mark) {
     ...(best ? [" → ", element("ins", {}, best)] : []),
     element("small", {}, `${mark.grade}, ${certainty(mark)}: ${mark.kind}`),
   ]);
-  go.onclick = () => show(view, mark);
+  const act = (what) => () => {
+    const now = still(view.state, mark);
+    if (now) what(view, now);
+  };
+  go.onclick = act(show);
   if (!best) return element("li", {}, go);
   const accept = element("button", { type: "button", class: "take", "aria-label": `Correct ${mark.observed} to ${best}` }, "Correct");
-  accept.onclick = () => take(view, mark);
+  accept.onclick = act(take);
   return element("li", {}, [go, accept]);
 }
 

@@ -28,7 +28,7 @@ export const look = EditorView.theme({
   ".cm-tooltip": { border: "none", backgroundColor: "transparent" },
   ".card": {
     margin: "6px 0",
-    maxWidth: "24rem",
+    maxWidth: "min(24rem, calc(100vw - 2rem))",
     padding: ".7rem .8rem",
     color: "var(--ink)",
     backgroundColor: "var(--raised)",
@@ -40,8 +40,8 @@ export const look = EditorView.theme({
   ".query-card": { borderLeftColor: "var(--query)", borderLeftStyle: "dotted" },
   ".card p": { margin: "0 0 .5rem" },
   ".card .p": { whiteSpace: "nowrap", color: "var(--faint)" },
-  ".choices": { display: "flex", flexDirection: "column", gap: ".3rem", minWidth: "14rem" },
-  ".choices button": {
+  ".choices": { display: "grid", gap: ".3rem", minWidth: "14rem", maxHeight: "12.4rem", overflow: "auto", padding: "2px" },
+  ".card button": {
     font: "inherit",
     textAlign: "left",
     padding: ".35rem .6rem",
@@ -51,7 +51,8 @@ export const look = EditorView.theme({
     borderRadius: "4px",
     cursor: "pointer",
   },
-  ".choices .preferred": { color: "var(--on-accent)", backgroundColor: "var(--accent)", borderColor: "var(--accent)" },
-  ".choices button:hover": { borderColor: "var(--ink)" },
-  ".choices button:focus-visible": { outline: "2px solid var(--focus)", outlineOffset: "2px" },
+  ".card .preferred": { color: "var(--on-accent)", backgroundColor: "var(--accent)", borderColor: "var(--accent)" },
+  ".card .stand": { marginTop: ".4rem", marginLeft: "2px", color: "var(--faint)", border: "none", textDecoration: "underline" },
+  ".card button:hover": { borderColor: "var(--ink)" },
+  ".card button:focus-visible": { outline: "2px solid var(--focus)", outlineOffset: "1px" },
 });

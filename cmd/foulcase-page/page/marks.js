@@ -36,6 +36,9 @@ export function marksOf(state) {
 // markAt is the mark that holds a position, or ends there.
 export const markAt = (state, pos) => marksOf(state).find((m) => m.from <= pos && pos <= m.to);
 
+// still finds a mark again in a text that may have changed; undefined when it is gone.
+export const still = (state, mark) => marksOf(state).find((m) => m.raw === mark.raw);
+
 // certainty says a mark's p in words.
 export const certainty = (mark) => `p ${Math.min(mark.p, 0.99).toFixed(2)}`;
 
@@ -79,12 +82,12 @@ export const underlining = linter(null, { tooltipFilter: () => [] });
 export async function actionsOn(view, from, to, { only, diagnostics = [] } = {}) {
   const plugin = LSPPlugin.get(view);
   plugin.client.sync();
+  const doc = view.state.doc;
   const actions = await plugin.client.request("textDocument/codeAction", {
     textDocument: { uri: plugin.uri },
     range: { start: plugin.toPosition(from), end: plugin.toPosition(to) },
     context: { diagnostics, only },
   });
-  const doc = view.state.doc;
   return actions.map((action) => ({ ...action, apply: () => apply(view, plugin, action, doc) }));
 }
 

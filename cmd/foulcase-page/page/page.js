@@ -50,7 +50,10 @@ let pondering;
 const keepUp = EditorView.updateListener.of((update) => {
   if (!update.docChanged || !client.serverCapabilities) return;
   clearTimeout(pondering);
-  pondering = setTimeout(() => tell("judging", "Judging"), 150); // ms
+  pondering = setTimeout(() => {
+    listMarks(view); // those that are left
+    tell("judging", "Judging");
+  }, 150); // ms
   setTimeout(refresh); // the client sees the change after this update
 });
 
