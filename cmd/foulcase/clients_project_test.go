@@ -12,22 +12,31 @@ import (
 	"time"
 )
 
-// reportName is the file that a session reports to.
-const reportName = "report.json"
+// project is a folder with documents.
+type project struct {
+	dir      string
+	document string // that the session opens
+	report   string // the file that the session reports to
+}
 
-// project is a folder with the demo document, a list of house words and settings.
-type project struct{ dir, document string }
-
-// newProject makes a project whose document has a name and line ends.
+// newProject makes a folder with the demo document, under a name and with line ends, a
+// list of house words and settings.
 func newProject(t *testing.T, name, lineEnd string) project {
 	t.Helper()
-	p := project{t.TempDir(), name}
-	text := strings.ReplaceAll(demoText(t), "\n", lineEnd)
-	for name, body := range map[string]string{
-		name:            text,
+	p := newFolder(t, map[string]string{
+		name:            strings.ReplaceAll(demoText(t), "\n", lineEnd),
 		"foulcase.toml": "house = [\"words.txt\"]\n",
 		"words.txt":     "Skarrow\n",
-	} {
+	})
+	p.document = name
+	return p
+}
+
+// newFolder makes a folder with files of some text.
+func newFolder(t *testing.T, files map[string]string) project {
+	t.Helper()
+	p := project{dir: t.TempDir(), report: filepath.Join(t.TempDir(), "report.json")}
+	for name, body := range files {
 		if err := os.WriteFile(filepath.Join(p.dir, name), []byte(body), 0o644); err != nil {
 			t.Fatal(err)
 		}
@@ -64,27 +73,24 @@ func (p project) command(t *testing.T, program string, args ...string) *exec.Cmd
 		"CORRECT="+demoSlips[0].observed,
 		"HOUSE="+demoHouseWord,
 		"RETYPED="+demoRetyped.observed, "MEANT="+demoRetyped.corrected,
-		"REPORT="+filepath.Join(p.dir, reportName))
+		"REPORT="+p.report)
 	return cmd
 }
 
-// run runs an editor through its session. Scripts that fail print the messages that
-// went to and fro.
-func (p project) run(t *testing.T, program string, args ...string) session {
+// run runs an editor through a session and reads its report. Scripts that fail print
+// the messages that went to and fro.
+func (p project) run(t *testing.T, report any, program string, args ...string) {
 	t.Helper()
-	cmd := p.command(t, program, args...)
-	said, err := cmd.CombinedOutput()
-	var s session
+	said, err := p.command(t, program, args...).CombinedOutput()
 	if err == nil {
-		var report []byte
-		if report, err = os.ReadFile(filepath.Join(p.dir, reportName)); err == nil {
-			err = json.Unmarshal(report, &s)
+		var written []byte
+		if written, err = os.ReadFile(p.report); err == nil {
+			err = json.Unmarshal(written, report)
 		}
 	}
 	if err != nil {
 		t.Fatalf("%v\n%s", err, said)
 	}
-	return s
 }
 
 // checkFiles tells whether the document was saved with a text and line ends, and the

@@ -56,11 +56,44 @@ func TestNeovim(t *testing.T) {
 	for name, lineEnd := range map[string]string{"LF": "\n", "CRLF": "\r\n"} {
 		t.Run(name, func(t *testing.T) {
 			p := newProject(t, "watch-note.md", lineEnd)
-			s := p.run(t, nvim, "--headless", "-i", "NONE", "-n",
+			var s session
+			p.run(t, &s, nvim, "--headless", "-i", "NONE", "-n",
 				"-u", clientFile(t, "neovim.lua"), "-S", clientFile(t, "neovim-session.lua"))
 			text := s.checkTyped(t, func(before string) int { return len(before) })
 			p.checkFiles(t, text, lineEnd)
 		})
+	}
+}
+
+// TestNeovimFileTypes: documents and source code are read by the types that neovim knows
+// them by, and marked in their prose alone.
+func TestNeovimFileTypes(t *testing.T) {
+	nvim := client(t, "nvim")
+	const prose, misspelt = "The hydralic pump of the ladder is slow.", "hydralic"
+	files := map[string]string{
+		"note.txt":           prose,
+		"note.md":            "# The watch\n\n`untill` " + prose,
+		"note.rst":           "The watch\n=========\n\n``untill`` " + prose,
+		"note.adoc":          "= The watch\n\n`+untill+` " + prose,
+		"paper.tex":          "\\documentclass{article}\n\\begin{document}\n\\label{untill}" + prose + "\n\\end{document}\n",
+		"part.tex":           "\\label{untill}" + prose,
+		"note.html":          "<p class='untill'>" + prose + "</p>",
+		"mutt-pilots-1000-7": "Message-ID: <untill@pilots.example>\nSubject: The watch\n\n" + prose,
+		"COMMIT_EDITMSG":     prose,
+		"pump.c":             "int untill; /* " + prose + " */\n",
+		"pump.go":            "package untill\n\n// " + prose + "\n",
+		"pump.js":            "let untill // " + prose + "\n",
+		"pump.py":            "untill = 1 # " + prose + "\n",
+		"pump.sh":            "untill=1 # " + prose + "\n",
+	}
+	p := newFolder(t, files)
+	marked := map[string][]string{}
+	p.run(t, &marked, nvim, "--headless", "-i", "NONE", "-n",
+		"-u", clientFile(t, "neovim.lua"), "-S", clientFile(t, "neovim-types.lua"))
+	for name := range files {
+		if got := marked[name]; !slices.Equal(got, []string{misspelt}) {
+			t.Errorf("%s: marked %q, want %q", name, got, misspelt)
+		}
 	}
 }
 
@@ -73,7 +106,8 @@ func TestEmacs(t *testing.T) {
 	if out, err := p.command(t, emacs, "--batch", "-q", "--no-site-file", "--eval", load).CombinedOutput(); err != nil {
 		missing(t, "emacs has no eglot: %v\n%s", err, out)
 	}
-	s := p.run(t, emacs, "--batch", "-q", "--no-site-file", "--eval", load, "-l", clientFile(t, "emacs.el"), "-l", clientFile(t, "emacs-session.el"))
+	var s session
+	p.run(t, &s, emacs, "--batch", "-q", "--no-site-file", "--eval", load, "-l", clientFile(t, "emacs.el"), "-l", clientFile(t, "emacs-session.el"))
 	text := s.checkTyped(t, utf8.RuneCountInString)
 	p.checkFiles(t, text, "\n")
 }
@@ -97,7 +131,8 @@ func TestProtocolClient(t *testing.T) {
 	} {
 		t.Run(unit, func(t *testing.T) {
 			p := newProject(t, "watch-note.md", "\r\n")
-			s := p.run(t, node, filepath.Join(library, "protocol-session.mjs"), unit)
+			var s session
+			p.run(t, &s, node, filepath.Join(library, "protocol-session.mjs"), unit)
 			s.check(t, width)
 		})
 	}

@@ -1,6 +1,9 @@
 local foulcase
 vim.api.nvim_create_autocmd("FileType", {
-  pattern = { "text", "markdown", "rst", "tex", "mail", "gitcommit" },
+  pattern = {
+    "text", "markdown", "rst", "asciidoc", "tex", "plaintex", "html", "mail", "gitcommit",
+    "c", "go", "javascript", "python", "sh",
+  },
   callback = function(event)
     foulcase = foulcase or vim.lsp.start_client({
       name = "foulcase",
