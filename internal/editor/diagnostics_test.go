@@ -27,7 +27,7 @@ func TestWording(t *testing.T) {
 	}{
 		{foulcase.Mark{Observed: "ancher", Kind: foulcase.Nonword, P: .9999, Corrections: forms("anchor")}, `"ancher" is not a word known here: "anchor"? (p 0.99)`},
 		{foulcase.Mark{Observed: "birth", Kind: foulcase.Realword, P: .5, Corrections: forms("berth")}, `"birth" is a word, but hardly the one meant: "berth"? (p 0.50)`},
-		{foulcase.Mark{Observed: "alot", Kind: foulcase.Runon, P: .98, Corrections: forms("a lot", "also", "allot")}, `"alot" seems to lack a space: "a lot", "also" or "allot"? (p 0.98)`},
+		{foulcase.Mark{Observed: "alot", Kind: foulcase.Runon, P: .98, Corrections: forms("a lot", "also", "allot", "aloft")}, `"alot" seems to lack a space: "a lot", "also" or "allot"? (p 0.98)`},
 		{foulcase.Mark{Observed: "with\n  in", Kind: foulcase.Split, P: .8, Corrections: forms("within")}, `"with in" seems to have a space too many: "within"? (p 0.80)`},
 		{foulcase.Mark{Observed: "to to", Kind: foulcase.Repeat, P: .97, Corrections: forms("to")}, `"to to" stands there twice: "to"? (p 0.97)`},
 		{foulcase.Mark{Observed: "pilotboat", Rule: foulcase.RuleHouse, P: 1, Corrections: forms("pilot boat")}, `"pilotboat" is written "pilot boat" in this house`},

@@ -7,6 +7,10 @@ import (
 	"example.org/foulcase"
 )
 
+// namedCorrections is how many corrections a message has room for. Code actions offer
+// the others too.
+const namedCorrections = 3
+
 // wording is what a diagnostic says of a mark.
 func wording(m foulcase.Mark) string {
 	about := map[foulcase.Kind]string{
@@ -17,7 +21,7 @@ func wording(m foulcase.Mark) string {
 		foulcase.Repeat:   "stands there twice",
 	}[m.Kind]
 	var forms []string
-	for _, c := range m.Corrections {
+	for _, c := range m.Corrections[:min(len(m.Corrections), namedCorrections)] {
 		forms = append(forms, quote(c.Text))
 	}
 	if m.Rule == foulcase.RuleHouse {
