@@ -7,6 +7,7 @@ import (
 	"path/filepath"
 	"slices"
 	"strings"
+	"sync"
 )
 
 // Format names a document format.
@@ -38,7 +39,19 @@ type format struct {
 	splice func(source []byte, edits []Edit) ([]byte, error)
 }
 
+// registered is the registry, made once.
+var registered struct {
+	sync.Once
+	formats []format
+}
+
+// registry lists the formats; it is not to be changed.
 func registry() []format {
+	registered.Do(func() { registered.formats = allFormats() })
+	return registered.formats
+}
+
+func allFormats() []format {
 	return slices.Concat([]format{
 		{
 			name: Plain, about: "paragraphs, whether lines are wrapped or not",
