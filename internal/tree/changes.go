@@ -15,8 +15,8 @@ type Changes struct {
 	files map[string][]lineRange // by real path; nil stands for the whole file
 }
 
-// Changed asks git what differs between the working tree of the folder dir and a
-// revision. The whole tree is compared, since only so a file that moved is known
+// Changed asks git what differs between the working tree of the folder dir and the
+// commit at which what is checked out there parted from a revision. The whole tree is compared, since only so a file that moved is known
 // again. A file that git does not know, or takes for binary, has changed entirely;
 // one that it ignores has not changed.
 func Changed(dir, base string) (*Changes, error) {
@@ -25,6 +25,9 @@ func Changed(dir, base string) (*Changes, error) {
 		return nil, err
 	}
 	if err := r.checkRevision(base); err != nil {
+		return nil, err
+	}
+	if base, err = r.forkPoint(base); err != nil {
 		return nil, err
 	}
 	hunks, err := r.hunks(base)

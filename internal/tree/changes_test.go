@@ -220,6 +220,36 @@ func TestChanged(t *testing.T) {
 	}
 }
 
+// TestChangedSinceFork has a revision go on after the checked-out branch parted from it:
+// what others wrote there is no change of this branch's.
+func TestChangedSinceFork(t *testing.T) {
+	needGit(t)
+	root := writeFiles(t, map[string]string{"theirs.txt": "a\nb\n", "ours.txt": "a\nb\n"})
+	commit(t, root)
+	runGit(t, root, "", "checkout", "-q", "-b", "theirs")
+	writeFile(t, root, "theirs.txt", "A\nb\n")
+	runGit(t, root, "", "commit", "-q", "-a", "-m", "theirs")
+	runGit(t, root, "", "checkout", "-q", "-b", "ours", "first")
+	writeFile(t, root, "ours.txt", "a\nB\n")
+	runGit(t, root, "", "commit", "-q", "-a", "-m", "ours")
+	check := func(base string, theirs, ours []int) {
+		t.Helper()
+		c, err := Changed(root, base)
+		if err != nil {
+			t.Fatal(err)
+		}
+		for name, want := range map[string][]int{"theirs.txt": theirs, "ours.txt": ours} {
+			if got := touched(t, c, filepath.Join(root, name)); !slices.Equal(got, want) {
+				t.Errorf("since %s, %s: changed are lines %v, want %v", base, name, got, want)
+			}
+		}
+	}
+	check("theirs", nil, []int{2})
+	runGit(t, root, "", "checkout", "-q", "--orphan", "alone")
+	runGit(t, root, "", "commit", "-q", "-m", "no history in common")
+	check("theirs", []int{1}, []int{2})
+}
+
 // TestChangedLines holds the changed lines against lines that are new by their text.
 func TestChangedLines(t *testing.T) {
 	needGit(t)

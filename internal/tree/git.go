@@ -111,6 +111,22 @@ func (r *repository) checkRevision(base string) error {
 	return err
 }
 
+// forkPoint is the commit, one line of history before both, at which the checked-out
+// commit parted from a revision; the revision itself where there is none, as in a
+// shallow clone. What others changed in the revision since is no change of ours.
+func (r *repository) forkPoint(base string) (string, error) {
+	var fork string
+	err := git(r.top, func(out io.Reader) error {
+		data, err := io.ReadAll(io.LimitReader(out, maxListed))
+		fork = strings.TrimSpace(string(data))
+		return err
+	}, "merge-base", "--", base, "HEAD")
+	if exit := (*exec.ExitError)(nil); errors.As(err, &exit) {
+		return base, nil
+	}
+	return fork, err
+}
+
 // hunks returns the lines changed since a revision, by path from the top.
 func (r *repository) hunks(base string) (changed map[string][]lineRange, err error) {
 	err = git(r.top, func(out io.Reader) (err error) {
