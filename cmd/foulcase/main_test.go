@@ -180,7 +180,7 @@ func TestHelp(t *testing.T) {
 		if again := mustRun(t, append([]string{"help"}, words...)...); again != help {
 			t.Errorf("`help %s` and `%s --help` differ", v.name, v.name)
 		}
-		if overview := mustRun(t, "--help"); !strings.Contains(overview, fmt.Sprintf("  %-13s %s\n", v.name, v.summary)) {
+		if overview := mustRun(t, "--help"); !strings.Contains(overview, fmt.Sprintf("  %-15s %s\n", v.name, v.summary)) {
 			t.Errorf("the overview lacks %s", v.name)
 		}
 	}

@@ -28,7 +28,7 @@ func builtBinary(t *testing.T) string {
 		if binary.dir, binary.err = os.MkdirTemp("", "foulcase-*"); binary.err != nil {
 			return
 		}
-		build := exec.Command("go", "build", "-o", filepath.Join(binary.dir, exe("foulcase")), ".")
+		build := exec.Command("go", "build", "-buildvcs=auto", "-o", filepath.Join(binary.dir, exe("foulcase")), ".")
 		binary.out, binary.err = build.CombinedOutput()
 	})
 	if binary.err != nil {
