@@ -82,8 +82,8 @@ func (d *Draft) SetOptions(o Options) {
 // Marks returns the marks of the document as it stands, in order. If ctx ends
 // before everything new is judged, the error is that of ctx, and what was judged
 // is kept for the next call. A document that cannot be read to its end has the
-// marks of what was read, and an error. Progress, when not nil, is told now and
-// then how many sentences of how many are judged.
+// marks of what was read, and an error. Progress, when not nil, is told after
+// each sentence how many of how many are judged.
 func (d *Draft) Marks(ctx context.Context, progress func(done, total int)) ([]Mark, error) {
 	d.read()
 	if err := d.judgeAll(ctx, unjudged, progress); err != nil {

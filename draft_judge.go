@@ -234,20 +234,21 @@ func (d *Draft) judgeAll(ctx context.Context, worst draftState, progress func(do
 		if b.state > worst {
 			continue
 		}
-		n, err := d.judgeBlock(ctx, b, worst)
+		err := d.judgeBlock(ctx, b, worst, func() {
+			if done++; progress != nil {
+				progress(done, total)
+			}
+		})
 		if err != nil {
 			return err
-		}
-		if done += n; n > 0 && progress != nil {
-			progress(done, total)
 		}
 	}
 	return nil
 }
 
-// judgeBlock judges the sentences of a block whose state is at most worst, and
-// returns how many.
-func (d *Draft) judgeBlock(ctx context.Context, b *draftBlock, worst draftState) (n int, err error) {
+// judgeBlock judges the sentences of a block whose state is at most worst, and calls
+// next after each.
+func (d *Draft) judgeBlock(ctx context.Context, b *draftBlock, worst draftState, next func()) error {
 	defer b.sum()
 	places := b.Places()
 	d.names = d.named
@@ -259,11 +260,11 @@ func (d *Draft) judgeBlock(ctx context.Context, b *draftBlock, worst draftState)
 			continue
 		}
 		if err := ctx.Err(); err != nil {
-			return n, err
+			return err
 		}
 		found, err := d.findings(sentence, b.Text)
 		if err != nil {
-			return n, err
+			return err
 		}
 		s.odds, s.kept = d.keep(b.Block, &places, found, nil, nil)
 		for k := range s.kept {
@@ -271,9 +272,9 @@ func (d *Draft) judgeBlock(ctx context.Context, b *draftBlock, worst draftState)
 			s.kept[k].end -= s.start
 		}
 		s.state = judged
-		n++
+		next()
 	}
-	return n, nil
+	return nil
 }
 
 // decided returns what passes the limits, in order.

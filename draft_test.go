@@ -200,6 +200,21 @@ func TestDraftCutShort(t *testing.T) {
 	sameMarks(t, "after the cut", marks, proof(t, manifest, foulcase.Options{}))
 }
 
+// TestDraftTellsOfEachSentence: also within a block, for a judgement to be shown, paused
+// and cut short there.
+func TestDraftTellsOfEachSentence(t *testing.T) {
+	d := draft(t, strings.Repeat("The pilot boarded the ship at noon. ", 50), foulcase.Options{Format: "markdown"})
+	var told []int
+	now(t, d, func(done, total int) {
+		if told = append(told, done); total != 50 {
+			t.Errorf("%d of %d", done, total)
+		}
+	})
+	if len(told) != 50 || !slices.IsSorted(told) || told[49] != 50 {
+		t.Errorf("told of %v", told)
+	}
+}
+
 // TestDraftTakesOptions: a word that becomes a house word loses its mark at once.
 func TestDraftTakesOptions(t *testing.T) {
 	d := draft(t, "The skarrowing of the berth was done by noon. The ship recieved a pilot.", foulcase.Options{})

@@ -22,7 +22,7 @@ type Config struct {
 	// Alive tells whether a process is alive; nil where nobody can know. A server whose
 	// client has died ends.
 	Alive func(pid int) bool
-	// Pause is called between the paragraphs of a judgement, by the goroutine that judges;
+	// Pause is called between the sentences of a judgement, by the goroutine that judges;
 	// nil where nothing need happen there. A program whose single thread also brings the
 	// messages of the client lets them in.
 	Pause func()
