@@ -40,16 +40,17 @@ func (d *asciiDoc) construct(p *prose, start, i, to int) int {
 		after = rest[1]
 	}
 	far := rest[:min(len(rest), farInline)]
+	behind := wordBefore(d.source[:i])
 	switch c := rest[0]; {
 	case c == '\\' && bytes.IndexByte([]byte("`*_#^~+{<[:&|\"'("), after) >= 0:
 		p.standIn(string(rune(after)), i, i+2)
 		return i + 2
-	case (c == '"' || c == '\'') && after == '`', c == '`' && (after == '"' || after == '\'') && (wordByte(before) || bytes.IndexByte([]byte(".,!?"), before) >= 0):
+	case (c == '"' || c == '\'') && after == '`', c == '`' && (after == '"' || after == '\'') && (behind || bytes.IndexByte([]byte(".,!?"), before) >= 0):
 		return d.curved(p, i)
 	case c == '`' || c == '+' || c == '$' && after == '$':
 		return d.verbatim(p, i, to)
 	case c == '*' || c == '_':
-		if after == c || before == c || !(wordByte(before) && wordByte(after)) && !(isSpaceByte(before) && isSpaceByte(after)) {
+		if after == c || before == c || !(behind && wordAt(rest[1:])) && !(isSpaceByte(before) && isSpaceByte(after)) {
 			return i + 1
 		}
 	case c == '#' || c == '^' || c == '~':
@@ -97,9 +98,8 @@ func (d *asciiDoc) verbatim(p *prose, i, to int) int {
 	for i+n < to && d.source[i+n] == c && n < 3 {
 		n++
 	}
-	wordBefore := i > 0 && wordByte(d.source[i-1])
 	open := i+n < to && !isSpaceByte(d.source[i+n])
-	if mark := d.source[i : i+n]; open && (n > 1 || !wordBefore) {
+	if mark := d.source[i : i+n]; open && (n > 1 || !wordBefore(d.source[:i])) {
 		if k := bytes.Index(d.source[i+n:to], mark); k > 0 && !isSpaceByte(d.source[i+n+k-1]) {
 			end := i + n + k + n
 			p.standIn(placeholder, i, end)

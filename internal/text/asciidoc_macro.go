@@ -12,13 +12,18 @@ type inlineMacro struct {
 }
 
 // macroName returns the letters at the end of b, "" when a letter of another kind
-// stands before them.
+// stands before them. A footnote may stand at the end of a word.
 func macroName(b []byte) string {
+	for _, name := range []string{"footnote", "footnoteref"} {
+		if bytes.HasSuffix(b, []byte(name)) {
+			return name
+		}
+	}
 	i := len(b)
 	for i > 0 && len(b)-i < 16 && classes[b[i-1]]&cLower != 0 {
 		i--
 	}
-	if i > 0 && wordByte(b[i-1]) {
+	if wordBefore(b[:i]) {
 		return ""
 	}
 	return string(b[i:])

@@ -32,6 +32,8 @@ func TestAsciiDocBlocks(t *testing.T) {
 		{"table of values", ",===\na,b c\n,===\n\nfog", []string{"fog"}},
 		{"CRLF", "= Fog\r\n\r\nIce at\r\nthe *bar*.\r\n", []string{"Fog", "Ice at\nthe bar."}},
 		{"byte order mark", "\uFEFF= Fog", []string{"Fog"}},
+		{"signs around markup", "(e.g.\u00A0`x y`) “+z w+” ice–*bar*–sea", []string{"(e.g.\u00A0\uFFFC) “\uFFFC” ice–bar–sea"}},
+		{"a footnote at a word", "Ice 4footnote:[The _note_.] and fogfootnote:[Thick.]", []string{"Ice 4 and fog", "The note.", "Thick."}},
 		{"not closed", "`fog +ice *sea {bar <<x [[y link:a[z", []string{"`fog +ice sea {bar <<x [[y link:a[z"}},
 		{"block not closed", "fog\n\n----\nice", []string{"fog"}},
 	})

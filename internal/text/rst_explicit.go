@@ -76,26 +76,25 @@ func directiveUses(name string) directiveUse {
 // directive reads what is prose of the directive whose argument is the rest of
 // line i and whose body ends before line end.
 func (d *rst) directive(name string, i, end int) {
+	options, next := d.optionLines(i, end)
 	if name == "image" || name == "figure" {
-		d.alternative(i+1, end)
+		d.alternative(options, next)
 	}
+	d.leaveOut(options, next)
 	use := directiveUses(name)
-	next := i + 1
 	switch {
 	case use.runOn:
 		if strings.HasPrefix(name, "version") || name == "deprecated" {
 			d.advance(i, max(bytes.IndexByte(d.line(i), ' '), 0))
 		}
-		d.withoutOptions(next, end)
 		d.bodyBehind(i, end)
 		return
 	case use.argument && !d.lines[i].blank():
-		d.heading(i)
+		d.emit(true, [2]int{d.lines[i].start, d.lines[options-1].end})
 	}
 	if !use.body {
 		return
 	}
-	next = d.withoutOptions(next, end)
 	for next < end && d.lines[next].blank() {
 		next++
 	}
@@ -104,18 +103,28 @@ func (d *rst) directive(name string, i, end int) {
 	}
 }
 
-// withoutOptions makes the lines of options at the start of a directive blank, and
-// returns the line behind them.
-func (d *rst) withoutOptions(i, end int) int {
-	for ; i < end && fieldMark(d.line(i)) > 0; i++ {
+// optionLines returns where the options of the directive at line i begin and end:
+// behind its argument, which may take more lines than that one.
+func (d *rst) optionLines(i, bound int) (from, to int) {
+	to = d.stretch(i+1, bound)
+	for from = i + 1; from < to; from++ {
+		if fieldMark(d.line(from)) > 0 {
+			return from, to
+		}
+	}
+	return i + 1, i + 1
+}
+
+// leaveOut makes lines blank.
+func (d *rst) leaveOut(i, end int) {
+	for ; i < end; i++ {
 		d.lines[i].start = d.lines[i].end
 	}
-	return i
 }
 
 // alternative reads the text in place of an image.
 func (d *rst) alternative(i, end int) {
-	for ; i < end && fieldMark(d.line(i)) > 0; i++ {
+	for ; i < end; i++ {
 		if bytes.HasPrefix(d.line(i), []byte(":alt: ")) {
 			d.emit(false, [2]int{d.lines[i].start + len(":alt: "), d.lines[i].end})
 		}

@@ -3,6 +3,7 @@ package text
 import (
 	"bytes"
 	"strings"
+	"unicode/utf8"
 )
 
 // farInline is the length in bytes from which a short inline construct is taken
@@ -35,10 +36,11 @@ func (d *rst) construct(p *prose, i, to int) int {
 	if len(rest) > 1 {
 		after = rest[1]
 	}
+	behind, ahead := wordBefore(d.source[:i]), wordAt(rest[1:])
 	switch c := rest[0]; {
 	case c == '\\':
 		return d.escaped(p, i, to)
-	case c == '`' && wordByte(before): // markup begins behind white space or a sign
+	case c == '`' && behind: // markup begins behind white space or a sign
 		n := len(rest) - len(bytes.TrimLeft(rest, "`"))
 		p.verbatim(i, i+n)
 		return i + n
@@ -48,11 +50,11 @@ func (d *rst) construct(p *prose, i, to int) int {
 		if n := roleMark(rest); n > 0 {
 			return d.quoted(p, i, to, string(rest[1:n-1]))
 		}
-	case c == '*' && !(wordByte(before) && wordByte(after)) && !(isSpaceByte(before) && isSpaceByte(after)):
+	case c == '*' && !(behind && ahead) && !(isSpaceByte(before) && isSpaceByte(after)):
 		return i + 1
-	case c == '_' && !wordByte(after) && (wordByte(before) || before == '_'), c == '_' && after == '`':
+	case c == '_' && !ahead && (behind || before == '_'), c == '_' && after == '`':
 		return i + 1
-	case c == '|' && !isSpaceByte(after) && !wordByte(before):
+	case c == '|' && !isSpaceByte(after) && !behind:
 		if n := bytes.IndexByte(rest[1:min(len(rest), farInline)], '|'); n > 0 && !isSpaceByte(rest[n]) {
 			p.standIn(placeholder, i, i+n+2)
 			return i + n + 2
@@ -66,7 +68,25 @@ func (d *rst) construct(p *prose, i, to int) int {
 	return i + 1
 }
 
-func wordByte(c byte) bool { return classes[c]&(cAlnum|cHigh) != 0 }
+// wordBefore reports that a letter, digit or part of one ends b.
+func wordBefore(b []byte) bool {
+	r, n := utf8.DecodeLastRune(b)
+	return n > 0 && wordRune(r, n)
+}
+
+// wordAt reports that b begins with a letter, digit or part of one.
+func wordAt(b []byte) bool {
+	r, n := utf8.DecodeRune(b)
+	return n > 0 && wordRune(r, n)
+}
+
+func wordRune(r rune, n int) bool {
+	if r < utf8.RuneSelf {
+		return classes[r]&cAlnum != 0
+	}
+	c := classOf(r, n)
+	return c != rSpace && c != rSymbol
+}
 
 // escaped takes a backslash and the character that it makes plain.
 func (d *rst) escaped(p *prose, i, to int) int {
@@ -126,7 +146,7 @@ func (d *rst) quoted(p *prose, i, to int, role string) int {
 		behind++
 	}
 	text := d.source[from:end]
-	target := bytes.LastIndex(text, []byte(" <"))
+	target := targetIn(text)
 	switch {
 	case (reference || referringRole(role)) && target > 0:
 		end = from + target
@@ -136,6 +156,16 @@ func (d *rst) quoted(p *prose, i, to int, role string) int {
 	}
 	d.inline(p, from, end)
 	return behind
+}
+
+// targetIn returns where the white space before a target in angle brackets begins,
+// at the end of the text of a reference; 0 or less when there is none.
+func targetIn(text []byte) int {
+	n := bytes.LastIndexByte(text, '<')
+	if n < 1 || !isSpaceByte(text[n-1]) {
+		return 0
+	}
+	return len(bytes.TrimRight(text[:n], " \t\r\n"))
 }
 
 // proseRole reports roles whose text is prose.

@@ -39,6 +39,9 @@ func TestRSTBlocks(t *testing.T) {
 		{"indented table", "  ====  ====\n  fog   ice\n  ====  ====\n", []string{"fog", "ice"}},
 		{"CRLF", "Fog\r\n===\r\n\r\nIce at\r\n*the* bar.\r\n", []string{"Fog", "Ice at\nthe bar."}},
 		{"byte order mark", "\uFEFFFog\n===", []string{"Fog"}},
+		{"signs around markup", "(e.g.\u00A0``x y``) “``z w``” — foo_—and *bar*…", []string{"(e.g.\u00A0\uFFFC) “\uFFFC” — foo—and bar…"}},
+		{"a target on a line of its own", "See `the long quay\n<http://x.y>`_, and `a\n<http://z>`__.", []string{"See the long quay, and a."}},
+		{"options under a long argument", ".. rubric:: The long\n   title\n   :name: hidden\n\n.. admonition:: On the\n   tides\n   :class: hidden\n\n   Low.\n\n.. figure:: a\n   b.png\n   :alt: The pier\n\n   The caption.", []string{"The long\ntitle", "On the\ntides", "Low.", "The pier", "The caption."}},
 		{"not closed", "``fog *sea |bar [x :ref:`", []string{"``fog sea |bar [x :ref:`"}},
 	})
 }
