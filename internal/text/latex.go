@@ -31,6 +31,7 @@ const mostGroups = 256
 type group struct {
 	closer  byte
 	apart   bool  // its text is no part of the sentence around it
+	other   bool  // what follows is the same in other words, left out
 	around  prose // what it interrupts, when apart
 	heading bool  // of what it interrupts, when apart
 }
@@ -41,12 +42,13 @@ type latex struct {
 	blocks   []*Block
 	prose    prose
 	groups   []group
-	apart    int  // open groups that are apart
-	deep     int  // open groups beyond the bound
-	heading  bool // the running block is one
-	broken   int  // where a line break that waits for text begins; 0: none
-	tables   int  // open tables
-	preamble bool // the document has not begun
+	apart    int             // open groups that are apart
+	deep     int             // open groups beyond the bound
+	heading  bool            // the running block is one
+	broken   int             // where a line break that waits for text begins; 0: none
+	tables   int             // open tables
+	preamble bool            // the document has not begun
+	code     map[string]bool // the environments of code that the document defines
 	found    map[string]stretchFound
 }
 
@@ -222,6 +224,9 @@ func (l *latex) close(closer byte) {
 	}
 	g := l.groups[n-1]
 	l.groups = l.groups[:n-1]
+	if g.other {
+		l.pos = l.argument(l.pos)
+	}
 	if g.apart {
 		l.flush()
 		l.prose, l.heading = g.around, g.heading

@@ -61,6 +61,16 @@ func (l *latex) definition(end int) {
 	}
 }
 
+// defineCode notes the name of an environment of code that the document defines.
+func (l *latex) defineCode(end int) {
+	if name, _ := l.environmentName(end); name != "" {
+		if l.code == nil {
+			l.code = map[string]bool{}
+		}
+		l.code[name] = true
+	}
+}
+
 // inlineCode takes code between two equal characters, or in braces.
 func (l *latex) inlineCode(name string, end int) {
 	if end < len(l.source) && l.source[end] == '*' {
@@ -94,11 +104,12 @@ func (l *latex) inlineCode(name string, end int) {
 // environment takes the beginning of one.
 func (l *latex) environment(end int) {
 	name, end := l.environmentName(end)
-	switch latexEnvironment(name) {
-	case mathEnvironment:
+	kind := latexEnvironment(name)
+	switch {
+	case kind == mathEnvironment:
 		l.take(placeholder, l.behind(`\end{`+name+`}`, end))
 		return
-	case codeEnvironment:
+	case kind == codeEnvironment || l.code[name]:
 		l.flush()
 		l.pos = l.behind(`\end{`+name+`}`, end)
 	default:
@@ -143,6 +154,9 @@ func (l *latex) named(name string, end int) {
 	if end < len(l.source) && l.source[end] == '*' {
 		end++
 	}
+	if name == "DefineVerbatimEnvironment" || name == "lstnewenvironment" {
+		l.defineCode(end)
+	}
 	switch use := latexCommand(name); use.text {
 	case silentText:
 		l.skip(end, use.arguments)
@@ -156,6 +170,10 @@ func (l *latex) named(name string, end int) {
 		l.take(placeholder, end)
 	case runningText:
 		l.skip(end, use.arguments)
+		if use.first && l.pos < len(l.source) && l.source[l.pos] == '{' {
+			l.pos++
+			l.open(group{closer: '}', other: true})
+		}
 	case apartText, headingText:
 		l.apartArgument(end, use)
 	default:

@@ -19,6 +19,7 @@ type latexUse struct {
 	text      latexText
 	arguments int  // that are left out, in braces; of texts, before the one that is read
 	optional  bool // the argument in brackets is the text
+	first     bool // not the last argument is the text but the one before it
 	block     bool // it ends the paragraph before it
 }
 
@@ -40,9 +41,11 @@ func latexCommand(name string) latexUse {
 		"uline", "sout", "mbox", "makebox", "fbox", "framebox", "hbox", "enquote", "textquote", "uppercase", "lowercase",
 		"MakeUppercase", "MakeLowercase", "textsuperscript", "textsubscript", "alert", "structure", "hl", "ul", "st", "so", "caps":
 		return latexUse{text: runningText}
-	case "href", "textcolor", "colorbox", "parbox", "raisebox", "hyperref", "hyperlink", "hypertarget", "texorpdfstring",
+	case "href", "textcolor", "colorbox", "parbox", "raisebox", "hyperref", "hyperlink", "hypertarget",
 		"minipage", "multirow", "scalebox", "resizebox", "foreignquote", "onslide":
 		return latexUse{text: runningText, arguments: 1}
+	case "texorpdfstring":
+		return latexUse{text: runningText, first: true}
 	case "multicolumn", "fcolorbox":
 		return latexUse{text: runningText, arguments: 2}
 	case "ref", "eqref", "pageref", "autoref", "nameref", "cref", "Cref", "vref", "labelcref", "url", "path", "nolinkurl", "texttt",
@@ -99,7 +102,7 @@ func latexSilent(name string) (arguments int, ok bool) {
 		"DeclareMathOperator", "rule", "definecolor", "newglossaryentry", "let", "fontsize",
 		"DeclareRobustCommand", "setmainfont", "NewDocumentCommand", "inputminted", "settowidth", "colorlet", "addcontentsline":
 		return latexLong(name), true
-	case "newenvironment", "renewenvironment", "newacronym":
+	case "newenvironment", "renewenvironment", "newacronym", "DefineVerbatimEnvironment", "lstnewenvironment":
 		return 3, true
 	}
 	return 0, false

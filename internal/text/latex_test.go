@@ -29,6 +29,8 @@ func TestLaTeXBlocks(t *testing.T) {
 		{"line breaks", "Harbour Office\\\\Skarrow\\\\*[2mm]\nSound and\\newline the way", []string{"Harbour Office", "Skarrow", "Sound and\nthe way"}},
 		{"settings", "\\setlength{\\parskip}{1em}\\newcommand{\\ssp}[1]{Sound Pilots #1}\\vspace*{2mm}Fog\\def\\x#1#2{two words #1} ice", []string{"Fog ice"}},
 		{"own commands", `The \ssp{} at \berth{b-3} and \note{the fog comes}`, []string{"The \uFFFC at \uFFFC and the fog comes"}},
+		{"own environments of code", "\\DefineVerbatimEnvironment{Skarrow}{Verbatim}{commandchars=\\\\\\{\\}}Fog\n\\begin{Skarrow}[]\nno \\x{words at all}\n\\end{Skarrow}\nIce", []string{"Fog", "Ice"}},
+		{"a text and its bookmark", "\\section{On \\texorpdfstring{$x$ \\emph{and} ice}{x and ice} now}\\texorpdfstring a{b}", []string{"On \uFFFC and ice now", "ab"}},
 		{"hyphenation", `har\-bour`, []string{"harbour"}},
 		{"language", `He is \foreignlanguage{german}{ein Lotse} here`, []string{"He is \uFFFC here"}},
 		{"CRLF", "Ice at\r\nthe bar.\r\n\r\nFog % x\r\nnow", []string{"Ice at\nthe bar.", "Fog now"}},
