@@ -37,6 +37,7 @@ func TestHousePreferences(t *testing.T) {
 		{"The Sound is wide.", `nonword "Sound" -> "Skarrow Sound"`},
 		{"The Skarrow Sound is wide.", ""},
 		{"Her eta is noon, her ETA was ten.", `nonword "eta" -> "ETA"`},
+		{"The HESPER is late, not the ETA.", ""},
 		{"They boarded hesper.", `nonword "hesper" -> "Hesper"`},
 		{"They boarded the pilot boat.", ""},
 		{"She lies at the key.", `"key" -> "quay"`},

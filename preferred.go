@@ -111,10 +111,11 @@ func (p *preference) heeded(tokens []text.Token, i int, block []byte) bool {
 }
 
 // write spells what is to be written for the tokens: as the list has it, if it has
-// capitals there, else with those of the first token; in a text all in capitals so, too.
+// capitals there, else with those of the first token; where all are capitals, in capitals.
 func (p *preference) write(tokens []text.Token, block []byte, shouting bool) string {
+	observed := block[tokens[0].Start:tokens[len(p.bad)-1].End]
 	switch {
-	case shouting:
+	case shouting, !p.exact && text.CaseOf(observed) == text.Upper:
 		return strings.ToUpper(p.written)
 	case strings.ToLower(p.written) != p.written:
 		return p.written
