@@ -32,7 +32,12 @@ func (p *diffPage) Mark(m foulcase.Mark) error {
 	return nil
 }
 
-func (p *diffPage) Close() error {
+// Close writes nothing of a document that could not be read to its end, as --apply
+// writes nothing of it.
+func (p *diffPage) Close(complete bool) error {
+	if !complete {
+		return nil
+	}
 	d := p.document
 	r, err := foulcase.Revise(d.Source, d.Options, p.marks)
 	if err != nil || len(r.Edits) == 0 {

@@ -52,7 +52,7 @@ func written(t testing.TB, name string, documents ...Document) string {
 				t.Fatal(err)
 			}
 		}
-		if err := page.Close(); err != nil {
+		if err := page.Close(true); err != nil {
 			t.Fatal(err)
 		}
 		if err := w.Add(text.Bytes()); err != nil {

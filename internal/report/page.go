@@ -83,7 +83,7 @@ func (a *article) Mark(m foulcase.Mark) error {
 }
 
 // Close writes the article. A document without marks has none.
-func (a *article) Close() error {
+func (a *article) Close(bool) error {
 	if len(a.marks) == 0 {
 		return nil
 	}

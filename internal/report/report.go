@@ -31,9 +31,9 @@ type Form interface {
 // Page takes the marks of one document in their order.
 type Page interface {
 	Mark(m foulcase.Mark) error
-	// Close writes what is left. A document that the form cannot show is an
-	// error; the others are not touched by it.
-	Close() error
+	// Close writes what is left; complete tells that all marks were found. A document
+	// that the form cannot show is an error; the others are not touched by it.
+	Close(complete bool) error
 }
 
 // Document is what a page is of.
@@ -95,4 +95,4 @@ func (bare) Whole() bool          { return false }
 type pageFunc func(m foulcase.Mark) error
 
 func (f pageFunc) Mark(m foulcase.Mark) error { return f(m) }
-func (f pageFunc) Close() error               { return nil }
+func (f pageFunc) Close(bool) error           { return nil }
