@@ -183,6 +183,9 @@ func (r *Resolver) environment() ([]Value, error) {
 
 // open reads the lists of house words and the decisions that the settings name.
 func (r *Resolver) open(s *Settings) error {
+	if err := s.checkFiles(); err != nil {
+		return err
+	}
 	lists := s.of("house")
 	own := ""
 	if r.user != "" {

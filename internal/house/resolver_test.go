@@ -222,3 +222,15 @@ func TestProjectsWriteInsideAlone(t *testing.T) {
 		t.Errorf("written outside: %q", got)
 	}
 }
+
+func TestProjectsNamePlainFiles(t *testing.T) {
+	own(t)
+	for _, setting := range []string{"house = ['d']", "stets = 'd'", "known = 'd'", "model = 'd'"} {
+		dir := t.TempDir()
+		write(t, dir, "d/words.txt", "") // a folder stands for pipes and devices
+		file := write(t, dir, FileName, setting)
+		if _, err := Load(file); err == nil || !strings.Contains(err.Error(), "named by "+file+":1, but no plain file") {
+			t.Errorf("%s: error %v", setting, err)
+		}
+	}
+}

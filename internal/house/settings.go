@@ -12,6 +12,7 @@ import (
 	"cmp"
 	"errors"
 	"fmt"
+	"os"
 	"path/filepath"
 	"slices"
 	"strconv"
@@ -78,6 +79,16 @@ func (s *Settings) Get(key string) string {
 	return ""
 }
 
+// Origin says who sets a key of one value, "" when nobody does.
+func (s *Settings) Origin(key string) string {
+	for _, v := range s.values {
+		if v.Key == key {
+			return v.Origin
+		}
+	}
+	return ""
+}
+
 // Options is how the document at path is to be judged.
 func (s *Settings) Options(path string) foulcase.Options {
 	o := foulcase.Options{
@@ -103,8 +114,12 @@ func (s *Settings) Format(path string) (name string, ok bool) {
 	return foulcase.FormatOf(path)
 }
 
-// Ignores tells whether a file is to be passed over when a folder that holds it is read.
+// Ignores tells whether a file is to be passed over when a folder that holds it is read:
+// the globs say so, or it is itself a file of settings, or one that they name.
 func (s *Settings) Ignores(path string) bool {
+	if slices.Contains(s.Files(), absolute(path)) || s.Get("known") == absolute(path) {
+		return true
+	}
 	return slices.ContainsFunc(s.values, func(v Value) bool {
 		return v.Key == "ignore" && matches(v.Text, v.dir, absolute(path))
 	})
@@ -148,6 +163,20 @@ func (s *Settings) writable(key, path string) error {
 	for _, v := range s.values {
 		if v.Key == key && v.Text == path && v.dir != "" && !within(cmp.Or(projectOf(v.dir), v.dir), path) {
 			return fmt.Errorf("%s: named by %s, but outside of its project; write there by hand, or name a file inside", path, v.Origin)
+		}
+	}
+	return nil
+}
+
+// checkFiles refuses what is no plain file, such as a pipe that nobody writes to, where a
+// project's settings name it.
+func (s *Settings) checkFiles() error {
+	for _, v := range s.values {
+		if key, _ := keyOf(v.Key); !key.paths || v.dir == "" {
+			continue
+		}
+		if info, err := os.Stat(v.Text); err == nil && !info.Mode().IsRegular() {
+			return fmt.Errorf("%s: named by %s, but no plain file; name another", v.Text, v.Origin)
 		}
 	}
 	return nil

@@ -27,11 +27,15 @@ type Options struct {
 	// Format returns the format of the file at a path, if it has one; nil stands for
 	// foulcase.FormatOf.
 	Format func(path string) (name string, ok bool)
+	// Ignored tells which files are passed over beside those that git ignores; nil
+	// stands for none.
+	Ignored func(path string) bool
 }
 
 // Skipped counts what was passed over below folders, by reason.
 type Skipped struct {
 	Ignored int // by the rules of git; a folder counts as one
+	Unasked int // by Options.Ignored
 	Hidden  int // a name that begins with a point; a folder counts as one
 	Foreign int // files of no known format
 	Binary  int
@@ -48,6 +52,7 @@ func (s Skipped) String() string {
 		what string
 	}{
 		{s.Ignored, "ignored by git"},
+		{s.Unasked, "ignored by settings"},
 		{s.Hidden, "hidden"},
 		{s.Foreign, "of no known format"},
 		{s.Binary, "binary"},
@@ -151,6 +156,7 @@ func (f *Finder) addFolder(path string) {
 func (s Skipped) since(before Skipped) string {
 	only := Skipped{
 		Ignored: s.Ignored - before.Ignored,
+		Unasked: s.Unasked - before.Unasked,
 		Hidden:  s.Hidden - before.Hidden,
 		Foreign: s.Foreign - before.Foreign,
 		Binary:  s.Binary - before.Binary,

@@ -88,6 +88,13 @@ func TestFinder(t *testing.T) {
 			[]string{"notes/2026/feb/log.lst", "notes/2026/jan/log.lst"},
 			Skipped{Hidden: 1},
 		},
+		{
+			"ignored by others than git",
+			Options{Ignored: func(path string) bool { return filepath.Base(path) != "g.md" }},
+			[]string{"log"},
+			[]string{"log/g.md"},
+			Skipped{Ignored: 1, Hidden: 1, Unasked: 1},
+		},
 	} {
 		t.Run(test.name, func(t *testing.T) {
 			got, skipped := find(t, root, test.o, test.operands...)

@@ -3,6 +3,7 @@ package tree
 import (
 	"bufio"
 	"cmp"
+	"errors"
 	"fmt"
 	"io"
 	"slices"
@@ -51,7 +52,9 @@ func ReadKnown(r io.Reader, name string) ([]KnownMark, error) {
 		}
 		marks = append(marks, KnownMark{fields[0], unescapeField(fields[1]), unescapeField(fields[2])})
 	}
-	if err := lines.Err(); err != nil {
+	if err := lines.Err(); errors.Is(err, bufio.ErrTooLong) {
+		return nil, fmt.Errorf("%s:%d: a line of more than %d bytes; is it the right file?", name, n, maxKnownLine)
+	} else if err != nil {
 		return nil, fmt.Errorf("%s:%d: %w; write the file anew with --write-known", name, n, err)
 	}
 	return marks, nil

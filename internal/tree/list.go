@@ -3,6 +3,7 @@ package tree
 import (
 	"bufio"
 	"bytes"
+	"errors"
 	"fmt"
 	"io"
 )
@@ -45,7 +46,9 @@ func ReadList(r io.Reader, null bool, name string) ([]string, error) {
 			paths = append(paths, string(path))
 		}
 	}
-	if err := lines.Err(); err != nil {
+	if err := lines.Err(); errors.Is(err, bufio.ErrTooLong) {
+		return nil, fmt.Errorf("%s: path %d: more than %d bytes; is it a list of paths?", name, len(paths)+1, maxListed)
+	} else if err != nil {
 		return nil, fmt.Errorf("%s: path %d: %w; want a path a line", name, len(paths)+1, err)
 	}
 	return paths, nil

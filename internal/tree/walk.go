@@ -109,7 +109,12 @@ func (w *walk) file(at place, d fs.DirEntry) {
 	if w.wanted != nil && !w.wanted(at.path) {
 		return
 	}
-	format, known := w.finder.options.Format(at.path)
+	options := w.finder.options
+	format, known := options.Format(at.path)
+	if known && options.Ignored != nil && options.Ignored(at.path) {
+		w.finder.skipped.Unasked++
+		return
+	}
 	if !known && w.wanted == nil {
 		w.finder.skipped.Foreign++
 		return
@@ -118,7 +123,7 @@ func (w *walk) file(at place, d fs.DirEntry) {
 	if info, err := d.Info(); err == nil {
 		document.Size = info.Size()
 	}
-	if !w.finder.options.AnyBytes {
+	if !options.AnyBytes {
 		binary, err := looksBinary(at.path, format)
 		if binary {
 			w.finder.skipped.Binary++
