@@ -22,7 +22,8 @@ type console struct {
 	raw      io.Writer // standard output for who writes whole messages himself
 	err      io.Writer
 	progress *progress
-	troubled bool // something was reported by complain
+	troubled bool            // something was reported by complain
+	told     map[string]bool // what complain reported
 }
 
 func newConsole(stdin io.Reader, stdout, stderr io.Writer) *console {
@@ -33,13 +34,18 @@ func newConsole(stdin io.Reader, stdout, stderr io.Writer) *console {
 		out:      &output{buf: bufio.NewWriterSize(stdout, 64<<10), progress: p, terminal: isTerminal(stdout)},
 		err:      &message{w: stderr, progress: p},
 		progress: p,
+		told:     map[string]bool{},
 	}
 }
 
-// complain reports what went wrong while the work goes on.
+// complain reports what went wrong while the work goes on. What is wrong with many
+// documents at once, such as their settings, is told once.
 func (c *console) complain(err error) {
 	c.troubled = true
-	fmt.Fprintf(c.err, "foulcase: %s\n", describe(err))
+	if what := describe(err); !c.told[what] {
+		c.told[what] = true
+		fmt.Fprintf(c.err, "foulcase: %s\n", what)
+	}
 }
 
 // close reports err, writes what is buffered and returns the final status. A

@@ -4,8 +4,10 @@ import (
 	"errors"
 	"fmt"
 	"io/fs"
+	"maps"
 	"os"
 	"path/filepath"
+	"slices"
 	"sync"
 
 	"example.org/foulcase"
@@ -27,6 +29,52 @@ type knownMarks struct {
 	done    map[string]bool  // absolute paths of the documents read to the end
 }
 
+// knownFiles are the files of known marks: the one that flags name, or else that which
+// the settings of each document name. They are safe for concurrent use, finish aside.
+type knownFiles struct {
+	from, to string // of --known and --write-known; "" for none
+	named    func(path string) (file string, err error)
+
+	mu     sync.Mutex
+	opened map[string]openedKnown // by file; "" is that of the documents without one
+}
+
+type openedKnown struct {
+	marks *knownMarks
+	err   error
+}
+
+// of returns the known marks that count for a document. A file is opened once.
+func (f *knownFiles) of(path string) (*knownMarks, error) {
+	from := f.from
+	if from == "" && f.to == "" && f.named != nil {
+		var err error
+		if from, err = f.named(path); err != nil {
+			return nil, err
+		}
+	}
+	f.mu.Lock()
+	defer f.mu.Unlock()
+	found, ok := f.opened[from]
+	if !ok {
+		found.marks, found.err = openKnown(from, f.to)
+		f.opened[from] = found
+	}
+	return found.marks, found.err
+}
+
+// finish tells what was not shown, file by file, and writes the file asked for.
+func (f *knownFiles) finish(c *console) error {
+	for _, from := range slices.Sorted(maps.Keys(f.opened)) {
+		if found := f.opened[from]; found.err == nil {
+			if err := found.marks.finish(c); err != nil {
+				return err
+			}
+		}
+	}
+	return nil
+}
+
 // openKnown reads the file of known marks. Either name may be "".
 func openKnown(from, to string) (*knownMarks, error) {
 	k := &knownMarks{from: from, to: to, left: map[string]int{}, done: map[string]bool{}}
@@ -35,10 +83,10 @@ func openKnown(from, to string) (*knownMarks, error) {
 	}
 	file, err := os.Open(from)
 	if errors.Is(err, fs.ErrNotExist) {
-		return nil, fmt.Errorf("--known %s: no such file; make it with --write-known %s alone", from, from)
+		return nil, fmt.Errorf("%s: no such file of known marks; make it with --write-known %[1]s alone", from)
 	}
 	if err != nil {
-		return nil, fmt.Errorf("--known: %w", err)
+		return nil, fmt.Errorf("known marks: %w", err)
 	}
 	defer file.Close()
 	if k.lines, err = tree.ReadKnown(file, from); err != nil {

@@ -122,9 +122,6 @@ func (f *proofFlags) open(c *console, operands []string) (*proofreader, error) {
 	if err != nil {
 		return nil, err
 	}
-	if f.tree.known == "" && f.tree.writeKnown == "" {
-		f.tree.known = f.engine.here.Get("known")
-	}
 	p := &proofreader{engine: e, settings: found, flags: f, folders: foldersAmong(operands), progress: c.progress}
 	if err := p.prepare(c, operands); err != nil {
 		e.Close()
@@ -140,6 +137,8 @@ func (p *proofreader) prepare(c *console, operands []string) (err error) {
 		stdinName: f.name,
 		anyBytes:  f.engine.here.Get("encoding") != "",
 		format:    documentFormat(p.settings),
+		ignored:   ignoredDocuments(p.settings),
+		known:     knownFile(p.settings),
 	})
 	if err != nil {
 		return err
@@ -162,6 +161,8 @@ func (f *proofFlags) check() error {
 		return misusef("--dry-run says how --apply is done; give that too")
 	case f.apply && f.emit.value != "lines" && !(f.dryRun && f.emit.value == "diff"):
 		return misusef("--apply tells what it does in lines; leave --emit %s to another run", f.emit.value)
+	case f.apply && f.tree.writeKnown != "":
+		return misusef("--apply puts marks right, --write-known writes them down; one in each run")
 	case f.dryRun:
 		f.emit.value = "diff"
 	}

@@ -32,6 +32,10 @@ func (p *proofreader) optionsOf(path string) (foulcase.Options, error) {
 	if err != nil {
 		return foulcase.Options{}, err
 	}
+	if model := s.Get("model"); model != "" && model != p.flags.engine.model {
+		return foulcase.Options{}, fmt.Errorf("%s: %s is its model, by %s, and not the one of this run; run foulcase in its folder, or give --model",
+			path, model, s.Origin("model"))
+	}
 	o := s.Options(path)
 	if format := p.flags.format.value; format != "auto" {
 		o.Format = format
@@ -126,7 +130,7 @@ func (p *proofreader) page(ctx context.Context, number int, in input, w io.Write
 			return marks, err
 		}
 	}
-	if closeErr := page.Close(); err == nil {
+	if closeErr := page.Close(err == nil); err == nil {
 		err = closeErr
 	}
 	return marks, err

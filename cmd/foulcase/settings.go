@@ -54,8 +54,7 @@ type settingObject struct {
 	house.Value
 }
 
-// documentFormat tells the format of a file below a folder by its settings; what they have
-// passed over has none. A file whose settings cannot be read keeps its place, so that
+// documentFormat tells the format of a file below a folder by its settings. A file whose settings cannot be read keeps its place, so that
 // reading it reports why.
 func documentFormat(found *house.Resolver) func(path string) (name string, ok bool) {
 	return func(path string) (string, bool) {
@@ -63,7 +62,25 @@ func documentFormat(found *house.Resolver) func(path string) (name string, ok bo
 		if err != nil {
 			return foulcase.FormatOf(path)
 		}
-		name, ok := s.Format(path)
-		return name, ok && !s.Ignores(path)
+		return s.Format(path)
+	}
+}
+
+// ignoredDocuments tells which files below folders their settings have passed over.
+func ignoredDocuments(found *house.Resolver) func(path string) bool {
+	return func(path string) bool {
+		s, err := found.For(path)
+		return err == nil && s.Ignores(path)
+	}
+}
+
+// knownFile tells which file of known marks the settings of a document name.
+func knownFile(found *house.Resolver) func(path string) (string, error) {
+	return func(path string) (string, error) {
+		s, err := found.For(path)
+		if err != nil {
+			return "", err
+		}
+		return s.Get("known"), nil
 	}
 }

@@ -3,6 +3,7 @@ package main
 import (
 	"bufio"
 	"encoding/json"
+	"errors"
 	"fmt"
 	"io"
 	"os"
@@ -129,7 +130,9 @@ func readMarks(r io.Reader, name string) ([]placedMark, error) {
 		}
 		marks = append(marks, m)
 	}
-	if err := lines.Err(); err != nil {
+	if err := lines.Err(); errors.Is(err, bufio.ErrTooLong) {
+		return nil, fmt.Errorf("%s:%d: a line of more than %d bytes; give what proof --emit jsonl prints", name, n+1, maxMark)
+	} else if err != nil {
 		return nil, fmt.Errorf("%s:%d: %w", name, n+1, err)
 	}
 	return marks, nil

@@ -66,6 +66,11 @@ type search struct {
 	// format returns the format of a file below a folder; nil stands for
 	// foulcase.FormatOf.
 	format func(path string) (name string, ok bool)
+	// ignored tells which files below a folder are passed over, and known which file
+	// of known marks a document has, "" for none, where no flag names one; nil stands
+	// for none.
+	ignored func(path string) bool
+	known   func(path string) (file string, err error)
 }
 
 // documents are what a verb has to read. Its methods are safe for concurrent use,
@@ -74,16 +79,18 @@ type documents struct {
 	inputs  []input
 	skipped tree.Skipped
 	changes *tree.Changes // nil: every line counts
-	known   *knownMarks
+	known   *knownFiles
 }
 
 // find looks for the documents that operands and flags name. What cannot be found
 // is an input with an error; what cannot be done at all is an error. The caller
 // reads the inputs in their order, each with a sieve, and calls finish at the end.
 func (f *treeFlags) find(c *console, operands []string, s search) (*documents, error) {
-	known, err := openKnown(f.known, f.writeKnown)
-	if err != nil {
-		return nil, err
+	known := &knownFiles{from: f.known, to: f.writeKnown, named: s.known, opened: map[string]openedKnown{}}
+	if f.known != "" || f.writeKnown != "" { // what is wrong with it concerns every document
+		if _, err := known.of(standardInput); err != nil {
+			return nil, err
+		}
 	}
 	listed, err := f.listed(c, operands)
 	if err != nil {
@@ -95,7 +102,7 @@ func (f *treeFlags) find(c *console, operands []string, s search) (*documents, e
 	if f.changed != "" && slices.Contains(operands, standardInput) {
 		return nil, misusef("--changed looks at files; name some, not standard input")
 	}
-	finder := tree.NewFinder(tree.Options{NoIgnore: f.noIgnore, AnyBytes: s.anyBytes, Format: s.format})
+	finder := tree.NewFinder(tree.Options{NoIgnore: f.noIgnore, AnyBytes: s.anyBytes, Format: s.format, Ignored: s.ignored})
 	d := &documents{inputs: findWith(finder, operands, c.in, s.stdinName), known: known}
 	before := len(finder.Found())
 	for _, path := range listed {
@@ -150,21 +157,27 @@ func (d *documents) onlyChanged(base string) error {
 // sieve lets those marks of one document through that are to be shown. It is for
 // one goroutine.
 type sieve struct {
-	documents *documents
-	path      string
-	spans     *tree.Spans // nil: the whole document
+	path  string
+	known *knownMarks
+	spans *tree.Spans // nil: the whole document
 }
 
 // sieve returns that of an input. The error is the document's.
 func (d *documents) sieve(in input) (*sieve, error) {
-	s := &sieve{documents: d, path: in.path}
-	if d.changes == nil || in.err != nil {
-		return s, in.err
+	if in.err != nil {
+		return nil, in.err
+	}
+	known, err := d.known.of(in.path)
+	if err != nil {
+		return nil, err
+	}
+	s := &sieve{path: in.path, known: known}
+	if d.changes == nil {
+		return s, nil
 	}
 	if _, err := d.changes.Has(in.path); err != nil {
 		return nil, err
 	}
-	var err error
 	s.spans, err = d.changes.Spans(in.path)
 	return s, err
 }
@@ -173,11 +186,11 @@ func (d *documents) sieve(in input) (*sieve, error) {
 // document once, in order.
 func (s *sieve) keep(m foulcase.Mark) bool {
 	touched := s.spans == nil || s.spans.Touch(m.Offset, m.Length)
-	return s.documents.known.keep(s.path, m, touched) && touched
+	return s.known.keep(s.path, m, touched) && touched
 }
 
 // close says that the document was read to its end.
-func (s *sieve) close() { s.documents.known.read(s.path) }
+func (s *sieve) close() { s.known.read(s.path) }
 
 // finish tells on standard error what was passed over and what was not shown, and
 // writes the known marks.
