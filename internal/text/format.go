@@ -58,7 +58,7 @@ func allFormats() []format {
 			extensions: []string{".txt", ".text"}, languages: []string{"plaintext"}, read: readPlain,
 		},
 		{
-			name: Markdown, about: "all prose; not code, HTML, link destinations and front matter",
+			name: Markdown, about: "all prose, that in HTML too; not code, link destinations and front matter",
 			extensions: []string{".md", ".markdown", ".mkd"}, languages: []string{"markdown"}, read: readMarkdown,
 		},
 		{

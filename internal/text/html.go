@@ -23,13 +23,16 @@ type htmlReader struct {
 	broken tag // a <br> that waits for what follows
 }
 
-func (h *htmlReader) parse() {
-	s := tagScanner{source: h.source, pos: bomLen(h.source)}
+func (h *htmlReader) parse() { h.parseFrom(bomLen(h.source)) }
+
+// parseFrom reads what stands behind from.
+func (h *htmlReader) parseFrom(from int) {
+	s := tagScanner{source: h.source, pos: from}
 	for t, ok := s.next(); ok; t, ok = s.next() {
 		switch t.kind {
 		case charData, cdata:
 			h.lineBreak(t)
-			h.text(t, func(from, to int) { h.prose.decodedBy(from, to, "&", reference) })
+			h.text(t, func(from, to int) { h.prose.decodedBy(from, to, "&{<", shown) })
 		case openTag:
 			h.start(t)
 		case closeTag:
@@ -37,6 +40,14 @@ func (h *htmlReader) parse() {
 		}
 	}
 	h.flush()
+}
+
+// shown is reference, with a placeholder for what a template engine fills in.
+func shown(b []byte) (text string, n int) {
+	if n = filledIn(b); n > 0 {
+		return placeholder, n
+	}
+	return reference(b)
 }
 
 // start takes a start tag.

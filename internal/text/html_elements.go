@@ -33,7 +33,7 @@ func htmlBlock(name string) bool {
 func htmlHidden(name string) bool {
 	switch name {
 	case "script", "style", "template", "pre", "listing", "xmp", "plaintext", "textarea", "iframe", "noembed", "noframes",
-		"code", "kbd", "samp", "var", "tt", "svg", "math":
+		"code", "kbd", "samp", "var", "tt", "svg", "math", "del":
 		return true
 	}
 	return false

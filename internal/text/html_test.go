@@ -53,6 +53,7 @@ func TestHTMLBlocks(t *testing.T) {
 		{"XHTML", "<?xml version='1.0'?><p>fog <br />at</p><p/><![CDATA[a < b]]>", []string{"fog \nat", "a < b"}},
 		{"byte order mark", "\uFEFF<p>Fog", []string{"Fog"}},
 		{"CRLF", "<p>Ice at\r\n the\r\n\r\nbar.\r\n", []string{"Ice at\nthe\nbar."}},
+		{"templates and deletions", "<p>The {{ site.pilot }} <del>ice</del> <%= x > y %> fog {{x", []string{"The \uFFFC \uFFFC \uFFFC fog {{x"}},
 		{"bad UTF-8", "fog\x00 \xff<b>\xfe</b>", []string{"fog\x00 \xff\xfe"}},
 		{"end tags alone", "</p>fog</b></body></html> ice", []string{"fog ice"}},
 	})

@@ -14,12 +14,14 @@ import (
 
 // readMarkdown reads the whole document and yields a block for each paragraph,
 // heading, list item's text, table cell, footnote and defined term, in the order
-// of the source. Link text and the alternative text of images are prose; link
-// destinations and titles, code blocks, HTML and front matter are left out. An
-// inline code span is one U+FFFC in the text, so that its sentence stays whole.
+// of the source. Link text, the alternative text of images and the text in HTML are
+// prose; link destinations and titles, code blocks, attributes in braces, the
+// fences of containers (":::") and front matter are left out. An inline code span,
+// or what a template engine fills in, is one U+FFFC in the text, so that its
+// sentence stays whole.
 func readMarkdown(r io.Reader, o Options, yield func(*Block, error) bool) {
 	readWhole(r, o, yield, func(source []byte) ([]*Block, error) {
-		m := markdown{source: source}
+		m := markdown{source: source, options: o}
 		err := m.parse()
 		return m.blocks, err
 	})
@@ -27,10 +29,12 @@ func readMarkdown(r io.Reader, o Options, yield func(*Block, error) bool) {
 
 // markdown gathers the blocks of one document.
 type markdown struct {
-	source []byte
-	base   int // where what goldmark reads begins in source
-	blocks []*Block
-	prose  prose
+	source  []byte
+	options Options
+	base    int // where what goldmark reads begins in source
+	blocks  []*Block
+	prose   prose
+	fenced  bool // the line at hand begins with the fence of a container
 }
 
 // parse fills m.blocks. A fault inside the parser of the markup comes back as
@@ -52,6 +56,10 @@ func (m *markdown) parse() (err error) {
 
 // container takes the blocks inside a block.
 func (m *markdown) container(n ast.Node) {
+	if n.Kind() == ast.KindHTMLBlock {
+		m.html(n.Lines())
+		return
+	}
 	if c := n.FirstChild(); c != nil && c.Type() == ast.TypeInline {
 		m.prose = prose{source: m.source, leaders: ">"}
 		m.inlines(n)
@@ -63,6 +71,25 @@ func (m *markdown) container(n ast.Node) {
 	}
 }
 
+// html takes the text of HTML between blank lines, unless other markup begins its
+// lines.
+func (m *markdown) html(lines *gtext.Segments) {
+	if lines.Len() == 0 {
+		return
+	}
+	from, to := m.base+lines.At(0).Start, m.base+lines.At(lines.Len()-1).Stop
+	for i := 1; i < lines.Len(); i++ {
+		between := m.source[m.base+lines.At(i-1).Stop : m.base+lines.At(i).Start]
+		if len(bytes.TrimSpace(between)) > 0 {
+			return
+		}
+	}
+	h := htmlReader{tagged: newTagged(m.source[:to], m.options)}
+	h.begin(from)
+	h.parseFrom(from)
+	m.blocks = append(m.blocks, h.blocks...)
+}
+
 // finish makes a block of the prose gathered so far.
 func (m *markdown) finish(n ast.Node) {
 	if b := m.prose.block(); b != nil {
@@ -70,6 +97,7 @@ func (m *markdown) finish(n ast.Node) {
 		m.blocks = append(m.blocks, b)
 	}
 	m.prose = prose{source: m.source, leaders: ">", end: m.prose.end}
+	m.fenced = false
 }
 
 // inlines takes the prose of the inline nodes of n.
@@ -102,14 +130,52 @@ func (m *markdown) text(t *ast.Text) {
 	if t.IsRaw() {
 		m.prose.verbatim(from, to)
 	} else {
-		m.prose.decoded(from, to)
+		if n := m.fence(from, to); n > 0 {
+			m.finish(t)
+			m.fenced = true
+			from += n
+		}
+		m.prose.decodedBy(from, to, "\\&{<", decode)
 	}
 	switch {
-	case t.HardLineBreak() && !m.startsLower(t.NextSibling()):
+	case t.SoftLineBreak() && m.fenced, t.HardLineBreak() && !m.startsLower(t.NextSibling()):
 		m.finish(t)
 	case t.HardLineBreak() || t.SoftLineBreak():
 		m.prose.lineBreak(to)
 	}
+}
+
+// decode is resolve, which also leaves out attributes and has a placeholder for
+// what a template engine fills in.
+func decode(b []byte) (text string, n int) {
+	if n = filledIn(b); n > 0 {
+		return placeholder, n
+	}
+	if n = attributeList(b); n > 0 {
+		return "", n
+	}
+	if b[0] == '{' || b[0] == '<' {
+		return "", 1
+	}
+	return resolve(b)
+}
+
+// fence returns the length of the fence of a container at source[from:to], the kind
+// and attributes of the container included, 0 when none begins a line there. Behind
+// it its title may stand.
+func (m *markdown) fence(from, to int) int {
+	line := m.source[from:to]
+	before := bytes.TrimRight(m.source[:from], " \t")
+	if !bytes.HasPrefix(line, []byte(":::")) || len(before) > 0 && !lineStart(m.source, len(before)) {
+		return 0
+	}
+	rest := bytes.TrimLeft(bytes.TrimLeft(line, ":"), " \t")
+	n := attributeList(rest)
+	for n < len(rest) && (alnumByte(rest[n]) || rest[n] == '-') {
+		n++
+	}
+	n += blanks(rest[n:])
+	return len(line) - len(rest) + n
 }
 
 func (m *markdown) startsLower(n ast.Node) bool {

@@ -83,13 +83,9 @@ func (p *prose) add(text []byte, from, to int) {
 	p.spans = append(p.spans, next)
 }
 
-// decoded takes source[from:to] with backslash escapes and character references
-// resolved.
-func (p *prose) decoded(from, to int) { p.decodedBy(from, to, "\\&", resolve) }
-
 // decodedBy takes source[from:to], where at each of the bytes marks read may tell
 // what the bytes from there on stand for and how many they are, 1 when they stand
-// for themselves.
+// for themselves. What stands for nothing is left out.
 func (p *prose) decodedBy(from, to int, marks string, read func(b []byte) (text string, n int)) {
 	for from < to {
 		i := bytes.IndexAny(p.source[from:to], marks)
@@ -99,10 +95,11 @@ func (p *prose) decodedBy(from, to int, marks string, read func(b []byte) (text 
 		p.verbatim(from, from+i)
 		from += i
 		text, n := read(p.source[from:to])
-		if n > 1 {
+		switch {
+		case n == 1:
+			p.verbatim(from, from+1)
+		case text != "":
 			p.standIn(text, from, from+n)
-		} else {
-			p.verbatim(from, from+n)
 		}
 		from += n
 	}
