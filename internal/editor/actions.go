@@ -49,8 +49,9 @@ func (d *document) actions(p codeActionParams) []codeAction {
 		return all
 	}
 	if wants(p.Context.Only, quickFix) {
+		known := ours(p.Context.Diagnostics)
 		for _, m := range d.marksIn(p.Range) {
-			all = append(all, d.actionsOn(m, p.Context.Diagnostics)...)
+			all = append(all, d.actionsOn(m, known)...)
 		}
 	}
 	onlyAsked := len(p.Context.Only) == 0 && p.Context.TriggerKind == triggeredByEditor
@@ -62,7 +63,11 @@ func (d *document) actions(p codeActionParams) []codeAction {
 	return all
 }
 
-// marksIn are the marks that a range touches.
+// mostOffered is the most marks of a range that have actions: each has several, and a
+// menu has room for few.
+const mostOffered = 20
+
+// marksIn are the marks that a range touches, the first of them if there are many.
 func (d *document) marksIn(s span) []foulcase.Mark {
 	start, _ := d.lines.offset(d.draft.Source(), s.Start)
 	end, _ := d.lines.offset(d.draft.Source(), s.End)
@@ -72,14 +77,13 @@ func (d *document) marksIn(s span) []foulcase.Mark {
 			touched = append(touched, m)
 		}
 	}
-	return touched
+	return touched[:min(len(touched), mostOffered)]
 }
 
 // actionsOn are the quick fixes of a mark.
-func (d *document) actionsOn(m foulcase.Mark, diagnostics []json.RawMessage) []codeAction {
+func (d *document) actionsOn(m foulcase.Mark, known map[span][]json.RawMessage) []codeAction {
 	at := d.cursor()
-	where := at.span(m)
-	base := codeAction{Kind: quickFix, Diagnostics: ours(diagnostics, where)}
+	base := codeAction{Kind: quickFix, Diagnostics: known[at.span(m)]}
 	var all []codeAction
 	add := func(title string, f fix) {
 		a := base
@@ -112,16 +116,16 @@ func (d *document) actionsOn(m foulcase.Mark, diagnostics []json.RawMessage) []c
 	return all
 }
 
-// ours picks the diagnostics of ours at a place, as the client has them.
-func ours(diagnostics []json.RawMessage, where span) []json.RawMessage {
-	var picked []json.RawMessage
+// ours picks the diagnostics of ours, as the client has them, by their places.
+func ours(diagnostics []json.RawMessage) map[span][]json.RawMessage {
+	picked := map[span][]json.RawMessage{}
 	for _, raw := range diagnostics {
 		var d struct {
 			Range  span   `json:"range"`
 			Source string `json:"source"`
 		}
-		if json.Unmarshal(raw, &d) == nil && d.Source == source && d.Range == where {
-			picked = append(picked, raw)
+		if json.Unmarshal(raw, &d) == nil && d.Source == source {
+			picked[d.Range] = append(picked[d.Range], raw)
 		}
 	}
 	return picked

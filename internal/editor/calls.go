@@ -25,12 +25,19 @@ type call struct {
 	cancel context.CancelFunc
 }
 
-// begin notes a request; it is an error when one of the same id is under way.
+// maxCalls is the most requests of the client that may be under way.
+const maxCalls = 1000
+
+// begin notes a request; it is an error when one of the same id is under way, or too
+// many are.
 func (s *Server) begin(id json.RawMessage) (*call, *failure) {
 	s.calls.mu.Lock()
 	defer s.calls.mu.Unlock()
 	if _, ok := s.calls.from[string(id)]; ok {
 		return nil, failf(invalidRequest, "a request with the id %.40s is under way", id)
+	}
+	if len(s.calls.from) >= maxCalls {
+		return nil, failf(requestFailed, "%d requests are under way already: wait for an answer", maxCalls)
 	}
 	c := &call{s: s, id: id}
 	c.ctx, c.cancel = context.WithCancel(s.ctx)

@@ -40,6 +40,8 @@ type document struct {
 	items    []byte          // diagnostics of the marks, a JSON array
 	resultID int64           // numbers items, whatever document they are of
 	trouble  string          // the last that was reported
+
+	overflowed bool // it was said that there are more marks than are shown
 }
 
 // mark is what decides whether a mark stands.
@@ -119,7 +121,7 @@ func (d *document) judge(ctx context.Context) *failure {
 		return nil
 	}
 	begun, edit := time.Now(), d.judged
-	f := d.look(ctx, (*foulcase.Draft).Marks)
+	f := d.look(ctx, (*foulcase.Draft).Marks, false)
 	if f == nil && edit {
 		d.took = time.Since(begun)
 	}
@@ -127,10 +129,10 @@ func (d *document) judge(ctx context.Context) *failure {
 }
 
 // rejudge judges everything anew, so that what was edited bears on the evidence for
-// what was not.
+// what was not. Nobody waits for it, so it lets others pass and goes on later.
 func (d *document) rejudge() {
 	before := d.resultID
-	if d.look(d.s.ctx, (*foulcase.Draft).Settle) != nil {
+	if d.look(d.s.ctx, (*foulcase.Draft).Settle, true) != nil {
 		return
 	}
 	d.unsettled = false
@@ -139,9 +141,10 @@ func (d *document) rejudge() {
 	}
 }
 
-// look has the draft find its marks, in one way or the other.
-func (d *document) look(ctx context.Context, find func(*foulcase.Draft, context.Context, func(done, total int)) ([]foulcase.Mark, error)) *failure {
-	ctx, ok := d.inbox.begin(ctx)
+// look has the draft find its marks, in one way or the other; see mailbox.begin for
+// yields.
+func (d *document) look(ctx context.Context, find func(*foulcase.Draft, context.Context, func(done, total int)) ([]foulcase.Mark, error), yields bool) *failure {
+	ctx, ok := d.inbox.begin(ctx, yields)
 	if !ok {
 		return failf(contentModified, "the document changes")
 	}
@@ -157,9 +160,9 @@ func (d *document) look(ctx context.Context, find func(*foulcase.Draft, context.
 	case ended:
 		return failf(requestCancelled, "cancelled")
 	}
-	d.stale, d.judged = false, true
 	d.opened()
 	d.report(err)
+	d.stale, d.judged = false, true
 	d.keep(marks)
 	d.publish()
 	return nil
@@ -186,30 +189,52 @@ func (d *document) showing() func(done, total int) {
 	}
 }
 
-// report tells of what hinders a judgement, once.
+// report tells of what hinders a judgement, once: the user, when it hinders the first,
+// and the log while the document is edited, as half a record is when it is typed.
 func (d *document) report(err error) {
 	now := ""
 	if err != nil {
 		now = err.Error()
 	}
-	if now != "" && now != d.trouble {
+	switch {
+	case now == "" || now == d.trouble:
+	case d.judged:
+		d.s.log(loudWarning, "%s: %s", nameOf(d.uri), now)
+	default:
 		d.s.show(loudError, "foulcase: %s: %s", nameOf(d.uri), now)
 	}
 	d.trouble = now
 }
 
+// mostMarks is the most marks of a document that a client gets, all of them anew after
+// each change. Those beyond come up when some before them are done with.
+const mostMarks = 5000
+
 // keep takes over the marks that do not stand.
 func (d *document) keep(marks []foulcase.Mark) {
 	d.marks = d.marks[:0]
 	for _, m := range marks {
-		if m.Part == "" && !d.letsStand(m) {
-			d.marks = append(d.marks, m)
+		if d.letsStand(m) {
+			continue
 		}
+		if len(d.marks) == mostMarks {
+			d.overflow()
+			break
+		}
+		d.marks = append(d.marks, m)
 	}
 	items := d.appendDiagnostics(make([]byte, 0, len(d.items)+1024), d.marks)
 	if d.resultID == 0 || !bytes.Equal(items, d.items) {
 		d.items, d.resultID = items, d.s.counter.Add(1)
 	}
+}
+
+// overflow tells, once, that there are more marks than the client gets.
+func (d *document) overflow() {
+	if !d.overflowed {
+		d.s.show(loudWarning, "foulcase: %s has more than %d marks: the first of them are shown", nameOf(d.uri), mostMarks)
+	}
+	d.overflowed = true
 }
 
 // maxStands is how many answers of the settings are kept.

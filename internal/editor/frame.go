@@ -13,6 +13,8 @@ import (
 const (
 	// maxFrame is the most bytes of one message. Longer ones are read past.
 	maxFrame = 64 << 20
+	// keptFrame is the most bytes that are held for the next message.
+	keptFrame = 1 << 20
 	// maxHeader is the most bytes of the header of a message.
 	maxHeader = 8 << 10
 )
@@ -43,7 +45,9 @@ func (f *frameReader) next() ([]byte, error) {
 	if err != nil {
 		return nil, err
 	}
-	f.buffer.Reset()
+	if f.buffer.Reset(); f.buffer.Cap() > keptFrame {
+		f.buffer = bytes.Buffer{}
+	}
 	into := io.Writer(&f.buffer)
 	if length > maxFrame {
 		into = io.Discard

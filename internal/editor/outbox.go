@@ -3,6 +3,7 @@ package editor
 import (
 	"encoding/json"
 	"errors"
+	"slices"
 	"sync"
 )
 
@@ -29,6 +30,8 @@ type parcel struct {
 	message json.RawMessage
 }
 
+func (p parcel) replaces(older parcel) bool { return p.key != "" && p.key == older.key }
+
 func newOutbox(send func(json.RawMessage) error, broken func(error)) *outbox {
 	o := &outbox{send: send, broken: broken, wake: make(chan struct{}, 1), closed: make(chan struct{})}
 	go o.work()
@@ -42,12 +45,9 @@ func (o *outbox) put(p parcel) {
 		o.mu.Unlock()
 		return
 	}
-	for i, other := range o.queue {
-		if p.key != "" && other.key == p.key {
-			o.size -= len(other.message)
-			o.queue = append(o.queue[:i], o.queue[i+1:]...)
-			break
-		}
+	if i := slices.IndexFunc(o.queue, p.replaces); i >= 0 {
+		o.size -= len(o.queue[i].message)
+		o.queue = slices.Delete(o.queue, i, i+1)
 	}
 	o.queue = append(o.queue, p)
 	o.size += len(p.message)
@@ -101,7 +101,7 @@ func (o *outbox) take() (p parcel, more, shut bool) {
 	if len(o.queue) == 0 {
 		return parcel{}, false, o.shut
 	}
-	p = o.queue[0]
+	p, o.queue[0] = o.queue[0], parcel{} // let go of when it is sent
 	o.queue = o.queue[1:]
 	o.size -= len(p.message)
 	return p, true, o.shut

@@ -53,6 +53,7 @@ type Server struct {
 	defaults  preferences     // the client's settings for documents it says nothing else of
 	reported  map[string]bool // settings not understood, reported once
 	watched   map[string]bool // files that the client watches for us
+	faults    map[string]bool // of files of settings, shown since they were read anew
 
 	counter atomic.Int64 // numbers states of diagnostics and tokens of progress
 }
@@ -73,6 +74,7 @@ func New(c Config, send func(json.RawMessage) error) *Server {
 		documents: map[string]*document{},
 		reported:  map[string]bool{},
 		watched:   map[string]bool{},
+		faults:    map[string]bool{},
 		defaults:  newPreferences(),
 		calls:     calls{from: map[string]*call{}, to: map[int]func(json.RawMessage, error){}},
 	}

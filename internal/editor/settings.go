@@ -140,6 +140,17 @@ func (s *Server) reportSetting(what string) {
 	}
 }
 
+// reportFiles shows what is wrong with the files of settings: once, however many
+// documents they are for, until they are read anew.
+func (s *Server) reportFiles(err error) {
+	s.mu.Lock()
+	defer s.mu.Unlock()
+	if what := err.Error(); !s.faults[what] && len(s.faults) < 100 {
+		s.faults[what] = true
+		s.show(loudError, "foulcase: %s", what)
+	}
+}
+
 // options is how the document is to be judged.
 func (d *document) options() foulcase.Options {
 	var o foulcase.Options
@@ -171,7 +182,7 @@ func (d *document) load() {
 	}
 	settings, err := d.s.config.Settings(d.path)
 	if err != nil {
-		d.s.show(loudError, "foulcase: %v", err)
+		d.s.reportFiles(err)
 		return
 	}
 	d.settings = settings

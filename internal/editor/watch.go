@@ -69,6 +69,9 @@ func (s *Server) didChangeWatchedFiles(json.RawMessage) *failure {
 // reload has every document's settings read anew and its marks found again, where it
 // has some and, if all is wanted, everywhere.
 func (s *Server) reload(all bool) {
+	s.mu.Lock()
+	clear(s.faults)
+	s.mu.Unlock()
 	s.each(func(d *document) {
 		d.inbox.put(task{changes: true, run: func() {
 			d.load()
