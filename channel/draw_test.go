@@ -47,7 +47,7 @@ func ways(m *channel.Model, l channel.Symbol, intended []channel.Letter, edits i
 	if len(intended) > 1 && at(1) != c.Sym {
 		step(2, string(intended[1].Rune)+string(c.Rune), m.Swap(c.Sym, at(1)), 1)
 	}
-	for _, r := range m.AllRules() {
+	for _, r := range m.Rules() {
 		n := int(r.NIntended)
 		if n > len(intended) || !r.Fits(l, at(n)) {
 			continue

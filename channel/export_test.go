@@ -25,11 +25,5 @@ func Unit(swaps bool) (*Model, error) {
 	return d.model()
 }
 
-// AllRules lists the rules of a model.
-func (m *Model) AllRules() []Rule {
-	var rules []Rule
-	for i := range m.rules.len() {
-		rules = append(rules, m.rules.at(i))
-	}
-	return rules
-}
+// Strengths are what ChooseStrength tries.
+var Strengths = strengths

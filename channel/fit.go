@@ -57,8 +57,13 @@ func Fit(pairs []Pair, options FitOptions) (*Model, FitReport, error) {
 		n = f.round(n)
 	}
 	if !options.NoRules {
-		if err := f.propose(n); err != nil {
+		m, err := f.draft(n).model()
+		if err != nil {
 			return nil, f.report, err
+		}
+		f.rules = map[ruleKey]float64{}
+		for key, s := range f.propose(m) {
+			f.rules[key] = f.occurrences.probability(key, s.sights)
 		}
 		for range ruleRounds {
 			withRules := f.round(n)
@@ -72,26 +77,26 @@ func Fit(pairs []Pair, options FitOptions) (*Model, FitReport, error) {
 }
 
 type fitter struct {
-	options     FitOptions
-	pairs       []Pair // single words, Count raised to countPower
-	weight      float64
-	rules       map[ruleKey]float64 // probabilities
-	occurrences occurrences
-	prices      Prices
-	report      FitReport
+	options      FitOptions
+	pairs        []Pair // single words, Count raised to countPower
+	weight       float64
+	rules        map[ruleKey]float64 // probabilities
+	occurrences  occurrences
+	prices       Prices
+	runOn, split float64 // weights of pairs that lack a space, and that have one too many
+	report       FitReport
 }
 
 // take keeps the pairs of single words and prices spaces by the others.
 func (f *fitter) take(pairs []Pair) {
-	var runOn, split float64
 	for _, p := range pairs {
 		p.Count = math.Pow(p.Count, countPower)
 		if p.Spaced {
 			f.report.Spaced++
 			if strings.Count(p.Intended, " ") > strings.Count(p.Observed, " ") {
-				runOn += p.Count
+				f.runOn += p.Count
 			} else {
-				split += p.Count
+				f.split += p.Count
 			}
 			continue
 		}
@@ -102,12 +107,12 @@ func (f *fitter) take(pairs []Pair) {
 		f.weight += p.Count
 	}
 	f.report.Pairs = len(f.pairs)
-	all := f.weight + runOn + split + 2
+	all := f.weight + f.runOn + f.split + 2
 	f.prices = Prices{
 		Accent:  accentCost,
 		Foreign: foreignCost,
-		RunOn:   float32(nats((runOn + 1) / all)),
-		Split:   float32(nats((split + 1) / all)),
+		RunOn:   float32(nats((f.runOn + 1) / all)),
+		Split:   float32(nats((f.split + 1) / all)),
 	}
 }
 
@@ -118,8 +123,17 @@ const (
 	foreignCost = 4
 )
 
-// firstCounts takes every letter of the intended words for typed right.
+// firstCounts takes every letter of the intended words for typed right, some slips
+// from elsewhere aside.
 func (f *fitter) firstCounts() *counts {
+	n := f.lettersMeant()
+	n.blend(f.options.Edits, firstGuess)
+	return n
+}
+
+// lettersMeant counts the intended letters and the places between them, every
+// letter typed right.
+func (f *fitter) lettersMeant() *counts {
 	n := newCounts()
 	var word []Letter
 	for _, p := range f.pairs {
@@ -135,7 +149,6 @@ func (f *fitter) firstCounts() *counts {
 		}
 		n.slots[at2(l, Edge)] += p.Count
 	}
-	n.blend(f.options.Edits, firstGuess)
 	return n
 }
 

@@ -34,6 +34,22 @@ func FittedSection(pairs []Pair) []byte {
 	for i, p := range pairs {
 		hashes[i] = hashPair(p.Observed, p.Intended)
 	}
+	return fittedSection(hashes)
+}
+
+// With writes the section of these pairs and more.
+func (f *Fitted) With(pairs []Pair) []byte {
+	more := &Fitted{FittedSection(pairs)[fittedHeader:]}
+	var hashes []uint32
+	for _, set := range []*Fitted{f, more} {
+		for i := range set.Len() {
+			hashes = append(hashes, set.at(i))
+		}
+	}
+	return fittedSection(hashes)
+}
+
+func fittedSection(hashes []uint32) []byte {
 	slices.Sort(hashes)
 	hashes = slices.Compact(hashes)
 	b := append(make([]byte, 0, fittedHeader+4*len(hashes)), fittedMagic...)

@@ -64,12 +64,9 @@ type proposal struct{ sights, cost float64 }
 
 // propose finds rules in the best alignments under single-letter steps: runs
 // from a slip to a later slip that touch up to four letters on either side. What
-// stands around a run is left to the neighbours of the single-letter steps.
-func (f *fitter) propose(n *counts) error {
-	m, err := f.draft(n).model()
-	if err != nil {
-		return err
-	}
+// stands around a run is left to the neighbours of the single-letter steps. It
+// counts the occurrences too.
+func (f *fitter) propose(m *Model) map[ruleKey]proposal {
 	f.occurrences = occurrences{}
 	seen := map[ruleKey]proposal{}
 	for _, p := range f.pairs {
@@ -77,14 +74,14 @@ func (f *fitter) propose(n *counts) error {
 		steps := m.Explain(p.Observed, p.Intended)
 		collect(seen, steps[:len(steps)-1], p.Count)
 	}
-	f.rules = map[ruleKey]float64{}
+	kept := map[ruleKey]proposal{}
 	for key, s := range seen {
 		p := f.occurrences.probability(key, s.sights)
 		if s.sights >= leastSights && nats(p) < s.cost/s.sights-leastGain && f.tellsMore(key, p, seen) {
-			f.rules[key] = p
+			kept[key] = s
 		}
 	}
-	return nil
+	return kept
 }
 
 // tellsMore reports whether a rule with a place is likelier there than anywhere,

@@ -128,3 +128,12 @@ func (t ruleTable) search(key uint64) int {
 	}
 	return lo
 }
+
+// Rules lists the rules of the model, sorted by the observed letters.
+func (m *Model) Rules() []Rule {
+	rules := make([]Rule, m.rules.len())
+	for i := range rules {
+		rules[i] = m.rules.at(i)
+	}
+	return rules
+}
