@@ -17,6 +17,8 @@ type language struct {
 	backslash  bool      // outside of strings a backslash takes away the meaning of the next byte
 	regex      bool      // where an operand may stand, a slash begins a regular expression
 	hereMark   string    // begins a here-document, whose lines are left out
+	quotes     []string  // begin literals whose delimiters the writer chose, longer words first; left out
+	question   bool      // a question mark before a sign makes a character of it
 	island     [2]string // code stands between these alone
 }
 
@@ -109,7 +111,7 @@ func languages() []language {
 		{name: "javascript", title: "JavaScript", extensions: []string{".js", ".mjs", ".cjs", ".jsx"}, ids: []string{"javascript", "javascriptreact"}, line: []string{"//"}, regex: true, enclosures: []enclosure{cBlock, double, single, template}},
 		{name: "julia", title: "Julia", extensions: []string{".jl"}, line: []string{"#"}, enclosures: []enclosure{{role: remark, open: "#=", close: "=#", lines: true, nested: true}, tripleDoc, doubleLong, char}},
 		{name: "kotlin", title: "Kotlin", extensions: []string{".kt", ".kts"}, line: []string{"//"}, enclosures: []enclosure{nestedC, {open: `"""`, close: `"""`, lines: true, inner: "${"}, dollarIn, char}},
-		{name: "lisp", title: "Lisp", extensions: []string{".el", ".lisp", ".scm"}, line: []string{";"}, backslash: true, enclosures: []enclosure{{role: remark, open: "#|", close: "|#", lines: true, nested: true}, doubleLong}},
+		{name: "lisp", title: "Lisp", extensions: []string{".el", ".lisp", ".scm"}, line: []string{";"}, backslash: true, question: true, enclosures: []enclosure{{role: remark, open: "#|", close: "|#", lines: true, nested: true}, doubleLong}},
 		{name: "lua", title: "Lua", extensions: []string{".lua"}, line: []string{"--"}, enclosures: []enclosure{
 			{role: remark, open: "--[", openEnd: "[", close: "]", closeEnd: "]", tag: '=', lines: true},
 			double, single,
@@ -118,7 +120,7 @@ func languages() []language {
 		{name: "make", title: "Make", extensions: []string{".mk", ".mak"}, names: []string{"makefile", "gnumakefile"}, ids: []string{"makefile"}, line: []string{"#"}, spaced: true, backslash: true},
 		{name: "ocaml", title: "OCaml", extensions: []string{".ml", ".mli"}, enclosures: []enclosure{mlBlock, doubleLong, char, {open: "{", openEnd: "|", close: "|", closeEnd: "}", tag: 'w', lines: true}}},
 		{name: "pascal", title: "Pascal", extensions: []string{".pas", ".dpr", ".lpr"}, line: []string{"//"}, enclosures: []enclosure{{role: remark, open: "{", close: "}", lines: true}, {role: remark, open: "(*", close: "*)", lines: true}, singleTwin}},
-		{name: "perl", title: "Perl", extensions: []string{".pl", ".pm"}, line: []string{"#"}, spaced: true, regex: true, backslash: true, hereMark: "<<", enclosures: []enclosure{
+		{name: "perl", title: "Perl", extensions: []string{".pl", ".pm"}, line: []string{"#"}, spaced: true, regex: true, backslash: true, hereMark: "<<", quotes: []string{"qq", "qw", "qr", "q", "m", "s", "tr", "y"}, enclosures: []enclosure{
 			{role: remark, open: "=pod", close: "=cut", fresh: true, lines: true},
 			{role: remark, open: "=head", close: "=cut", fresh: true, lines: true},
 			doubleLong,
@@ -135,7 +137,7 @@ func languages() []language {
 		{name: "proto", title: "Protocol Buffers", extensions: []string{".proto"}, ids: []string{"proto", "proto3"}, line: []string{"//"}, enclosures: []enclosure{cBlock, double, single}},
 		{name: "python", title: "Python", extensions: []string{".py", ".pyi", ".pyw"}, line: []string{"#"}, enclosures: []enclosure{tripleDoc, tripleDoc1, double, single}},
 		{name: "r", title: "R", extensions: []string{".r"}, line: []string{"#"}, enclosures: []enclosure{doubleLong, singleLong, {role: passed, open: "`", close: "`"}}},
-		{name: "ruby", title: "Ruby", extensions: []string{".rb", ".rake", ".gemspec"}, names: []string{"rakefile", "gemfile"}, line: []string{"#"}, spaced: true, regex: true, hereMark: "<<", enclosures: []enclosure{
+		{name: "ruby", title: "Ruby", extensions: []string{".rb", ".rake", ".gemspec"}, names: []string{"rakefile", "gemfile"}, line: []string{"#"}, spaced: true, regex: true, hereMark: "<<", quotes: []string{"%q", "%Q", "%w", "%W", "%i", "%I", "%r", "%"}, question: true, enclosures: []enclosure{
 			{role: remark, open: "=begin", close: "=end", fresh: true, lines: true}, hashIn, singleLong,
 		}},
 		{name: "rust", title: "Rust", extensions: []string{".rs"}, line: []string{"//"}, enclosures: []enclosure{

@@ -29,7 +29,7 @@ type codeScanner struct {
 	last   byte      // the last byte of code that is no white space, 0 at the start
 	begins [256]bool // bytes that may begin anything
 	here   [][]byte  // the words that end the here-documents of this line
-	plain  int       // no regular expression begins before
+	plain  int       // no regular expression and no literal of chosen delimiters begins before
 	noHere bool      // a here-document had no end: what looks like one is none
 }
 
@@ -48,6 +48,10 @@ func (l language) pieces(source []byte, take func(codePiece)) {
 	}
 	s.begins['\\'] = s.begins['\\'] || l.backslash
 	s.begins['/'] = s.begins['/'] || l.regex
+	s.begins['?'] = s.begins['?'] || l.question
+	for _, word := range l.quotes {
+		s.begins[word[0]] = true
+	}
 	if s.inside = s.pos; l.island[0] != "" {
 		s.findIsland()
 	}
@@ -82,6 +86,8 @@ func (s *codeScanner) begin(c byte) bool {
 		s.findIsland()
 	case s.hereMark != "" && bytes.HasPrefix(rest, []byte(s.hereMark)):
 		s.hereDocument()
+	case s.question && c == '?' && s.characterMark():
+	case s.quotes != nil && s.chosenQuote():
 	case s.enclosed():
 	case s.lineComment():
 	case s.regex && c == '/' && s.regularExpression():

@@ -44,6 +44,10 @@ func TestComments(t *testing.T) {
 		{"members with rules", "python", "\"\"\"Moor it.\n\nParameters\n----------\nbxt : int\n    The boat.\n\"\"\"\n", "Moor it.|The boat."},
 		{"notes to do", "go", "// TODO(mtg): moor it.\n// NOTE: wait.\n", "moor it.\nNOTE: wait."},
 		{"inline code", "go", "// Call `moor it` or ``x y``, not `this.\n", "Call ￼ or ￼, not `this."},
+		{"chosen delimiters", "perl", "$a = q{don't}; $b =~ s/\"/it's/g; $b =~ tr{'} {\"}; @c = qw(a 'b); m!it's!; # The pilot\n$s = $y; %y = (q => 1); # boards\n", "The pilot|boards"},
+		{"chosen delimiters of Ruby", "ruby", "a = %w[a 'b] + %(don't \"go) # The pilot\nb = c % 2; d = ?\" # boards\n", "The pilot|boards"},
+		{"chosen delimiters not closed", "perl", "$a = q{don;\n# The pilot boards\n", "The pilot boards"},
+		{"characters with question marks", "lisp", "(list ?\" ?; ?\\\") ; The pilot\n", "The pilot"},
 		{"not closed", "c", "int a; /* The pilot\n", ""},
 		{"a string that its line does not close", "javascript", "p = <p>Don't</p> // lost\n// Then wait.\n", "Then wait."},
 	} {
