@@ -7,7 +7,9 @@ import (
 	"maps"
 	"slices"
 	"strings"
+	"unicode"
 
+	"example.org/foulcase"
 	"example.org/foulcase/internal/house"
 	"example.org/foulcase/internal/report"
 	"github.com/spf13/pflag"
@@ -33,9 +35,11 @@ proof was run, since paths are taken from there. What was decided is data:
 
   --list    every decision
   --pairs   what was observed, intended and how often, parted by tabs, as
-            model build --pairs and eval list read it
+            model build --pairs and eval list read it; no repeated words
   --good    the text around the marks that stand, a line each, as model
-            calibrate reads good text`,
+            calibrate reads good text; none with a form that was corrected
+
+A decision is taken back by deleting its line in that file.`,
 		examples: `
 			foulcase stet --list
 			foulcase stet --pairs`,
@@ -145,11 +149,12 @@ func decisionLine(d house.Decision) string {
 	return fmt.Sprintf("stet here %q in %s: %s", d.Observed, d.Path, d.Context)
 }
 
-// printPairs prints what was corrected, the most frequent first.
+// printPairs prints what was corrected, the most frequent first. A word written twice is
+// no other spelling of it.
 func printPairs(w io.Writer, decisions []house.Decision) error {
 	counts := map[string]int{}
 	for _, d := range decisions {
-		if d.Decision == house.Corrected {
+		if d.Decision == house.Corrected && d.Kind != foulcase.Repeat.String() {
 			counts[oneLine(d.Observed)+"\t"+oneLine(d.Intended)]++
 		}
 	}
@@ -163,12 +168,19 @@ func printPairs(w io.Writer, decisions []house.Decision) error {
 	return nil
 }
 
-// printGood prints the contexts of the marks that stand, each once.
+// printGood prints the contexts of the marks that stand, each once, but not those in
+// which something else was corrected.
 func printGood(w io.Writer, decisions []house.Decision) error {
+	var corrected []string
+	for _, d := range decisions {
+		if d.Decision == house.Corrected {
+			corrected = append(corrected, oneLine(d.Observed))
+		}
+	}
 	seen := map[string]bool{}
 	for _, d := range decisions {
 		context := oneLine(d.Context)
-		if d.Decision != house.Stet || context == "" || seen[context] {
+		if d.Decision != house.Stet || context == "" || seen[context] || holdsAny(context, corrected, d.Observed) {
 			continue
 		}
 		seen[context] = true
@@ -178,6 +190,18 @@ func printGood(w io.Writer, decisions []house.Decision) error {
 	}
 	return nil
 }
+
+// holdsAny tells whether one of the forms, but that which stands, is among the words of
+// a context.
+func holdsAny(context string, forms []string, stands string) bool {
+	words := " " + strings.Join(strings.FieldsFunc(context, isNoLetter), " ") + " "
+	return slices.ContainsFunc(forms, func(form string) bool {
+		form = strings.Join(strings.FieldsFunc(form, isNoLetter), " ")
+		return form != stands && strings.Contains(words, " "+form+" ")
+	})
+}
+
+func isNoLetter(r rune) bool { return !unicode.IsLetter(r) && !unicode.IsMark(r) }
 
 // oneLine is text with a single space for any white space.
 func oneLine(s string) string { return strings.Join(strings.Fields(s), " ") }

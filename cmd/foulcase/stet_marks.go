@@ -13,6 +13,7 @@ import (
 
 	"example.org/foulcase"
 	"example.org/foulcase/internal/house"
+	"example.org/foulcase/internal/report"
 )
 
 // maxMark is the longest line of marks that is read, in bytes.
@@ -90,7 +91,7 @@ type placedMark struct {
 
 // place is where a mark stands, as proof prints it in lines.
 func (m placedMark) place() string {
-	return fmt.Sprintf("%s:%d:%d", filepath.Clean(m.path), m.Line, m.Column)
+	return report.Place(filepath.Clean(m.path), m.Mark)
 }
 
 // pick returns the marks at the places that were asked for, all if none was.
