@@ -78,6 +78,9 @@ func (p page) macro(name string, args ...string) {
 	p.WriteString("\n")
 }
 
+// section begins one. Its title stands bare: by that, man tells a page's name and synopsis.
+func (p page) section(title string) { p.WriteString(".Sh " + title + "\n") }
+
 // line writes a line of text.
 func (p page) line(s string) {
 	s = escapeRoff(s)
@@ -132,11 +135,11 @@ func (p page) prose(text string) {
 func printManual(w io.Writer, date time.Time) error {
 	p := page{bufio.NewWriter(w)}
 	fmt.Fprintf(p, ".Dd %s\n.Dt FOULCASE 1\n.Os\n", date.Format("January 2, 2006"))
-	p.macro("Sh", "NAME")
+	p.section("NAME")
 	p.WriteString(".Nm foulcase\n.Nd find misspellings in documents, those that are words too\n")
-	p.macro("Sh", "SYNOPSIS")
+	p.section("SYNOPSIS")
 	p.WriteString(".Nm\n.Ar verb\n.Op Ar flags\n.Op Ar operands\n.Nm\n.Fl -version\n")
-	p.macro("Sh", "DESCRIPTION")
+	p.section("DESCRIPTION")
 	p.prose("foulcase proofreads documents, and builds and measures the models that it does so with. It reads\n" +
 		"files and uses no network. The first word names what is to be done:")
 	p.macro("Bl", ".-tag", ".-width", ".Ds")
@@ -145,19 +148,19 @@ func printManual(w io.Writer, date time.Time) error {
 		p.line(capitalised(v.summary) + ".")
 	}
 	p.macro("El")
-	p.macro("Sh", "VERBS")
+	p.section("VERBS")
 	for _, v := range verbs() {
 		p.verb(v)
 	}
 	p.surroundings()
-	p.macro("Sh", "EXIT STATUS")
+	p.section("EXIT STATUS")
 	p.macro("Bl", ".-tag", ".-width", ".Ds")
 	for code, meaning := range []string{"Nothing was marked.", "Something was marked, or a gate was not passed.", "There was trouble, which standard error tells."} {
 		p.macro("It", strconv.Itoa(code))
 		p.line(meaning)
 	}
 	p.macro("El")
-	p.macro("Sh", "EXAMPLES")
+	p.section("EXAMPLES")
 	p.macro("Bd", ".-literal")
 	for _, v := range verbs() {
 		for _, line := range v.exampleLines() {
@@ -202,7 +205,7 @@ func isEmptyDefault(value string) bool {
 
 // surroundings describes the variables and files that foulcase goes by.
 func (p page) surroundings() {
-	p.macro("Sh", "ENVIRONMENT")
+	p.section("ENVIRONMENT")
 	p.macro("Bl", ".-tag", ".-width", ".Ds")
 	for _, k := range house.Keys() {
 		if k.Variable != "" {
@@ -217,7 +220,7 @@ func (p page) surroundings() {
 	p.macro("It", ".Ev", "SOURCE_DATE_EPOCH")
 	p.line("The date of the manual page, in seconds since 1970.")
 	p.macro("El")
-	p.macro("Sh", "FILES")
+	p.section("FILES")
 	p.prose("Settings stand in " + house.FileName + ", which is looked for from each document upwards, and in the\n" +
 		"user's folder of settings. Its keys are:")
 	p.macro("Bl", ".-tag", ".-width", ".Ds")

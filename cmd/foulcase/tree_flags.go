@@ -28,7 +28,7 @@ func (f *treeFlags) declare(fs *pflag.FlagSet) {
 	filled(fs, &f.filesFrom, "files-from", "read the documents that `FILE` lists too, a path a line; - is standard input")
 	fs.BoolVar(&f.null, "null", false, "paths in --files-from end with a NUL byte")
 	fs.BoolVar(&f.noIgnore, "no-ignore", false, "read what git ignores, too")
-	filled(fs, &f.changed, "changed", "only marks that touch lines changed since the git revision `BASE`")
+	filled(fs, &f.changed, "changed", "only marks that touch lines changed since the git revision `BASE`, or since the branch parted from it")
 	filled(fs, &f.known, "known", "do not show the marks that stand in `FILE`")
 	filled(fs, &f.writeKnown, "write-known", "write all marks to `FILE` instead of showing them; with --known, only known ones that are still there")
 }

@@ -84,6 +84,11 @@ func TestManual(t *testing.T) {
 	if !strings.HasPrefix(text, ".Dd September 9, 2001\n.Dt FOULCASE 1\n") {
 		t.Errorf("the page begins with %.60q", text)
 	}
+	for _, title := range []string{"NAME", "SYNOPSIS", "DESCRIPTION", "EXIT STATUS"} {
+		if !strings.Contains(text, "\n.Sh "+title+"\n") {
+			t.Errorf("man knows no section %s", title)
+		}
+	}
 	if _, err := exec.LookPath("mandoc"); err != nil {
 		t.Skip("mandoc is not installed")
 	}
