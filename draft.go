@@ -15,16 +15,17 @@ import (
 // document of up to a mebibyte; in a longer one Proof looks a mebibyte ahead, and a
 // draft is known whole. One goroutine uses a draft at a time.
 type Draft struct {
-	*document
-	asked   Options
-	format  text.Format
-	source  []byte
-	blocks  []*draftBlock
-	near    vicinity   // around edits not read yet
-	unread  bool       // the blocks are not those of source
-	fault   error      // of reading source
-	named   text.Names // outside the prose, when the whole was read last
-	drifted bool       // there were edits since everything was judged together
+	*document // nil while the draft rests
+	engine    *Engine
+	asked     Options
+	format    text.Format
+	source    []byte
+	blocks    []*draftBlock
+	near      vicinity   // around edits not read yet
+	unread    bool       // the blocks are not those of source
+	fault     error      // of reading source
+	named     text.Names // outside the prose, when the whole was read last
+	drifted   bool       // there were edits since everything was judged together
 }
 
 // NewDraft begins a draft with a copy of source, UTF-8. Errors are ErrFormat, and
@@ -39,16 +40,34 @@ func (e *Engine) NewDraft(source []byte, o Options) (*Draft, error) {
 		return nil, fmt.Errorf("a %s is packed and cannot be judged while it is edited; proofread its file: %w", format, ErrUnreadable)
 	}
 	return &Draft{
-		document: e.newDocument(o),
-		asked:    o,
-		format:   format,
-		source:   slices.Clone(source),
-		unread:   true,
+		engine: e,
+		asked:  o,
+		format: format,
+		source: slices.Clone(source),
+		unread: true,
 	}, nil
 }
 
+// Rest gives back what judging takes, some megabytes whatever the document; what was
+// judged is kept. The next Marks or Settle takes that again, so it is for a draft that
+// was left alone for a while.
+func (d *Draft) Rest() {
+	if d.document != nil {
+		d.engine.give(d.judge)
+	}
+	d.document = nil
+}
+
+// wake makes the draft ready to judge.
+func (d *Draft) wake() {
+	if d.document == nil {
+		d.document = d.engine.newDocument(d.asked)
+		d.countAll()
+	}
+}
+
 // Close gives back what the draft holds; it must not be used afterwards.
-func (d *Draft) Close() { d.e.give(d.judge) }
+func (d *Draft) Close() { d.Rest() }
 
 // Source is the document as it stands. It is the draft's, to be read until the
 // next Edit.
@@ -72,10 +91,8 @@ func (d *Draft) Edit(start, end int, replacement []byte) error {
 // fields aside. Sentences with marks are judged anew by the next Marks, all others
 // by the next Settle.
 func (d *Draft) SetOptions(o Options) {
-	fresh := d.e.newDocument(o)
-	fresh.recurring, d.recurring = d.recurring, fresh.recurring
-	d.e.give(d.judge)
-	d.document, d.asked, d.drifted = fresh, o, true
+	d.Rest()
+	d.asked, d.drifted = o, true
 	d.distrust(unjudged, func(s *draftSentence) bool { return len(s.kept) > 0 })
 }
 
@@ -85,6 +102,7 @@ func (d *Draft) SetOptions(o Options) {
 // marks of what was read, and an error. Progress, when not nil, is told after
 // each sentence how many of how many are judged.
 func (d *Draft) Marks(ctx context.Context, progress func(done, total int)) ([]Mark, error) {
+	d.wake()
 	d.read()
 	if err := d.judgeAll(ctx, unjudged, progress); err != nil {
 		return nil, err
@@ -95,6 +113,7 @@ func (d *Draft) Marks(ctx context.Context, progress func(done, total int)) ([]Ma
 // Settle is Marks after everything was read anew and judged together. Where it
 // is cut short by ctx, the next call goes on.
 func (d *Draft) Settle(ctx context.Context, progress func(done, total int)) ([]Mark, error) {
+	d.wake()
 	if d.drifted {
 		d.unread = true
 		d.read()

@@ -192,11 +192,16 @@ func (d *Draft) settleWords(changed ...[]*draftBlock) {
 // is of before.
 func (d *Draft) recount() {
 	d.recurring.reset()
+	d.countAll()
+	d.distrust(drifted, func(*draftSentence) bool { return true })
+}
+
+// countAll counts the words of all blocks.
+func (d *Draft) countAll() {
 	for _, b := range d.blocks {
 		d.countBlock(b, 1)
 	}
 	d.recurring.settle(d.e.lexicon)
-	d.distrust(drifted, func(*draftSentence) bool { return true })
 }
 
 // distrust lowers to a state what the judgements of some sentences are worth.

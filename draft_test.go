@@ -215,6 +215,35 @@ func TestDraftTellsOfEachSentence(t *testing.T) {
 	}
 }
 
+// TestDraftRests: a draft that rested goes on as one that did not, also where it was
+// edited meanwhile.
+func TestDraftRests(t *testing.T) {
+	d, other := draft(t, minutes, foulcase.Options{Format: "markdown"}), draft(t, minutes, foulcase.Options{Format: "markdown"})
+	d.Rest()
+	now(t, other, nil)
+	sameMarks(t, "rested before it was judged", now(t, d, nil), now(t, other, nil))
+	d.Rest()
+	d.Rest()
+	at := strings.Index(minutes, "met")
+	for _, one := range []*foulcase.Draft{d, other} {
+		if err := one.Edit(at, at, []byte("recieved and ")); err != nil {
+			t.Fatal(err)
+		}
+	}
+	judged := 0
+	marks, err := d.Marks(context.Background(), func(_, total int) { judged = total })
+	if err != nil || judged != 1 {
+		t.Errorf("%d sentences judged, error %v", judged, err)
+	}
+	sameMarks(t, "rested", marks, now(t, other, nil))
+	d.Rest()
+	settled, err := d.Settle(context.Background(), nil)
+	if err != nil {
+		t.Fatal(err)
+	}
+	sameMarks(t, "settled", settled, proof(t, string(d.Source()), foulcase.Options{Format: "markdown"}))
+}
+
 // TestDraftTakesOptions: a word that becomes a house word loses its mark at once.
 func TestDraftTakesOptions(t *testing.T) {
 	d := draft(t, "The skarrowing of the berth was done by noon. The ship recieved a pilot.", foulcase.Options{})

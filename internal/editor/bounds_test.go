@@ -7,6 +7,8 @@ import (
 	"strings"
 	"sync/atomic"
 	"testing"
+	"testing/synctest"
+	"time"
 	"weak"
 
 	"example.org/foulcase"
@@ -70,6 +72,37 @@ func TestSettlingYields(t *testing.T) {
 		t.Errorf("%d pauses: the settling went on to its end first", n)
 	}
 	checkDiagnostics(t, k.published(note, 2), "0:4-0:10 nonword anchor") // it goes on later
+}
+
+// TestIdleDocumentsRest: a document that is left alone holds little, and is judged as
+// before when that ends.
+func TestIdleDocumentsRest(t *testing.T) {
+	engine()
+	synctest.Test(t, func(t *testing.T) {
+		k := start(t, Config{}, "{}")
+		k.open(note, "plaintext", "The ancher held.")
+		k.published(note, 1)
+		resting := func() bool {
+			answer := make(chan bool)
+			d := k.server.find(note)
+			d.inbox.put(task{run: func() { answer <- d.resting }})
+			return <-answer
+		}
+		time.Sleep(restPause / 2)
+		if resting() {
+			t.Error("rests too early")
+		}
+		time.Sleep(2 * restPause)
+		if !resting() {
+			t.Error("does not rest")
+		}
+		k.change(note, 2, between(0, 0, 0, 0), "Untill noon. ")
+		checkDiagnostics(t, k.published(note, 2), "0:0-0:6 nonword Until", "0:17-0:23 nonword anchor")
+		if resting() {
+			t.Error("rests while it is written in")
+		}
+		k.server.Close()
+	})
 }
 
 // TestErrorsWhileTyping: half a record is no news for the user.

@@ -33,6 +33,7 @@ type document struct {
 	stale     bool          // the draft changed since marks were found
 	unsettled bool          // everything is to be judged anew some time
 	judged    bool          // once
+	resting   bool          // the draft holds nothing that only judging needs
 	took      time.Duration // to judge an edit, the last time
 	opening   *progress     // of the first judgement; nil when that is not under way
 
@@ -65,6 +66,11 @@ func (d *document) run() {
 		case d.unsettled:
 			if d.wait(time.After(settlePause)) {
 				d.rejudge()
+			}
+		case d.draft != nil && !d.resting:
+			if d.wait(time.After(restPause)) {
+				d.draft.Rest()
+				d.resting = true
 			}
 		default:
 			d.wait(nil)
@@ -103,6 +109,9 @@ const (
 	// settlePause is how long nothing must have been done before everything is read
 	// anew, during which an edit has to wait.
 	settlePause = 500 * time.Millisecond
+	// restPause is how long nothing must have been done before the draft gives back what
+	// judging takes: many documents may be open, and few are worked on.
+	restPause = 30 * time.Second
 )
 
 // pause is how long the writer must not have typed before the document is judged: as
@@ -151,6 +160,7 @@ func (d *document) look(ctx context.Context, find func(*foulcase.Draft, context.
 	var marks []foulcase.Mark
 	var err error
 	if d.draft != nil {
+		d.resting = false
 		marks, err = find(d.draft, ctx, d.showing())
 	}
 	ended := ctx.Err() != nil
