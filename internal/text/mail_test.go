@@ -30,6 +30,7 @@ func TestMail(t *testing.T) {
 		{"not text", "Content-Type: application/json\n\nthe fog\n", nil},
 		{"digest", "Content-Type: multipart/digest; boundary=a\n\n--a\n\nSubject: fog\n\nice\n", nil},
 		{"encoded subject", "Subject: =?utf-8?Q?Caf=C3=A9?= =?ISO-8859-1?B?6Q==?= at =?koi8-r?Q?=C1?= sea\n", []string{"Caféé at \uFFFC sea"}},
+		{"quoted subject", "Subject: Re: =?utf-8?Q?The_caf=C3=A9?=\n =?utf-8?q?s_=3D?= now", []string{"The cafés = now"}},
 		{"no end of a part", "Content-Type: multipart/mixed; boundary=a\n\n--a\n\nthe fog\n--ab\nice", []string{"the fog", "--ab", "ice"}},
 	})
 }
@@ -44,7 +45,10 @@ func TestMailSpelling(t *testing.T) {
 		{"Content-Type: text/html; charset=utf-8\nContent-Transfer-Encoding: quoted-printable", "<p>the fog", "fog", "é<", "=C3=A9&lt;"},
 		{"Subject: the tide", "", "tide", "ice", "ice"},
 		{"Subject: the tide", "", "tide", "é", "-"},
-		{"Subject: the tide =?utf-8?q?x?=", "", "tide", "ice", "-"},
+		{"Subject: the tide =?utf-8?q?x?=", "", "tide", "ice", "ice"},
+		{"Subject: =?UTF-8?Q?Caf=C3=A9_the_tide?=", "", "tide", "ice", "ice"},
+		{"Subject: =?utf-8?q?the_tide?=", "", "tide", "the ice", "-"},
+		{"Subject: the tide =?utf-8?b?eA==?=", "", "tide", "ice", "-"},
 	} {
 		got, ok, _ := spelled(t, c.head+"\n\n"+c.body, text.Mail, c.word, c.other)
 		if !ok {
