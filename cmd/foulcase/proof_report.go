@@ -21,7 +21,7 @@ func (p *proofreader) stream(c *console, in input) (int, error) {
 	if c.out.err != nil {
 		return n, c.out.err
 	}
-	return n, w.Close()
+	return n, w.Close(!c.troubled)
 }
 
 // finished is the page of one document.
@@ -62,5 +62,5 @@ func (p *proofreader) reportAll(c *console) (int, error) {
 			c.complain(page.err)
 		}
 	}
-	return total, w.Close()
+	return total, w.Close(!c.troubled)
 }

@@ -19,7 +19,7 @@ func (annotations) Page(w io.Writer, d Document) Page {
 		if m.Grade == foulcase.GradeMark {
 			level = "warning"
 		}
-		place := "file=" + property.Replace(filepath.ToSlash(d.Path))
+		place := "file=" + property.Replace(filepath.ToSlash(filepath.Clean(d.Path)))
 		if m.Part == "" {
 			place += linesOf(m)
 		}

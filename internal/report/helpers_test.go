@@ -59,7 +59,7 @@ func written(t testing.TB, name string, documents ...Document) string {
 			t.Fatal(err)
 		}
 	}
-	if err := w.Close(); err != nil {
+	if err := w.Close(true); err != nil {
 		t.Fatal(err)
 	}
 	return out.String()

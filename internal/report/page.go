@@ -60,9 +60,12 @@ func (p *page) Head(w io.Writer) error {
 }
 
 // Tail writes the table of contents; the style sheet puts it beside the texts.
-func (p *page) Tail(w io.Writer) error {
+func (p *page) Tail(w io.Writer, complete bool) error {
 	slices.SortFunc(p.contents, func(a, b entry) int { return a.Number - b.Number })
-	return p.templates.ExecuteTemplate(w, "tail", p.contents)
+	return p.templates.ExecuteTemplate(w, "tail", struct {
+		Entries  []entry
+		Complete bool
+	}{p.contents, complete})
 }
 
 func (p *page) Page(w io.Writer, d Document) Page {

@@ -22,8 +22,9 @@ type Form interface {
 	Page(w io.Writer, d Document) Page
 	// Between is what parts two pages that are not empty.
 	Between() string
-	// Tail writes what stands after the last page.
-	Tail(w io.Writer) error
+	// Tail writes what stands after the last page; complete tells that every document
+	// could be read, to its end.
+	Tail(w io.Writer, complete bool) error
 	// Whole tells that pages want Document.Source and hold the document in memory.
 	Whole() bool
 }
@@ -86,10 +87,10 @@ func New(name string, s Settings) (Form, error) {
 // bare is a form of nothing but pages, made from a stream.
 type bare struct{}
 
-func (bare) Head(io.Writer) error { return nil }
-func (bare) Tail(io.Writer) error { return nil }
-func (bare) Between() string      { return "" }
-func (bare) Whole() bool          { return false }
+func (bare) Head(io.Writer) error       { return nil }
+func (bare) Tail(io.Writer, bool) error { return nil }
+func (bare) Between() string            { return "" }
+func (bare) Whole() bool                { return false }
 
 // pageFunc is a page that prints each mark by itself.
 type pageFunc func(m foulcase.Mark) error

@@ -40,13 +40,14 @@ func (s sarif) Head(w io.Writer) error {
 	if err != nil {
 		return err
 	}
-	// The results are the last member: they follow as they are found.
+	// The results follow as they are found, and how the run went after them.
 	_, err = fmt.Fprintf(w, "{\"version\":\"2.1.0\",\"$schema\":%q,\"runs\":[%s,\"results\":[\n", sarifSchema, run[:len(run)-1])
 	return err
 }
 
-func (sarif) Tail(w io.Writer) error {
-	_, err := io.WriteString(w, "\n]}]}\n")
+// Tail says whether the run went well: where it did not, a missing result means nothing.
+func (sarif) Tail(w io.Writer, complete bool) error {
+	_, err := fmt.Fprintf(w, "\n],\"invocations\":[{\"executionSuccessful\":%t}]}]}\n", complete)
 	return err
 }
 

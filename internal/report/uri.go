@@ -9,7 +9,7 @@ import (
 // absolute ones get the scheme "file".
 func uriOf(path string) (uri string, absolute bool) {
 	absolute = filepath.IsAbs(path)
-	slashed := filepath.ToSlash(path)
+	slashed := filepath.ToSlash(filepath.Clean(path))
 	const plain = "abcdefghijklmnopqrstuvwxyzABCDEFGHIJKLMNOPQRSTUVWXYZ0123456789-._~/"
 	const hex = "0123456789ABCDEF"
 	var b strings.Builder

@@ -28,5 +28,5 @@ func (w *Writer) Add(page []byte) error {
 	return err
 }
 
-// Close ends the report.
-func (w *Writer) Close() error { return w.form.Tail(w.w) }
+// Close ends the report; complete tells that every document could be read, to its end.
+func (w *Writer) Close(complete bool) error { return w.form.Tail(w.w, complete) }
