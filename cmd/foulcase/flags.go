@@ -61,16 +61,19 @@ func jobsFlag(fs *pflag.FlagSet) *count {
 	return &n
 }
 
-// count is a flag that takes a whole number from 1 on.
+// count is a flag that takes a whole number from 1 to maxJobs.
 type count int
+
+// maxJobs is how many files, at most, are open at once, whatever is asked for.
+const maxJobs = 256
 
 func (n *count) String() string { return strconv.Itoa(int(*n)) }
 func (n *count) Type() string   { return "N" }
 
 func (n *count) Set(s string) error {
 	v, err := strconv.Atoi(s)
-	if err != nil || v < 1 {
-		return fmt.Errorf("want a whole number from 1 on")
+	if err != nil || v < 1 || v > maxJobs {
+		return fmt.Errorf("want a whole number from 1 to %d", maxJobs)
 	}
 	*n = count(v)
 	return nil
