@@ -169,6 +169,7 @@ func TestFolders(t *testing.T) {
 	check("file:///elsewhere/a.txt", "/elsewhere/a.txt")
 	k.notify("workspace/didChangeWorkspaceFolders", `{"event":{"added":[{"uri":"file:///logs","name":"logs"}],"removed":[{"uri":"file:///papers","name":"papers"}]}}`)
 	check("untitled:Untitled-2", "/logs/Untitled-2")
+	check("untitled:%2E%2E%2Fabove", "/logs/above")
 	k.notify("workspace/didChangeWorkspaceFolders", `{"event":{"added":[],"removed":[{"uri":"file:///logs","name":"logs"}]}}`)
 	check("untitled:b%20c", "b c")
 }

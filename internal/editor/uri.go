@@ -53,9 +53,9 @@ func nameOf(uri string) string {
 		last = opaque
 	}
 	if name, ok := unescape(last); ok {
-		return name
+		last = name
 	}
-	return last
+	return path.Base(filepath.ToSlash(last))
 }
 
 const hexDigits = "0123456789ABCDEF"
