@@ -102,10 +102,10 @@ func (m *markdown) finish(n ast.Node) {
 
 // inlines takes the prose of the inline nodes of n.
 func (m *markdown) inlines(n ast.Node) {
-	for c := n.FirstChild(); c != nil; c = c.NextSibling() {
-		switch c := c.(type) {
+	for n := n.FirstChild(); n != nil; n = n.NextSibling() {
+		switch c := n.(type) {
 		case *ast.Text:
-			m.text(c)
+			n = m.text(c)
 		case *ast.CodeSpan:
 			m.codeSpan(c)
 		case *ast.AutoLink:
@@ -122,11 +122,13 @@ func (m *markdown) inlines(n ast.Node) {
 	}
 }
 
-// text takes a text node: its bytes less escapes and entities, then the line
-// break after it. A hard break ends the block unless the next line goes on in
-// lower case.
-func (m *markdown) text(t *ast.Text) {
-	from, to := m.base+t.Segment.Start, m.base+t.Segment.Stop
+// text takes a text node and those that it goes on in: their bytes less escapes
+// and entities, then the line break after them. A hard break ends the block unless
+// the next line goes on in lower case. It returns the last node.
+func (m *markdown) text(t *ast.Text) ast.Node {
+	from := m.base + t.Segment.Start
+	t = lastOfRun(t)
+	to := m.base + t.Segment.Stop
 	if t.IsRaw() {
 		m.prose.verbatim(from, to)
 	} else {
@@ -143,6 +145,20 @@ func (m *markdown) text(t *ast.Text) {
 	case t.HardLineBreak() || t.SoftLineBreak():
 		m.prose.lineBreak(to)
 	}
+	return t
+}
+
+// lastOfRun returns the last text node that follows t at once, on the same line:
+// a mark that turned out to be no markup parts two.
+func lastOfRun(t *ast.Text) *ast.Text {
+	for !t.SoftLineBreak() && !t.HardLineBreak() {
+		next, ok := t.NextSibling().(*ast.Text)
+		if !ok || next.Segment.Start != t.Segment.Stop || next.IsRaw() != t.IsRaw() {
+			break
+		}
+		t = next
+	}
+	return t
 }
 
 // decode is resolve, which also leaves out attributes and has a placeholder for

@@ -25,13 +25,33 @@ func attributeList(b []byte) int {
 	if end < 2 || b[0] != '{' {
 		return 0
 	}
-	for item := range bytes.FieldsSeq(bytes.TrimPrefix(b[1:end], []byte(":"))) {
-		switch i := bytes.IndexByte(item, '='); {
-		case (item[0] == '#' || item[0] == '.') && len(item) > 1:
-		case i > 0 && all(item[:i], cLetter|cHyphen):
-		default:
+	rest := bytes.TrimSpace(bytes.TrimPrefix(b[1:end], []byte(":")))
+	for len(rest) > 0 {
+		n := attributeItem(rest)
+		if n == 0 {
 			return 0
 		}
+		rest = bytes.TrimSpace(rest[n:])
 	}
 	return end + 1
+}
+
+// attributeItem returns the length of the first of a list of attributes, 0 when
+// it is none.
+func attributeItem(b []byte) int {
+	n := bytes.IndexAny(b, " \t\n")
+	if n < 0 {
+		n = len(b)
+	}
+	switch i := bytes.IndexByte(b[:n], '='); {
+	case (b[0] == '#' || b[0] == '.') && n > 1:
+		return n
+	case i <= 0 || !all(b[:i], cLetter|cHyphen):
+		return 0
+	case i+1 < n && b[i+1] == '"':
+		if k := bytes.IndexByte(b[i+2:], '"'); k >= 0 {
+			return i + 2 + k + 1
+		}
+	}
+	return n
 }
