@@ -33,12 +33,12 @@ const (
 func Adapt(m *Model, pairs []Pair, strength float64) (*Model, AdaptReport, error) {
 	a := &adapter{fitter: new(fitter), tables: unpack(m)}
 	a.take(pairs)
-	if len(a.pairs) == 0 {
-		return nil, AdaptReport{}, ErrNoPairs
-	}
 	report := AdaptReport{Pairs: a.report.Pairs, Spaced: a.report.Spaced}
-	if math.IsInf(strength, 1) {
+	switch {
+	case math.IsInf(strength, 1):
 		return m, report, nil
+	case len(a.pairs) == 0:
+		return nil, report, ErrNoPairs
 	}
 	report.Rules = a.arrange(m, strength)
 	for range adaptRounds {

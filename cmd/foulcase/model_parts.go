@@ -34,13 +34,12 @@ const (
 type builder struct {
 	parts    *modelParts
 	progress *progress
-	sections *modelfile.Writer
-	held     map[string][]byte // what sections has so far
+	held     map[string][]byte // the sections so far
 }
 
 // buildModel makes the parts that were asked for and writes them as one file.
 func buildModel(ctx context.Context, c *console, p *modelParts) error {
-	b := &builder{p, c.progress, modelfile.NewWriter(), map[string][]byte{}}
+	b := &builder{p, c.progress, map[string][]byte{}}
 	if err := b.takeOver(); err != nil {
 		return err
 	}
@@ -84,14 +83,24 @@ var sectionOrder = []string{
 }
 
 func (b *builder) write() error {
+	w, err := b.writer()
+	if err != nil {
+		return err
+	}
+	return w.WriteFile(b.parts.output)
+}
+
+// writer has the parts made so far in order.
+func (b *builder) writer() (*modelfile.Writer, error) {
+	w := modelfile.NewWriter()
 	for _, name := range sectionOrder {
 		if body, ok := b.held[name]; ok {
-			if err := b.sections.Set(name, body); err != nil {
-				return err
+			if err := w.Set(name, body); err != nil {
+				return nil, err
 			}
 		}
 	}
-	return b.sections.WriteFile(b.parts.output)
+	return w, nil
 }
 
 // takeOver copies the sections of other model files.

@@ -40,6 +40,8 @@ func verbs() []verb {
 		editorVerb(),
 		lmTrainVerb(),
 		lmMeasureVerb(),
+		channelFitVerb(),
+		channelShowVerb(),
 		modelBuildVerb(),
 		modelCalibrateVerb(),
 		modelShowVerb(),
