@@ -55,11 +55,12 @@ func (f *editorFlags) run(c *console, operands []string) (status, error) {
 		return trouble, err
 	}
 	defer e.Close()
+	settings := f.engine.settings()
 	err = editor.Serve(context.Background(), c.in, c.raw, editor.Config{
-		Engine:  e,
-		Version: programVersion(),
-		// A new resolver reads every file anew.
-		Settings: func(path string) (editor.Settings, error) { return f.engine.settings().For(path) },
+		Engine:   e,
+		Version:  programVersion(),
+		Settings: func(path string) (editor.Settings, error) { return settings.For(path) },
+		Forget:   settings.Forget,
 		Alive:    isAlive,
 	})
 	if errors.Is(err, editor.ErrNoShutdown) {

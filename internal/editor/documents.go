@@ -17,6 +17,9 @@ func (s *Server) didOpen(params json.RawMessage) *failure {
 	}
 	d := &document{s: s, uri: item.URI, path: s.pathFor(item.URI), language: item.LanguageID, version: item.Version, inbox: newMailbox()}
 	d.lines.unit = s.unit
+	if !s.watches() { // nobody else tells that files changed
+		s.forget()
+	}
 	s.mu.Lock()
 	defer s.mu.Unlock()
 	if s.closed {
@@ -59,6 +62,7 @@ func (s *Server) didSave(params json.RawMessage) *failure {
 		return f
 	}
 	if name, ok := pathOf(p.TextDocument.URI); ok && s.isWatched(name) {
+		s.forget()
 		s.reload(true)
 	}
 	return s.to(p.TextDocument.URI, func(d *document) {

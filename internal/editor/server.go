@@ -15,10 +15,13 @@ import (
 // Config is what a Server works with.
 type Config struct {
 	Engine *foulcase.Engine
-	// Settings loads what holds for the document at path, anew at each call; nil when
-	// there are no files of settings. It is called by several goroutines at once.
+	// Settings loads what holds for the document at path; nil when there are no files of
+	// settings. It is called by several goroutines at once, and what it returns may be
+	// that of other documents too.
 	Settings func(path string) (Settings, error)
-	Version  string // of the program, for the client to show
+	// Forget has Settings read its files anew; nil when it does so at each call.
+	Forget  func()
+	Version string // of the program, for the client to show
 	// Alive tells whether a process is alive; nil where nobody can know. A server whose
 	// client has died ends.
 	Alive func(pid int) bool

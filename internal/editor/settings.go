@@ -12,8 +12,8 @@ import (
 	"example.org/foulcase/internal/text"
 )
 
-// Settings are what holds for a document by files, see house.Settings. They are used
-// by one goroutine at a time.
+// Settings are what holds for a document by files, see house.Settings. They are safe for
+// concurrent use where documents share them.
 type Settings interface {
 	Options(path string) foulcase.Options
 	Stands(path string, m foulcase.Mark) bool

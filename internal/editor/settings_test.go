@@ -92,6 +92,30 @@ func TestWatchedFiles(t *testing.T) {
 	checkDiagnostics(t, k.published(note, 1), "0:4-0:10 nonword anchor")
 }
 
+// TestForget: files of settings are read anew when one of them changes, and not for each
+// document or word.
+func TestForget(t *testing.T) {
+	m := &memory{}
+	forgotten := 0
+	k := start(t, Config{Settings: m.load, Forget: func() { forgotten++ }}, `{"workspace":{"didChangeWatchedFiles":{"dynamicRegistration":true}}}`)
+	k.open(note, "plaintext", "The ancher held.")
+	k.published(note, 1)
+	k.request("workspace/executeCommand", `{"command":"foulcase.addWord","arguments":[{"uri":"`+note+`","word":"ancher"}]}`)
+	checkDiagnostics(t, k.published(note, 1))
+	if forgotten != 0 {
+		t.Errorf("read anew %d times", forgotten)
+	}
+	k.notify("workspace/didChangeWatchedFiles", `{"changes":[]}`)
+	if forgotten != 1 {
+		t.Errorf("read anew %d times after a file changed", forgotten)
+	}
+	k.open("file:///papers/foulcase.toml", "toml", "") // which nobody has read yet
+	k.notify("textDocument/didSave", naming("file:///papers/foulcase.toml"))
+	if forgotten != 2 {
+		t.Errorf("read anew %d times after a file of settings was saved", forgotten)
+	}
+}
+
 func TestSettingsThatCannotBeRead(t *testing.T) {
 	k := start(t, Config{Settings: func(string) (Settings, error) { return nil, errors.New("foulcase.toml:3:1: no key") }}, "{}")
 	k.open(note, "plaintext", "The ancher held.")

@@ -57,16 +57,24 @@ func (s *Server) watcher(name string) watcher {
 func (s *Server) isWatched(name string) bool {
 	s.mu.Lock()
 	defer s.mu.Unlock()
-	return s.watched[filepath.Clean(name)]
+	return s.watched[filepath.Clean(name)] || filepath.Base(name) == house.FileName // made just now, maybe
 }
 
 // didChangeWatchedFiles: settings are read anew, whichever file it was.
 func (s *Server) didChangeWatchedFiles(json.RawMessage) *failure {
+	s.forget()
 	s.reload(true)
 	return nil
 }
 
-// reload has every document's settings read anew and its marks found again, where it
+// forget has the files of settings read anew.
+func (s *Server) forget() {
+	if s.config.Forget != nil {
+		s.config.Forget()
+	}
+}
+
+// reload has every document's settings looked up again and its marks found, where it
 // has some and, if all is wanted, everywhere.
 func (s *Server) reload(all bool) {
 	s.mu.Lock()
