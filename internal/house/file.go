@@ -1,6 +1,7 @@
 package house
 
 import (
+	"bytes"
 	"errors"
 	"fmt"
 	"io"
@@ -17,6 +18,8 @@ const (
 	// maxValues is the most values that a file may give, those of lists and tables
 	// counted one by one.
 	maxValues = 10_000
+	// byteOrderMark stands at the start of some editors' files.
+	byteOrderMark = "\uFEFF"
 )
 
 // Value is one value of a setting, and who says so. Settings of several values have
@@ -50,6 +53,7 @@ func parse(path string, data []byte) ([]Value, error) {
 	if len(data) > maxFile {
 		return nil, fmt.Errorf("%s: longer than %d bytes, which is no file of settings; is it the right file?", path, maxFile)
 	}
+	data = bytes.TrimPrefix(data, []byte(byteOrderMark))
 	var any map[string]any
 	if err := toml.Unmarshal(data, &any); err != nil { // is it TOML, with no key twice
 		if bad := (*toml.DecodeError)(nil); errors.As(err, &bad) {

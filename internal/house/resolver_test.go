@@ -234,3 +234,18 @@ func TestProjectsNamePlainFiles(t *testing.T) {
 		}
 	}
 }
+
+func TestFilesWithByteOrderMarks(t *testing.T) {
+	own(t)
+	dir := t.TempDir()
+	file := write(t, dir, FileName, byteOrderMark+"house = ['words.txt']\r\nstets = 'stets.jsonl'\r\n")
+	write(t, dir, "words.txt", byteOrderMark+"Tolva\r\n")
+	write(t, dir, "stets.jsonl", byteOrderMark+`{"decision":"stet","scope":"everywhere","observed":"Lisk"}`+"\r\n")
+	s, err := Load(file)
+	if err != nil {
+		t.Fatal(err)
+	}
+	if !s.Stands("log.txt", foulcase.Mark{Observed: "Lisk"}) || s.Options("log.txt").House == nil {
+		t.Error("what the files say is not heeded")
+	}
+}

@@ -46,7 +46,7 @@ func openBook(path string) (*book, error) {
 
 // read takes the decisions of a file that was read.
 func (b *book) read(data []byte) error {
-	lines := bufio.NewScanner(bytes.NewReader(data))
+	lines := bufio.NewScanner(bytes.NewReader(bytes.TrimPrefix(data, []byte(byteOrderMark))))
 	lines.Buffer(nil, maxDecision)
 	n := 0
 	for lines.Scan() {
