@@ -18,6 +18,7 @@ type language struct {
 	regex      bool      // where an operand may stand, a slash begins a regular expression
 	hereMark   string    // begins a here-document, whose lines are left out
 	quotes     []string  // begin literals whose delimiters the writer chose, longer words first; left out
+	raw        bool      // an r before a string says that backslashes stand for themselves
 	question   bool      // a question mark before a sign makes a character of it
 	island     [2]string // code stands between these alone
 }
@@ -61,6 +62,7 @@ var (
 	single     = enclosure{open: "'", close: "'", escape: '\\'}
 	apartOne   = enclosure{open: "'", close: "'", doubled: true, apart: true}
 	apartTwo   = enclosure{open: `"`, close: `"`, escape: '\\', apart: true}
+	singleJS   = enclosure{open: "'", close: "'", escape: '\\', apart: true} // "don't" stands in elements between code
 	char       = enclosure{role: character, open: "'"}
 	doubleLong = enclosure{open: `"`, close: `"`, escape: '\\', lines: true}
 	singleLong = enclosure{open: "'", close: "'", escape: '\\', lines: true}
@@ -108,7 +110,7 @@ func languages() []language {
 		{name: "haskell", title: "Haskell", extensions: []string{".hs"}, line: []string{"--"}, enclosures: []enclosure{{role: remark, open: "{-", close: "-}", lines: true, nested: true}, double, char}},
 		{name: "ini", title: "INI", extensions: []string{".ini", ".cfg", ".conf", ".properties"}, names: []string{".editorconfig"}, ids: []string{"ini", "properties"}, line: []string{"#", ";"}, fresh: true},
 		{name: "java", title: "Java", extensions: []string{".java"}, line: []string{"//"}, enclosures: []enclosure{cBlock, triple, double, char}},
-		{name: "javascript", title: "JavaScript", extensions: []string{".js", ".mjs", ".cjs", ".jsx"}, ids: []string{"javascript", "javascriptreact"}, line: []string{"//"}, regex: true, enclosures: []enclosure{cBlock, double, single, template}},
+		{name: "javascript", title: "JavaScript", extensions: []string{".js", ".mjs", ".cjs", ".jsx"}, ids: []string{"javascript", "javascriptreact"}, line: []string{"//"}, regex: true, enclosures: []enclosure{cBlock, double, singleJS, template}},
 		{name: "julia", title: "Julia", extensions: []string{".jl"}, line: []string{"#"}, enclosures: []enclosure{{role: remark, open: "#=", close: "=#", lines: true, nested: true}, tripleDoc, doubleLong, char}},
 		{name: "kotlin", title: "Kotlin", extensions: []string{".kt", ".kts"}, line: []string{"//"}, enclosures: []enclosure{nestedC, {open: `"""`, close: `"""`, lines: true, inner: "${"}, dollarIn, char}},
 		{name: "lisp", title: "Lisp", extensions: []string{".el", ".lisp", ".scm"}, line: []string{";"}, backslash: true, question: true, enclosures: []enclosure{{role: remark, open: "#|", close: "|#", lines: true, nested: true}, doubleLong}},
@@ -135,7 +137,7 @@ func languages() []language {
 			{open: "'", close: "'", doubled: true, lines: true},
 		}},
 		{name: "proto", title: "Protocol Buffers", extensions: []string{".proto"}, ids: []string{"proto", "proto3"}, line: []string{"//"}, enclosures: []enclosure{cBlock, double, single}},
-		{name: "python", title: "Python", extensions: []string{".py", ".pyi", ".pyw"}, line: []string{"#"}, enclosures: []enclosure{tripleDoc, tripleDoc1, double, single}},
+		{name: "python", title: "Python", extensions: []string{".py", ".pyi", ".pyw"}, line: []string{"#"}, raw: true, enclosures: []enclosure{tripleDoc, tripleDoc1, double, single}},
 		{name: "r", title: "R", extensions: []string{".r"}, line: []string{"#"}, enclosures: []enclosure{doubleLong, singleLong, {role: passed, open: "`", close: "`"}}},
 		{name: "ruby", title: "Ruby", extensions: []string{".rb", ".rake", ".gemspec"}, names: []string{"rakefile", "gemfile"}, line: []string{"#"}, spaced: true, regex: true, hereMark: "<<", quotes: []string{"%q", "%Q", "%w", "%W", "%i", "%I", "%r", "%"}, question: true, enclosures: []enclosure{
 			{role: remark, open: "=begin", close: "=end", fresh: true, lines: true}, hashIn, singleLong,
@@ -164,7 +166,7 @@ func languages() []language {
 		}},
 		{name: "terraform", title: "Terraform and HCL", extensions: []string{".tf", ".tfvars", ".hcl"}, ids: []string{"terraform", "terraform-vars", "hcl"}, line: []string{"#", "//"}, hereMark: "<<", enclosures: []enclosure{cBlock, dollarIn}},
 		{name: "toml", title: "TOML", extensions: []string{".toml"}, line: []string{"#"}, enclosures: []enclosure{triple, tripleRaw1, double, {open: "'", close: "'"}}},
-		{name: "typescript", title: "TypeScript", extensions: []string{".ts", ".tsx", ".mts", ".cts"}, ids: []string{"typescript", "typescriptreact"}, line: []string{"//"}, regex: true, enclosures: []enclosure{cBlock, double, single, template}},
+		{name: "typescript", title: "TypeScript", extensions: []string{".ts", ".tsx", ".mts", ".cts"}, ids: []string{"typescript", "typescriptreact"}, line: []string{"//"}, regex: true, enclosures: []enclosure{cBlock, double, singleJS, template}},
 		{name: "yaml", title: "YAML (strings in quotation marks)", extensions: []string{".yaml", ".yml"}, line: []string{"#"}, spaced: true, enclosures: []enclosure{apartTwo, apartOne}},
 		{name: "zig", title: "Zig", extensions: []string{".zig"}, line: []string{"//"}, enclosures: []enclosure{{role: passed, open: `\\`, close: "\n"}, double, char}},
 	}

@@ -152,6 +152,9 @@ func (s *codeScanner) enclosed() bool {
 			if e.role == docstring && !p.first || e.role == docstring && strings.IndexByte("([{,=+%\\", s.last) >= 0 && s.last != 0 {
 				p.in = &enclosure{open: e.open, close: e.close, escape: e.escape, lines: true}
 			}
+			if s.raw && p.in.role == quoted && rawPrefix(s.source, s.pos) {
+				p.in = &enclosure{open: e.open, close: e.close, lines: e.lines}
+			}
 			s.take(p)
 		}
 		if s.pos = p.end; e.role != remark {
@@ -251,6 +254,16 @@ func charLength(source []byte, at int) int {
 		return 0
 	}
 	return n + 2
+}
+
+// rawPrefix reports that the letters right before the string at source[at:] are a
+// prefix with an r.
+func rawPrefix(source []byte, at int) bool {
+	from := at
+	for from > 0 && at-from < 3 && alnumByte(source[from-1]) {
+		from--
+	}
+	return at-from < 3 && bytes.ContainsAny(source[from:at], "rR")
 }
 
 func lineStart(source []byte, at int) bool {

@@ -48,6 +48,8 @@ func TestComments(t *testing.T) {
 		{"chosen delimiters of Ruby", "ruby", "a = %w[a 'b] + %(don't \"go) # The pilot\nb = c % 2; d = ?\" # boards\n", "The pilot|boards"},
 		{"chosen delimiters not closed", "perl", "$a = q{don;\n# The pilot boards\n", "The pilot boards"},
 		{"characters with question marks", "lisp", "(list ?\" ?; ?\\\") ; The pilot\n", "The pilot"},
+		{"raw strings", "python", "a = r'the \\d pilot boards', Rb\"the C:\\new pilot boards\", for_'the pilot\\nboards'\n", "the pilot\nboards"},
+		{"text of elements", "typescript", "a = <p>Don't board, it's late</p>; b = 'the pilot boards';\n", "the pilot boards"},
 		{"not closed", "c", "int a; /* The pilot\n", ""},
 		{"a string that its line does not close", "javascript", "p = <p>Don't</p> // lost\n// Then wait.\n", "Then wait."},
 	} {
