@@ -45,8 +45,10 @@ func TestDraftOfEachFormat(t *testing.T) {
 	}
 }
 
-// typeInto types at random into a document, a few edits between two looks at the marks.
+// typeInto types at random into a document, a few edits between two looks at the marks,
+// and in the end takes all of it out and puts it back.
 func typeInto(t *testing.T, rng *rand.Rand, format, document string, typed []string) {
+	whole := document
 	o := foulcase.Options{Format: format}
 	d := draft(t, document, o)
 	rounds := 60
@@ -73,6 +75,15 @@ func typeInto(t *testing.T, rng *rand.Rand, format, document string, typed []str
 			}
 			sameMarks(t, format, marks, want)
 		}
+	}
+	for _, all := range []string{"", whole} {
+		if err := d.Edit(0, len(document), []byte(all)); err != nil {
+			t.Fatal(err)
+		}
+		document = all
+		want, _ := proofed(document, o)
+		marks, _ := d.Settle(context.Background(), nil)
+		sameMarks(t, format, marks, want)
 	}
 }
 
