@@ -18,6 +18,10 @@ var insteadOf = regexp.MustCompile(`\s*,\s+not\s+`)
 // maxPhrase is the most words of either side of a preference.
 const maxPhrase = 4
 
+// maxAlike is the most unwanted forms that begin with the same word: wherever that
+// stands in a document, all of them are tried.
+const maxAlike = 200
+
 // entries gathers the entries of house lists and holds them against each other.
 type entries struct {
 	preferred preferences
@@ -62,6 +66,9 @@ func (e *entries) add(written string, instead []string, place string) error {
 		p, err := newPreference(written, unwanted, place)
 		if err != nil {
 			return err
+		}
+		if first := p.bad[0]; len(e.preferred[first.key]) == maxAlike {
+			return fmt.Errorf("more than %d forms not to write begin with %q; leave some out", maxAlike, first.written)
 		}
 		if other := e.preferred.add(p); other != nil {
 			return fmt.Errorf("%q is to be written %q here, but %q by %s; keep one of the two", unwanted, written, other.written, other.place)

@@ -92,6 +92,21 @@ func TestHousePreferencesThatContradict(t *testing.T) {
 	}
 }
 
+func TestHousePreferencesThatBeginAlike(t *testing.T) {
+	var list strings.Builder
+	for i := range maxAlike {
+		fmt.Fprintf(&list, "quay %d, not key %d\n", i, i)
+	}
+	if _, err := ReadHouse("list", strings.NewReader(list.String())); err != nil {
+		t.Error(err)
+	}
+	list.WriteString("quay, not key")
+	want := fmt.Sprintf(`list:%d: more than %d forms not to write begin with "key"`, maxAlike+1, maxAlike)
+	if _, err := ReadHouse("list", strings.NewReader(list.String())); err == nil || !strings.HasPrefix(err.Error(), want) {
+		t.Errorf("error %v, want %s", err, want)
+	}
+}
+
 func TestHouseListsAreHeldAgainstEachOther(t *testing.T) {
 	_, err := ReadHouseLists(HouseList{"a.txt", strings.NewReader("\nquay, not key")}, HouseList{"b.txt", strings.NewReader("key")})
 	if err == nil || !strings.HasPrefix(err.Error(), "b.txt:1: ") || !strings.Contains(err.Error(), "a.txt:2") {

@@ -55,23 +55,26 @@ func (ps preferences) add(p *preference) (other *preference) {
 			return q
 		}
 	}
-	ps[key] = append(ps[key], p)
-	slices.SortStableFunc(ps[key], func(a, b *preference) int {
-		return cmp.Or(cmp.Compare(len(b.bad), len(a.bad)), -cmp.Compare(boolean(a.exact), boolean(b.exact)))
-	})
+	at := slices.IndexFunc(ps[key], p.goesBefore)
+	if at < 0 {
+		at = len(ps[key])
+	}
+	ps[key] = slices.Insert(ps[key], at, p)
 	return nil
+}
+
+// goesBefore tells whether a preference is tried before another that begins alike: the
+// longer is, and of two as long the one for exact capitals.
+func (p *preference) goesBefore(q *preference) bool {
+	if len(p.bad) != len(q.bad) {
+		return len(p.bad) > len(q.bad)
+	}
+	return p.exact && !q.exact
 }
 
 // same reports whether two phrases are read alike, capitals aside.
 func (a phrase) same(b phrase) bool {
 	return slices.EqualFunc(a, b, func(u, v unit) bool { return u.key == v.key && u.glued == v.glued })
-}
-
-func boolean(b bool) int {
-	if b {
-		return 1
-	}
-	return 0
 }
 
 // at returns the preference that holds for the n tokens from i on, or nil.
