@@ -47,6 +47,7 @@ func (s *Server) executeCommand(c *call, params json.RawMessage) {
 		}
 		c.reply(nil, nil)
 		s.log(loudInfo, "%s", done)
+		s.forget() // the settings of other documents were read before
 		s.reload(false)
 	})
 }

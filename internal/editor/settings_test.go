@@ -3,6 +3,7 @@ package editor
 import (
 	"errors"
 	"path/filepath"
+	"slices"
 	"strings"
 	"testing"
 )
@@ -92,27 +93,68 @@ func TestWatchedFiles(t *testing.T) {
 	checkDiagnostics(t, k.published(note, 1), "0:4-0:10 nonword anchor")
 }
 
-// TestForget: files of settings are read anew when one of them changes, and not for each
-// document or word.
+// remembering reads settings once and then has what it read, until it forgets.
+type remembering struct {
+	lockedMemory
+	read  Settings
+	times int
+}
+
+func (r *remembering) load(string) (Settings, error) {
+	r.mu.Lock()
+	defer r.mu.Unlock()
+	if r.read == nil {
+		r.read = &sharedMemory{memory{words: slices.Clone(r.words)}, &r.lockedMemory}
+		r.times++
+	}
+	return r.read, nil
+}
+
+func (r *remembering) forget() {
+	r.mu.Lock()
+	defer r.mu.Unlock()
+	r.read = nil
+}
+
+// TestForget: settings that are remembered are read anew when they change, not for each
+// document, and no document is left behind.
 func TestForget(t *testing.T) {
-	m := &memory{}
-	forgotten := 0
-	k := start(t, Config{Settings: m.load, Forget: func() { forgotten++ }}, `{"workspace":{"didChangeWatchedFiles":{"dynamicRegistration":true}}}`)
-	k.open(note, "plaintext", "The ancher held.")
-	k.published(note, 1)
-	k.request("workspace/executeCommand", `{"command":"foulcase.addWord","arguments":[{"uri":"`+note+`","word":"ancher"}]}`)
-	checkDiagnostics(t, k.published(note, 1))
-	if forgotten != 0 {
-		t.Errorf("read anew %d times", forgotten)
-	}
-	k.notify("workspace/didChangeWatchedFiles", `{"changes":[]}`)
-	if forgotten != 1 {
-		t.Errorf("read anew %d times after a file changed", forgotten)
-	}
-	k.open("file:///papers/foulcase.toml", "toml", "") // which nobody has read yet
-	k.notify("textDocument/didSave", naming("file:///papers/foulcase.toml"))
-	if forgotten != 2 {
-		t.Errorf("read anew %d times after a file of settings was saved", forgotten)
+	for _, tt := range []struct {
+		capabilities string
+		times        int
+	}{
+		{`{"workspace":{"didChangeWatchedFiles":{"dynamicRegistration":true}}}`, 1},
+		{"{}", 3}, // nobody tells of changes
+	} {
+		r := &remembering{}
+		k := start(t, Config{Settings: r.load, Forget: r.forget}, tt.capabilities)
+		papers := []string{"file:///papers/a.txt", "file:///papers/b.txt", "file:///papers/c.txt"}
+		for _, uri := range papers {
+			k.open(uri, "plaintext", "The ancher held.")
+			k.published(uri, 1)
+		}
+		check := func(what string, times int) {
+			t.Helper()
+			if r.times != times {
+				t.Errorf("%s: read %d times, want %d", what, r.times, times)
+			}
+		}
+		check("opened", tt.times)
+		k.request("workspace/executeCommand", `{"command":"foulcase.addWord","arguments":[{"uri":"file:///papers/a.txt","word":"ancher"}]}`)
+		for _, uri := range papers {
+			checkDiagnostics(t, k.published(uri, 1))
+		}
+		check("a word was added", tt.times+1)
+		r.words = nil
+		k.notify("workspace/didChangeWatchedFiles", `{"changes":[]}`)
+		k.published(papers[0], 1) // only where there are marks, at first
+		checkDiagnostics(t, k.published(papers[0], 1), "0:4-0:10 nonword anchor")
+		k.open("file:///papers/foulcase.toml", "toml", "") // which nobody has read yet
+		k.published("file:///papers/foulcase.toml", 1)
+		before := r.times
+		k.notify("textDocument/didSave", naming("file:///papers/foulcase.toml"))
+		k.published(papers[0], 1)
+		check("a file of settings was saved", before+1)
 	}
 }
 
