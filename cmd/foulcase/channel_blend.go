@@ -28,6 +28,7 @@ type houseFit struct {
 	strength      float64
 	report        channel.AdaptReport
 	before, after heldOut
+	overlap       eval.Overlap // of the pairs set apart with what the model was fitted on before
 }
 
 // heldOut is how a model does on the pairs set apart.
@@ -113,6 +114,9 @@ func (h *houseFit) measure(b *builder, m *channel.Model, to *heldOut) (hash stri
 	for i, p := range h.held {
 		pairs[i] = eval.Pair{Observed: p.Observed, Intended: p.Intended, Count: 1, Spaces: p.Spaced}
 	}
+	if to == &h.before {
+		h.overlap = eval.Fitted(e.Fitted).OverlapOf(pairs)
+	}
 	rankings := rankAll(e, pairs, foulcase.RankOptions{K: 20}, int(*h.flags.jobs))
 	to.likelihood = m.LogLikelihood(h.held)
 	to.ranks, err = eval.ScoreList(pairs, rankings, nil, resampling)
@@ -191,6 +195,7 @@ type fitObject struct {
 	Left     []leftOut `json:"left"`
 	Strength *float64  `json:"strength"` // null: the channel stays as it was
 	Rules    int       `json:"rules"`
+	Fitted   int       `json:"fitted"` // of those held, what the model was fitted on before
 }
 
 // fitMetric is a metric of the pairs set apart.
@@ -208,8 +213,8 @@ func (h *houseFit) print(w io.Writer) error {
 	if h.moved() {
 		strength = fmt.Sprintf("the channel counting for %g pairs, %d rules more", h.strength, h.report.Rules)
 	}
-	if _, err := fmt.Fprintf(w, "%d pairs (left out: %s)\nblended: %s\n%d pairs set apart, before and after learning from the other %d:\n",
-		len(h.found.pairs), h.leftOut(), strength, len(h.held), len(h.learn)); err != nil {
+	if _, err := fmt.Fprintf(w, "%d pairs (left out: %s)\nblended: %s\n%d pairs set apart, before and after learning from the other %d:\n%s",
+		len(h.found.pairs), h.leftOut(), strength, len(h.held), len(h.learn), overlapLine(eval.TaskList, h.overlap)); err != nil {
 		return err
 	}
 	t := eval.Table{Header: []string{"channel", "nats a pair", "first %", "among 5 %", "mrr %"}}
@@ -235,7 +240,7 @@ func (h *houseFit) sides() []fitSide { return []fitSide{{"before", h.before}, {"
 
 func (h *houseFit) printObjects(w io.Writer) error {
 	enc := report.JSONLines(w)
-	o := fitObject{Pairs: len(h.found.pairs), Learned: len(h.learn), Held: len(h.held), Left: h.found.left, Rules: h.report.Rules}
+	o := fitObject{Pairs: len(h.found.pairs), Learned: len(h.learn), Held: len(h.held), Left: h.found.left, Rules: h.report.Rules, Fitted: h.overlap.Fitted}
 	if h.moved() {
 		o.Strength = &h.strength
 	}

@@ -35,10 +35,13 @@ how often the intended word is first, among the first 5, and one over its place
 little; --few-too fits them all the same.
 
 The table of confusable words stays that of the channel before, unless --rebuild
-makes it anew, which takes minutes. So does the calibration: run foulcase model
-calibrate to learn it anew. The card says what was done. --emit jsonl prints an
-object a metric: model (before, after), metric, value, low, high, n; first comes
-one of what was read and chosen: pairs, learned, held, left, strength, rules.`,
+makes it anew, which takes minutes. The calibration stays too; foulcase model
+calibrate learns it anew. The card says what was done.
+
+--emit jsonl prints what was read and chosen (pairs, learned, held, left,
+strength, rules, and fitted: of those held, how many the model had learned from
+before), then an object a metric: model (before, after), metric, value, low,
+high and n.`,
 		examples: `
 			foulcase channel fit --few-too -o house.fcm testdata/tiny/pairs.tsv`,
 		declare: declareChannelFit,

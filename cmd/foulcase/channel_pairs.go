@@ -162,8 +162,9 @@ func sentencesOf(path string) ([]string, error) {
 		if err != nil {
 			return nil, &fs.PathError{Op: "read", Path: path, Err: cause(err)}
 		}
-		for s := range segmenter.Sentences(bytes.ToValidUTF8(block.Text, nil)) {
-			sentences = append(sentences, string(block.Text[s.Start:s.End]))
+		prose := bytes.ToValidUTF8(block.Text, nil)
+		for s := range segmenter.Sentences(prose) {
+			sentences = append(sentences, string(prose[s.Start:s.End]))
 		}
 	}
 	return sentences, nil
