@@ -29,6 +29,7 @@ type span struct {
 	text, textEnd     int // in Block.Text
 	source, sourceEnd int // in Block.source
 	whole             bool
+	fixed             bool // something else in the source goes by the text as it is spelled
 }
 
 // Source returns the byte offsets in the whole source of Text[start:end], the
@@ -56,15 +57,16 @@ func (b *Block) Escape(words string) (string, bool) {
 }
 
 // Interrupted reports whether markup that is no part of the text stands inside
-// Text[start:end]: to replace that stretch of the source would remove it.
-// A line break, with what the format wants around it, does not count.
+// Text[start:end]: to replace that stretch of the source would remove it; or that
+// something else goes by that text, as a link by the name of its target. A line
+// break, with what the format wants around it, does not count.
 func (b *Block) Interrupted(start, end int) bool {
 	if b.spans == nil || start == end {
 		return false
 	}
 	first, last := b.spanAt(start), b.spanAt(end-1)
-	for i := first + 1; i <= last; i++ {
-		if b.spans[i].source != b.spans[i-1].sourceEnd {
+	for i := first; i <= last; i++ {
+		if b.spans[i].fixed || i > first && b.spans[i].source != b.spans[i-1].sourceEnd {
 			return true
 		}
 	}

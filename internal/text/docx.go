@@ -278,7 +278,7 @@ func (d *docx) text(e xmlEvent, r *run) {
 // lost.
 func (p *prose) bridge(from, to int) {
 	if from == p.end && to > from && len(p.text) > 0 {
-		p.spans = append(p.spans, span{len(p.text), len(p.text), from, to, true})
+		p.spans = append(p.spans, span{len(p.text), len(p.text), from, to, true, p.fixed})
 		p.end = to
 	}
 }

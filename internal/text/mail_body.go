@@ -58,7 +58,7 @@ func (b *Block) inside(outer *Block) *Block {
 		for at := s.source; at < s.sourceEnd; {
 			o := outer.spans[outer.spanAt(base+at)]
 			end := min(s.sourceEnd, o.textEnd-base)
-			piece := span{text: s.text, textEnd: s.textEnd, whole: true}
+			piece := span{text: s.text, textEnd: s.textEnd, whole: true, fixed: s.fixed}
 			if s.whole {
 				end = s.sourceEnd
 			} else {

@@ -96,7 +96,7 @@ func (m *markdown) finish(n ast.Node) {
 		b.Heading = n.Kind() == ast.KindHeading
 		m.blocks = append(m.blocks, b)
 	}
-	m.prose = prose{source: m.source, leaders: ">", end: m.prose.end}
+	m.prose = prose{source: m.source, leaders: ">", end: m.prose.end, fixed: m.prose.fixed}
 	m.fenced = false
 }
 
@@ -116,10 +116,23 @@ func (m *markdown) inlines(n ast.Node) {
 			if at := c.Segments.At(0); bytes.HasPrefix(bytes.ToLower(at.Value(m.source[m.base:])), []byte("<br")) {
 				m.prose.lineBreak(m.base + at.Start)
 			}
-		default: // emphasis, links, images
+		case *ast.Link:
+			m.link(c, c.Reference)
+		case *ast.Image:
+			m.link(c, c.Reference)
+		default: // emphasis
 			m.inlines(c)
 		}
 	}
+}
+
+// link takes the text of a link or image. Where it is the name of its target too
+// ("[text][]"), another spelling would lose the target.
+func (m *markdown) link(n ast.Node, reference *ast.ReferenceLink) {
+	outer := m.prose.fixed
+	m.prose.fixed = outer || reference != nil && reference.Type != ast.ReferenceLinkFull
+	m.inlines(n)
+	m.prose.fixed = outer
 }
 
 // text takes a text node and those that it goes on in: their bytes less escapes

@@ -153,3 +153,16 @@ func TestMarkdownInterrupted(t *testing.T) {
 		}
 	}
 }
+
+// TestMarkdownReferences: the text of a link is not to be corrected by a program
+// where it names the target.
+func TestMarkdownReferences(t *testing.T) {
+	source := "At the [quay][] or [pier] or [berth][b] at ![noon] [x](y).\n\n[quay]: q\n[pier]: p\n[b]: b\n[noon]: n\n"
+	b := blocks(t, source, text.Markdown)[0]
+	for word, want := range map[string]bool{"quay": true, "pier": true, "noon": true, "berth": false, "At": false, "x": false} {
+		at := strings.Index(string(b.Text), word)
+		if got := b.Interrupted(at, at+len(word)); got != want {
+			t.Errorf("%s is interrupted: %v", word, got)
+		}
+	}
+}

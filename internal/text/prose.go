@@ -18,6 +18,7 @@ type prose struct {
 	spans  []span // absolute source offsets
 	end    int    // where the source of the last piece ends
 	broken bool   // a line break waits for the next piece
+	fixed  bool   // of the pieces to come, as in span
 	// leaders are what may stand between blanks before the text of a line and
 	// belongs to the line break: a quotation's marks. Empty means anything.
 	leaders string
@@ -75,8 +76,8 @@ func (p *prose) add(text []byte, from, to int) {
 	at := len(p.text)
 	p.text = append(p.text, text...)
 	p.end = to
-	next := span{at, len(p.text), from, to, !bytes.Equal(text, p.source[from:to])}
-	if n := len(p.spans); n > 0 && !next.whole && !p.spans[n-1].whole && p.spans[n-1].sourceEnd == from {
+	next := span{at, len(p.text), from, to, !bytes.Equal(text, p.source[from:to]), p.fixed}
+	if n := len(p.spans); n > 0 && !next.whole && !p.spans[n-1].whole && p.spans[n-1].sourceEnd == from && p.spans[n-1].fixed == next.fixed {
 		p.spans[n-1].textEnd, p.spans[n-1].sourceEnd = next.textEnd, to
 		return
 	}

@@ -79,7 +79,7 @@ func (b *Block) part(start, end int) *Block {
 	from, to := b.local(start, end)
 	spans := slices.Clone(b.spans[b.spanAt(start) : b.spanAt(end-1)+1])
 	for i, s := range spans {
-		spans[i] = span{max(s.text, start) - start, min(s.textEnd, end) - start, s.source - from, s.sourceEnd - from, s.whole}
+		spans[i] = span{max(s.text, start) - start, min(s.textEnd, end) - start, s.source - from, s.sourceEnd - from, s.whole, s.fixed}
 		if !s.whole {
 			spans[i].source += max(s.text, start) - s.text
 			spans[i].sourceEnd -= s.textEnd - min(s.textEnd, end)
