@@ -154,7 +154,10 @@ func (d *rst) quoted(p *prose, i, to int, role string) int {
 		p.standIn(placeholder, i, behind)
 		return behind
 	}
+	outer := p.fixed
+	p.fixed = outer || target <= 0 && (behind == end+2 || strings.EqualFold(role, "term")) // it names its target
 	d.inline(p, from, end)
+	p.fixed = outer
 	return behind
 }
 

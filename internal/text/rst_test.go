@@ -1,6 +1,7 @@
 package text_test
 
 import (
+	"strings"
 	"testing"
 
 	"example.org/foulcase/internal/text"
@@ -66,4 +67,16 @@ func TestRSTBounds(t *testing.T) {
 
 func FuzzRST(f *testing.F) {
 	fuzzFormat(f, text.RST, "T\n==\n\na *b* `c <d>`_ :ref:`e` ``f``::\n\n  g\n\n- h\n\n  i\n:j: k\n\n.. note:: l\n   :m: n\n\n   o\n\n+--+\n|p |\n+--+\n\n== ==\nq  r\n== ==\n")
+}
+
+// TestRSTReferences: the text of a reference is not to be corrected by a program
+// where it names the target.
+func TestRSTReferences(t *testing.T) {
+	b := blocks(t, "At `the quay`_ or `a berth`__ or :term:`pier` or `the bar <b>`_ in *fog*.\n", text.RST)[0]
+	for word, want := range map[string]bool{"quay": true, "pier": true, "berth": false, "bar": false, "fog": false} {
+		at := strings.Index(string(b.Text), word)
+		if got := b.Interrupted(at, at+len(word)); got != want {
+			t.Errorf("%s is interrupted: %v", word, got)
+		}
+	}
 }
