@@ -57,23 +57,38 @@ func colorFlag(fs *pflag.FlagSet) *choice {
 
 func jobsFlag(fs *pflag.FlagSet) *count {
 	n := count(runtime.GOMAXPROCS(0))
-	fs.Var(&n, "jobs", "how many files are read at once")
+	fs.Var((*jobs)(&n), "jobs", "how many files are read at once")
 	return &n
 }
 
-// count is a flag that takes a whole number from 1 to maxJobs.
-type count int
+// jobs is a count to maxJobs.
+type jobs count
 
 // maxJobs is how many files, at most, are open at once, whatever is asked for.
 const maxJobs = 256
+
+func (n *jobs) String() string { return (*count)(n).String() }
+func (n *jobs) Type() string   { return (*count)(n).Type() }
+
+func (n *jobs) Set(s string) error {
+	var v count
+	if err := v.Set(s); err != nil || v > maxJobs {
+		return fmt.Errorf("want a whole number from 1 to %d", maxJobs)
+	}
+	*n = jobs(v)
+	return nil
+}
+
+// count is a flag that takes a whole number from 1 on.
+type count int
 
 func (n *count) String() string { return strconv.Itoa(int(*n)) }
 func (n *count) Type() string   { return "N" }
 
 func (n *count) Set(s string) error {
 	v, err := strconv.Atoi(s)
-	if err != nil || v < 1 || v > maxJobs {
-		return fmt.Errorf("want a whole number from 1 to %d", maxJobs)
+	if err != nil || v < 1 {
+		return fmt.Errorf("want a whole number from 1 on")
 	}
 	*n = count(v)
 	return nil
