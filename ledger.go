@@ -57,9 +57,9 @@ type LedgerReading struct {
 	LM       float64       `json:"lm"`              // log P of the slot's words and of those they bear on
 	NGrams   []LedgerNGram `json:"ngrams"`
 	Slip     float64       `json:"slip"`     // log prior odds of the kind
-	Evidence float64       `json:"evidence"` // of document, capitals, inflection, new-word price
+	Evidence float64       `json:"evidence"` // of document, capitals, inflection, new-word price, what favours run-ons
 	Score    float64       `json:"score"`
-	P        float64       `json:"p"` // posterior in the lattice
+	P        float64       `json:"p"` // posterior in the lattice, what favours run-ons counted
 }
 
 // LedgerNGram is one language-model score.
@@ -139,14 +139,20 @@ func (j *judge) columns(s text.Sentence, found []finding, block []byte) []Ledger
 	for i := range found {
 		if f := &found[i]; !math.IsInf(f.odds, -1) {
 			c := &columns[f.from]
-			c.kind, c.odds = f.kind, f.odds
+			c.odds = f.odds
 			c.Base, c.Terms = j.terms(f)
+			j.favourRunons(f)
+			c.kind = f.kind
 		}
 	}
 	j.hopeless = math.Inf(1)
 	defer func() { j.hopeless = hopeless }()
-	if _, err := j.findings(s, block); err != nil {
+	found, err := j.findings(s, block)
+	if err != nil {
 		return nil
+	}
+	for i := range found {
+		j.favourRunons(&found[i])
 	}
 	words := columns[:0]
 	for i, c := range columns {
@@ -223,8 +229,12 @@ func (j *judge) changedReading(ch *change, block []byte) LedgerReading {
 	for _, p := range j.logp[from:reach] {
 		r.LM += float64(p)
 	}
-	r.Evidence = ch.score - r.Slip + w.Channel*ch.cost
-	r.Score = w.LanguageModel*r.LM + ch.score
+	favour := 0.0
+	if ch.kind == Runon && j.slots[ch.from].status == unknown {
+		favour = runonFavour
+	}
+	r.Evidence = ch.score - r.Slip + w.Channel*ch.cost + favour
+	r.Score = w.LanguageModel*r.LM + ch.score + favour
 	if ch.kind == Nonword || ch.kind == Realword {
 		r.Steps = j.steps(ch, words)
 	}

@@ -173,6 +173,7 @@ func (d *document) keep(b *text.Block, places *text.Places, found []finding, odd
 		if math.IsInf(f.odds, -1) {
 			continue
 		}
+		d.favourRunons(&f)
 		if f.preferred == nil {
 			odds = append(odds, f.odds)
 		}

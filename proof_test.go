@@ -234,3 +234,16 @@ func FuzzProof(f *testing.F) {
 		}
 	})
 }
+
+// TestRunonsComeFirst: a word that is two without their space is read so before words that
+// are some letters away, wherever it stands.
+func TestRunonsComeFirst(t *testing.T) {
+	for _, document := range []string{
+		"Alot of rain fell on the crew.", "He likes it alot.", "There was alot of salt in the box.", "It was infact a good berth.",
+	} {
+		marks := proof(t, document, foulcase.Options{})
+		if len(marks) != 1 || marks[0].Kind != foulcase.Runon || !strings.Contains(marks[0].Corrections[0].Text, " ") {
+			t.Errorf("%s: %+v", document, marks)
+		}
+	}
+}
