@@ -146,7 +146,7 @@ func (p *proofreader) prepare(c *console, operands []string) (err error) {
 	p.form, err = report.New(f.emit.value, report.Settings{
 		Palette: choosePalette(f.color.value, c.out.terminal),
 		Version: programVersion(),
-		Model:   p.engine.Hash(),
+		Model:   p.engine.Hash,
 	})
 	return err
 }

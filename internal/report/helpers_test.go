@@ -34,7 +34,7 @@ func marksOf(t testing.TB, source string, o foulcase.Options) []foulcase.Mark {
 // written is the report of documents in a form.
 func written(t testing.TB, name string, documents ...Document) string {
 	t.Helper()
-	form, err := New(name, Settings{Version: "1.2", Model: "0123456789abcdef"})
+	form, err := New(name, Settings{Version: "1.2", Model: func() string { return "0123456789abcdef" }})
 	if err != nil {
 		t.Fatal(err)
 	}

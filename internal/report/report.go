@@ -49,7 +49,8 @@ type Document struct {
 type Settings struct {
 	Palette Palette // of lines
 	Version string  // of the program
-	Model   string  // the hash of the model
+	// Model gives the hash of the model; it takes some time, and only forms that tell it ask.
+	Model func() string
 }
 
 // forms lists them by name, in the order that users are shown.

@@ -29,7 +29,7 @@ func (s sarif) Head(w io.Writer) error {
 			Name:       "foulcase",
 			Version:    s.settings.Version,
 			Rules:      sarifRules(),
-			Properties: map[string]string{"model": s.settings.Model},
+			Properties: map[string]string{"model": s.settings.Model()},
 		}},
 		ColumnKind: "unicodeCodePoints",
 		Bases: map[string]sarifBase{
