@@ -39,21 +39,20 @@ func TestDraftOfEachFormat(t *testing.T) {
 				}
 				format, _ := foulcase.FormatOf(f.Name)
 				rng := rand.New(rand.NewPCG(uint64(len(f.Data)), 4))
-				typeInto(t, rng, format, strings.Repeat(string(f.Data)+"\n", 3), typed)
+				typeInto(t, rng, format, strings.Repeat(string(f.Data)+"\n", 3), typed, 60)
 			}
 		})
 	}
 }
 
 // typeInto types at random into a document, a few edits between two looks at the marks,
-// and in the end takes all of it out and puts it back.
-func typeInto(t *testing.T, rng *rand.Rand, format, document string, typed []string) {
+// and in the end takes all of it out and puts it back. Short tests take a quarter of the rounds.
+func typeInto(t *testing.T, rng *rand.Rand, format, document string, typed []string, rounds int) {
 	whole := document
 	o := foulcase.Options{Format: format}
 	d := draft(t, document, o)
-	rounds := 60
 	if testing.Short() {
-		rounds = 15
+		rounds /= 4
 	}
 	for round := range rounds {
 		for range 1 + rng.IntN(3) {
@@ -64,6 +63,9 @@ func typeInto(t *testing.T, rng *rand.Rand, format, document string, typed []str
 			if err := d.Edit(start, end, []byte(piece)); err != nil {
 				t.Fatal(err)
 			}
+		}
+		if string(d.Source()) != document {
+			t.Fatal("the source is not what the edits make")
 		}
 		marks, _ := d.Marks(context.Background(), nil)
 		checkPlaces(t, document, marks)

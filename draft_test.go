@@ -4,7 +4,6 @@ import (
 	"bytes"
 	"context"
 	"errors"
-	"fmt"
 	"math/rand/v2"
 	"os"
 	"reflect"
@@ -86,36 +85,7 @@ var pieces = []string{
 func TestDraftFollowsEdits(t *testing.T) {
 	for _, format := range []string{"plain", "markdown"} {
 		t.Run(format, func(t *testing.T) {
-			rng := rand.New(rand.NewPCG(4, 1))
-			document := strings.Repeat(minutes, 3) + manifest[:2000]
-			o := foulcase.Options{Format: format}
-			d := draft(t, document, o)
-			rounds := 150
-			if testing.Short() {
-				rounds = 40
-			}
-			for round := range rounds {
-				for range 1 + rng.IntN(2) {
-					start := toRune(document, rng.IntN(len(document)+1))
-					end := toRune(document, min(len(document), start+rng.IntN(4)*rng.IntN(4)*rng.IntN(6)))
-					piece := pieces[rng.IntN(len(pieces))]
-					document = document[:start] + piece + document[end:]
-					if err := d.Edit(start, end, []byte(piece)); err != nil {
-						t.Fatal(err)
-					}
-				}
-				if string(d.Source()) != document {
-					t.Fatal("the source is not what the edits make")
-				}
-				checkPlaces(t, document, now(t, d, nil))
-				if round%10 == 9 {
-					marks, err := d.Settle(context.Background(), nil)
-					if err != nil {
-						t.Fatal(err)
-					}
-					sameMarks(t, fmt.Sprintf("%s, round %d", format, round), marks, proof(t, document, o))
-				}
-			}
+			typeInto(t, rand.New(rand.NewPCG(4, 1)), format, strings.Repeat(minutes, 3)+manifest[:2000], pieces, 150)
 		})
 	}
 }
